@@ -1,0 +1,205 @@
+import type { Kernel } from "./kernels/kernel.js";
+
+/** The arrays that hold samples. */
+export type Samples = Uint8Array | Uint8ClampedArray | Uint16Array | Float32Array;
+
+/** The sample types: 8-bit and 16-bit unsigned integers, 32-bit floats. Full values 255, 65535 and 1. */
+export type SampleType = "u8" | "u16" | "f32";
+
+export type Channels = 1 | 2 | 3 | 4;
+
+/**
+ * An image in memory: rows from top to bottom, pixels from left to right, channels interleaved.
+ * An `ImageData`, a decoded PNG and a plain object all fit.
+ */
+export interface Raster<S extends Samples = Samples> {
+  /** Samples; at least (height − 1) · stride + width · channels of them. */
+  data: S;
+  /** Columns. */
+  width: number;
+  /** Rows. */
+  height: number;
+  /** Samples per pixel. @defaultValue `data.length / (width · height)` */
+  channels?: Channels;
+  /** Samples from the start of one row to the start of the next. @defaultValue `width · channels` */
+  stride?: number;
+  /** Carried through to the result unchanged. */
+  colorSpace?: string;
+}
+
+/** What `convolve` and `run` give back: own tight memory, the source's kind of array unless `output.sample` says otherwise. */
+export interface ResultRaster<S extends Samples = Samples> extends Raster<S> {
+  channels: Channels;
+}
+
+/** The shape of the images that a prepared filter takes. */
+export interface Layout {
+  width: number;
+  height: number;
+  /** @defaultValue 1 */
+  channels?: Channels;
+  /** @defaultValue `"u8"` */
+  sample?: SampleType;
+}
+
+/**
+ * What the image is outside itself, on one axis.
+ *
+ *     replicate                a a a | a b c d | d d d      periodic                 b c d | a b c d | a b c
+ *     half-sample-symmetric    c b a | a b c d | d c b      whole-sample-symmetric   d c b | a b c d | c b a
+ *     zero                     0 0 0 | a b c d | 0 0 0      { constant: v }          v v v | a b c d | v v v
+ *     renormalised             outside is left out and the sum divided by the weight that fell inside
+ */
+export type BorderRule =
+  | "replicate"
+  | "zero"
+  | "periodic"
+  | "half-sample-symmetric"
+  | "whole-sample-symmetric"
+  | "renormalised"
+  | { constant: number | readonly number[] };
+
+/** One rule for both axes, or one each: `rows` for row indices outside the image (above and below), `columns` for column indices. */
+export type Border = BorderRule | { rows?: BorderRule; columns?: BorderRule };
+
+/** Which results are computed: as many as samples, every position where the kernel meets the image, or those where it lies inside. */
+export type Extent = "same" | "full" | "valid";
+
+export type Method = "direct" | "separable" | "fft" | "running-sum";
+
+/** A rectangle of the output, in samples. */
+export interface Region {
+  x: number;
+  y: number;
+  width: number;
+  height: number;
+}
+
+export type Alpha = "straight" | "premultiplied" | "keep" | "none";
+export type Light = "encoded" | "linear";
+
+/** result = gain · y + offset, in the output's own units. */
+export interface Output {
+  /** @defaultValue the source's sample type */
+  sample?: SampleType;
+  /** @defaultValue 1 */
+  gain?: number;
+  /** @defaultValue 0 */
+  offset?: number;
+}
+
+export interface ConvolveOptions {
+  /** @defaultValue `"replicate"` */
+  border?: Border;
+  /** @defaultValue `"same"` */
+  extent?: Extent;
+  /** @defaultValue `"auto"`: the fastest by the engine's profile */
+  method?: Method | "auto";
+  /** What a method may add on purpose, in levels of the output. @defaultValue 1/16 for 8-bit results, 0 for the others */
+  tolerance?: number;
+  /** @defaultValue the whole output */
+  region?: Region;
+  /** @defaultValue `"straight"` with 2 or 4 channels (`"keep"` where the taps sum to nothing), `"none"` with 1 or 3 */
+  alpha?: Alpha;
+  /** @defaultValue `"encoded"` */
+  light?: Light;
+  output?: Output;
+}
+
+/** Options of `prepare` and `explain`. */
+export interface PrepareOptions extends ConvolveOptions {
+  /** Lay the taps on the image as written instead of reversed. @defaultValue `false` */
+  correlate?: boolean;
+}
+
+/** One method as `explain` sees it. */
+export interface Candidate {
+  method: Method;
+  /** Predicted time of one run. Absent where refused. */
+  milliseconds?: number;
+  /** Predicted time of preparing. */
+  setupMilliseconds?: number;
+  /** Engine memory that the filter would own. */
+  bytes?: number;
+  /** Largest difference from the exact result before rounding, in output units (contract: for samples up to the type's full value). */
+  errorBound?: number;
+  /** Arithmetic that decides the bytes of the result. */
+  arithmetic?: string;
+  /** Number of separable terms that are summed, for `separable`. */
+  terms?: number;
+  /** Why the method does not apply, as a sentence. */
+  refused?: string;
+}
+
+/** What was chosen and why: plain data that also prints as a table (`String(explanation)`). */
+export interface Explanation {
+  method: Method;
+  arithmetic: string;
+  /** Separable terms summed, where the method is `separable`. */
+  terms?: number;
+  /** One sentence: why this method. */
+  because: string;
+  errorBound: number;
+  bytes: number;
+  /** Predicted time of one run. */
+  milliseconds: number;
+  setupMilliseconds: number;
+  /** Engine build the prediction is for. */
+  build: Build;
+  /** Where the coefficients come from. */
+  profile: string;
+  candidates: Candidate[];
+  toString(): string;
+}
+
+export type Build = "simd" | "scalar";
+
+/** Nanoseconds per counted operation, measured on some hardware. */
+export interface HardwareProfile {
+  version: 1;
+  /** Where the profile comes from, for people. */
+  host: string;
+  build: Build;
+  date: string;
+  /** Nanoseconds per count, by the names of planning/cost. */
+  nanoseconds: Record<string, number>;
+}
+
+export interface EngineOptions {
+  /** @defaultValue `"auto"`: SIMD where the host has it and it passes the known-answer test, else scalar */
+  build?: Build | "auto";
+  /** @defaultValue the shipped profile */
+  profile?: HardwareProfile;
+  /** Bytes of engine memory at most. @defaultValue 4 GiB less one page, what 32-bit WebAssembly can address */
+  memoryLimit?: number;
+  /** A compiled module to use instead of the bundled one. */
+  module?: WebAssembly.Module;
+}
+
+/** A prepared filter: the plan, the tables and the scratch for one kernel and one layout. */
+export interface Filter {
+  /**
+   * Filters one image of the prepared layout.
+   *
+   * @param image the layout's width, height, channels and sample type; any stride
+   * @param target receives the result; its size, channels and sample type must be the result's. A new raster where absent
+   * @throws ConvolutionError `disposed`, `invalid-raster`, `layout-mismatch`, `invalid-target`, `overlapping-target`, …
+   */
+  run<S extends Samples>(image: Raster<S>): ResultRaster;
+  run<S extends Samples, T extends Raster>(image: Raster<S>, target: T): T;
+  readonly explanation: Explanation;
+  /** Gives the filter's memory back. Safe to call twice. */
+  dispose(): void;
+}
+
+export interface Engine {
+  readonly build: Build;
+  /** Convolves (taps reversed) and returns a new raster. */
+  convolve<S extends Samples>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions): ResultRaster;
+  /** Correlates (taps as written) and returns a new raster. */
+  correlate<S extends Samples>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions): ResultRaster;
+  prepare(kernel: Kernel, layout: Layout, options?: PrepareOptions): Filter;
+  /** Says what `prepare` would choose and why; allocates nothing in the engine. */
+  explain(kernel: Kernel, layout: Layout, options?: PrepareOptions): Explanation;
+  dispose(): void;
+}
