@@ -1,0 +1,82 @@
+/**
+ * Compiles the core: every target of asconfig.json becomes src/generated/<target>.ts with the binary as base64, and the
+ * layout of the records that host and core share is copied to src/generated/record.ts. Does nothing while no source changed.
+ */
+import { createHash } from "node:crypto";
+import { mkdirSync, readFileSync, readdirSync, renameSync, writeFileSync } from "node:fs";
+import { dirname, join } from "node:path";
+import { fileURLToPath } from "node:url";
+import { withoutCustomSections } from "./sections.mjs";
+
+const root = join(dirname(fileURLToPath(import.meta.url)), "..");
+const generated = join(root, "src", "generated");
+const targets = Object.keys(JSON.parse(readFileSync(join(root, "asconfig.json"), "utf8")).targets);
+/** Targets that are shipped: nothing in them but code. The others keep the names of their functions for stack traces. */
+const shipped = new Set(["simd", "scalar"]);
+
+function fingerprint() {
+  const assembly = readdirSync(join(root, "assembly"), { recursive: true })
+    .filter((name) => name.endsWith(".ts"))
+    .sort()
+    .map((name) => join("assembly", name));
+  const hash = createHash("sha256");
+  for (const name of [...assembly, "asconfig.json", ".build/core.mjs", ".build/sections.mjs", "node_modules/assemblyscript/package.json"]) {
+    hash.update(name).update("\0").update(readFileSync(join(root, name))).update("\0");
+  }
+  return hash.digest("hex").slice(0, 16);
+}
+
+function isFresh(stamp) {
+  return [...targets, "record"].every((name) => {
+    try {
+      return readFileSync(join(generated, `${name}.ts`), "utf8").startsWith(stamp);
+    } catch {
+      return false;
+    }
+  });
+}
+
+/** Written beside its place and renamed, so that a reader at the same time sees the old file or the new one. */
+function writeWhole(name, text) {
+  const path = join(generated, name);
+  const unfinished = `${path}.${process.pid}`;
+  writeFileSync(unfinished, text);
+  renameSync(unfinished, path);
+}
+
+async function compile(asc, target) {
+  let binary;
+  const { error, stdout, stderr } = await asc.main(["--config", "asconfig.json", "--target", target, "--baseDir", root, "--outFile", `${target}.wasm`], {
+    writeFile: (name, contents) => {
+      if (name.endsWith(".wasm")) binary = contents;
+    },
+  });
+  const messages = `${stdout}${stderr}`.trim();
+  if (messages !== "") process.stderr.write(`${messages}\n`);
+  if (error !== null || binary === undefined) throw new Error(`The core does not compile for the target ${target}.`, { cause: error });
+  return shipped.has(target) ? withoutCustomSections(binary) : binary;
+}
+
+/** The host owns every byte: a core that imports more than its memory, or brings a memory of its own, is refused. */
+function checkImports(target, binary) {
+  const imports = WebAssembly.Module.imports(new WebAssembly.Module(binary)).map(({ module, name, kind }) => `${module}.${name} (${kind})`);
+  if (imports.join() !== "env.memory (memory)") throw new Error(`The core may import env.memory only; the target ${target} imports: ${imports.join(", ") || "nothing"}.`);
+}
+
+export async function buildCore() {
+  const stamp = `// from sources ${fingerprint()}\n`;
+  if (isFresh(stamp)) return;
+  mkdirSync(generated, { recursive: true });
+  const { default: asc } = await import("assemblyscript/asc");
+  const byteLengths = [];
+  for (const target of targets) {
+    const binary = await compile(asc, target);
+    checkImports(target, binary);
+    writeWhole(`${target}.ts`, `${stamp}export const code: string = "${Buffer.from(binary).toString("base64")}";\n`);
+    byteLengths.push(`${target} ${binary.length}`);
+  }
+  writeWhole("record.ts", stamp + readFileSync(join(root, "assembly", "record.ts"), "utf8"));
+  console.log(`core: ${byteLengths.join(", ")} bytes`);
+}
+
+if (process.argv[1] === fileURLToPath(import.meta.url)) await buildCore();
