@@ -2,10 +2,10 @@
  * Compiles the core: every target of asconfig.json becomes src/generated/<target>.ts with the binary as base64, and the
  * layout of the records that host and core share is copied to src/generated/record.ts. Does nothing while no source changed.
  */
-import { createHash } from "node:crypto";
-import { mkdirSync, readFileSync, readdirSync, renameSync, writeFileSync } from "node:fs";
+import { mkdirSync, readFileSync, renameSync, writeFileSync } from "node:fs";
 import { dirname, join } from "node:path";
 import { fileURLToPath } from "node:url";
+import { fingerprintOf } from "./fingerprint.mjs";
 import { withoutCustomSections } from "./sections.mjs";
 
 const root = join(dirname(fileURLToPath(import.meta.url)), "..");
@@ -15,15 +15,7 @@ const targets = Object.keys(JSON.parse(readFileSync(join(root, "asconfig.json"),
 const shipped = new Set(["simd", "scalar"]);
 
 function fingerprint() {
-  const assembly = readdirSync(join(root, "assembly"), { recursive: true })
-    .filter((name) => name.endsWith(".ts"))
-    .sort()
-    .map((name) => join("assembly", name));
-  const hash = createHash("sha256");
-  for (const name of [...assembly, "asconfig.json", ".build/core.mjs", ".build/sections.mjs", "node_modules/assemblyscript/package.json"]) {
-    hash.update(name).update("\0").update(readFileSync(join(root, name))).update("\0");
-  }
-  return hash.digest("hex").slice(0, 16);
+  return fingerprintOf(root, ["assembly"], ["asconfig.json", ".build/core.mjs", ".build/sections.mjs", "node_modules/assemblyscript/package.json"]);
 }
 
 function isFresh(stamp) {
