@@ -24,7 +24,13 @@ function browserProjects(executablePath: string) {
       include: [...shared, browserOnly],
       exclude: [nodeOnly],
       testTimeout: 120_000,
-      browser: { enabled: true, headless: true, screenshotFailures: false, provider: playwright({ launchOptions }), instances: [{ browser: "chromium" as const }] },
+      browser: {
+        enabled: true,
+        headless: true,
+        screenshotFailures: false,
+        provider: playwright({ launchOptions }),
+        instances: [{ browser: "chromium" as const }],
+      },
     },
   };
   const pages = { test: { name: "pages", include: ["test/pages/**/*.test.ts"], testTimeout: 60_000 } };

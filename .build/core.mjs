@@ -52,7 +52,8 @@ async function compile(asc, target) {
 /** The host owns every byte: a core that imports more than its memory, or brings a memory of its own, is refused. */
 function checkImports(target, binary) {
   const imports = WebAssembly.Module.imports(new WebAssembly.Module(binary)).map(({ module, name, kind }) => `${module}.${name} (${kind})`);
-  if (imports.join() !== "env.memory (memory)") throw new Error(`The core may import env.memory only; the target ${target} imports: ${imports.join(", ") || "nothing"}.`);
+  if (imports.join() !== "env.memory (memory)")
+    throw new Error(`The core may import env.memory only; the target ${target} imports: ${imports.join(", ") || "nothing"}.`);
 }
 
 export async function buildCore() {

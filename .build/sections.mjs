@@ -15,7 +15,7 @@ function readUnsigned(bytes, position) {
  */
 export function withoutCustomSections(bytes) {
   const kept = [bytes.subarray(0, 8)];
-  for (let start = 8; start < bytes.length; ) {
+  for (let start = 8; start < bytes.length;) {
     const header = readUnsigned(bytes, start + 1);
     const end = header.position + header.value;
     if (bytes[start] !== 0) kept.push(bytes.subarray(start, end));

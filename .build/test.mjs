@@ -23,7 +23,9 @@ async function testAll() {
   const nodePassed = runVitest("node", ["--project", "node"]);
   if (findChromium() !== undefined) return runVitest("browser", ["--project", "browser", "--project", "pages"]) && nodePassed;
   const required = process.env.TAPWISE_REQUIRE_BROWSER === "1";
-  console.log(`Browser tests ${required ? "are required but cannot run" : "were skipped"}: no Chromium found. Get one with "apt-get install chromium" or set TAPWISE_CHROMIUM to its path.`);
+  console.log(
+    `Browser tests ${required ? "are required but cannot run" : "were skipped"}: no Chromium found. Get one with "apt-get install chromium" or set TAPWISE_CHROMIUM to its path.`,
+  );
   return nodePassed && !required;
 }
 
