@@ -1,0 +1,28 @@
+import type { Build, Method, ResultRaster } from "../../src/index.js";
+import { builds, engines } from "./engines.js";
+import { definedAnswer, layoutOf, type Answer, type Question } from "./questions.js";
+
+/** The methods that apply to a question, with their bounds, as one build explains them. */
+export function applicable(build: Build, { image, kernel, options = {}, correlate = false }: Question): { method: Method; errorBound: number }[] {
+  const { candidates } = engines[build].explain(kernel, layoutOf(image), { ...options, correlate });
+  return candidates.flatMap(({ method, refused, errorBound }) => (refused === undefined ? [{ method, errorBound: errorBound! }] : []));
+}
+
+/** Runs one method of one build. */
+export function run(build: Build, question: Question, method: Method | "auto" = "auto"): ResultRaster {
+  const { image, kernel, options = {}, correlate = false } = question;
+  const engine = engines[build];
+  return correlate ? engine.correlate(image, kernel, { ...options, method }) : engine.convolve(image, kernel, { ...options, method });
+}
+
+/** The answers of every applicable method of every build. */
+export function engineAnswers(question: Question): Answer[] {
+  return builds.flatMap((build) =>
+    applicable(build, question).map(({ method, errorBound }) => ({ from: `${build} ${method}`, ...run(build, question, method), errorBound })),
+  );
+}
+
+/** The definition's answer and those of every applicable method of every build. */
+export function allAnswers(question: Question): Answer[] {
+  return [definedAnswer(question), ...engineAnswers(question)];
+}
