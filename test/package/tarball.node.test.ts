@@ -1,0 +1,78 @@
+import { spawnSync } from "node:child_process";
+import { readFileSync, readdirSync } from "node:fs";
+import { join } from "node:path";
+import { afterAll, beforeAll, describe, expect, test } from "vitest";
+import { installTarball, root, type Installation } from "./installed.js";
+
+let installation: Installation;
+beforeAll(() => {
+  installation = installTarball();
+});
+afterAll(() => installation.remove());
+
+const manifest = JSON.parse(readFileSync(join(root, "package.json"), "utf8"));
+
+/** A user's first script: one convolution, small enough to do by hand. */
+const script = `
+import { createEngine, kernel } from "tapwise";
+const engine = await createEngine();
+const taps = kernel([[0, 1, 0], [2, 3, 4], [0, 5, 0]]);
+const image = { data: Float32Array.of(1, 2, 3, 4), width: 2, height: 2 };
+console.log(JSON.stringify([...engine.convolve(image, taps, { border: "zero" }).data]));
+engine.dispose();
+`;
+
+describe("the tarball", () => {
+  test("holds the library, the command, the licences and the documents, and no source, test or debug build", () => {
+    const { files } = installation;
+    expect(files).toEqual(
+      expect.arrayContaining([
+        "package.json",
+        "README.md",
+        "LICENSE",
+        "CHANGELOG.md",
+        "dist/index.js",
+        "dist/index.d.ts",
+        "dist/cli/tapwise.js",
+        "dist/cli/LICENCES.txt",
+      ]),
+    );
+    const unexpected = files.filter((path) => !/^(package\.json|README\.md|LICENSE|CHANGELOG\.md|dist\/.+\.(js|d\.ts)|dist\/cli\/LICENCES\.txt)$/.test(path));
+    expect(unexpected).toEqual([]);
+    expect(files.filter((path) => /debug|test|bench/.test(path))).toEqual([]);
+  });
+
+  test("every export leads to files that are there and can be imported", () => {
+    const targets = Object.values(manifest.exports as Record<string, string | Record<string, string>>).flatMap((entry) =>
+      typeof entry === "string" ? [entry] : Object.values(entry),
+    );
+    expect(targets.map((target) => target.replace("./", "")).filter((target) => !installation.files.includes(target))).toEqual([]);
+    const names = Object.keys(manifest.exports).filter((name) => !name.endsWith(".json"));
+    const imports = names.map((name) => `import(${JSON.stringify(name.replace(".", "tapwise"))})`);
+    const { status, stderr } = installation.run(`await Promise.all([${imports.join(", ")}]);`);
+    expect({ status, stderr }).toEqual({ status: 0, stderr: "" });
+  });
+
+  test("installs without fetching anything", () => {
+    expect(readdirSync(join(installation.folder, "node_modules")).filter((name) => !name.startsWith("."))).toEqual(["tapwise"]);
+  });
+
+  test("convolves rightly from a script", () => {
+    // y[r, c] = Σ h[j, i] · x[r − j + 1, c − i + 1], worked by hand: y[0, 0] = 3·1 + 2·2 + 1·3 and so on.
+    const { status, stdout, stderr } = installation.run(script);
+    expect({ status, stderr, result: status === 0 ? JSON.parse(stdout) : stdout }).toEqual({ status: 0, stderr: "", result: [10, 14, 22, 34] });
+  });
+
+  test("the command tells how to use it", () => {
+    const command = join(installation.folder, "node_modules", ".bin", "tapwise");
+    const { status, stdout } = spawnSync(command, ["--help"], { encoding: "utf8" });
+    expect(status).toBe(0);
+    expect(stdout).toMatch(/filter/);
+    expect(stdout).toMatch(/explain/);
+  });
+
+  test("the command's licence texts are those of what is bundled", () => {
+    const text = readFileSync(join(installation.folder, "node_modules", "tapwise", "dist", "cli", "LICENCES.txt"), "utf8");
+    for (const name of ["commander", "pngjs"]) expect(text).toMatch(new RegExp(`^${name} ${manifest.devDependencies[name]} \\(MIT\\)$`, "m"));
+  });
+});
