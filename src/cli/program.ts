@@ -1,0 +1,75 @@
+import { readFileSync } from "node:fs";
+import { Argument, Command, Option } from "commander";
+import { addPlanOptions } from "./arguments.js";
+import { explainPlan } from "./explainCommand.js";
+import { filterFile } from "./filterCommand.js";
+import { explainHelp, filterHelp, programHelp } from "./help.js";
+import { wholeNumbers } from "./numbers.js";
+import type { Report } from "./report.js";
+
+/** Where a command line prints: `process` fits. */
+export interface Streams {
+  stdout: { write(text: string): unknown; columns?: number };
+  stderr: { write(text: string): unknown };
+}
+
+/** Text of the help is set for this many columns, fewer on a narrower terminal. */
+const helpColumns = 110;
+
+/** The commands and their options; `deliver` takes what a command reports. */
+export function makeProgram({ stdout, stderr }: Streams, deliver: (report: Report) => void): Command {
+  const program = new Command("tapwise")
+    .description("Convolves PNG images. The fastest way for the kernel and the image is chosen and told.")
+    .version(packageVersion(), "-V, --version", "print the version")
+    .helpOption("-h, --help", "print this help; after a command, the help of that command")
+    .exitOverride()
+    .configureOutput({
+      writeOut: (text) => stdout.write(text),
+      writeErr: (text) => stderr.write(text),
+      outputError: () => undefined, // errors are reported in one place, for people or as JSON
+      getOutHelpWidth: () => Math.min(stdout.columns ?? helpColumns, helpColumns),
+      getErrHelpWidth: () => helpColumns,
+    })
+    .addHelpText("after", programHelp);
+  addFilter(program, deliver);
+  addExplain(program, deliver);
+  return program;
+}
+
+function addFilter(program: Command, deliver: (report: Report) => void): void {
+  const command = program
+    .command("filter")
+    .summary("filter a PNG into another")
+    .description("Filters a PNG into another of the same kind: grey, grey with alpha, RGB or RGBA, 8 or 16 bits.")
+    .argument("<input>", "PNG to read")
+    .argument("<output>", "PNG to write")
+    .option("--force", "replace the output where it exists");
+  addPlanOptions(command, ["u8", "u16"])
+    .addHelpText("after", filterHelp)
+    .action(async (input: string, output: string, options) => deliver(await filterFile(input, output, options)));
+}
+
+function addExplain(program: Command, deliver: (report: Report) => void): void {
+  const command = program
+    .command("explain")
+    .summary("say how a kernel would be computed, and why")
+    .description("Says how a kernel would be computed for an image, what each method would cost, and why. Nothing is filtered.")
+    .addArgument(new Argument("[image]", "PNG whose size, channels and depth count; or give --size"))
+    .option("--size <width>x<height>", "size of the image, such as 1920x1080", readSize)
+    .addOption(new Option("--channels <count>", "samples a pixel (default: 1)").choices(["1", "2", "3", "4"]))
+    .addOption(new Option("--sample <type>", "samples of the image (default: u8)").choices(["u8", "u16", "f32"]));
+  addPlanOptions(command, ["u8", "u16", "f32"])
+    .addHelpText("after", explainHelp)
+    .action(async (image: string | undefined, options) => deliver(await explainPlan(image, options)));
+}
+
+function readSize(text: string): { width: number; height: number } {
+  const [width, height] = wholeNumbers(text, 2, "--size", "width and height, such as 1920x1080");
+  return { width: width!, height: height! };
+}
+
+/** package.json lies two folders above this code, in the repository and in the package alike. */
+function packageVersion(): string {
+  const content = JSON.parse(readFileSync(new URL("../../package.json", import.meta.url), "utf8")) as { version: string };
+  return content.version;
+}
