@@ -1,0 +1,74 @@
+import { laneBytes, loadLanes, multiplyAdd, splat, splatFrom, storeLanes } from "./lanes";
+
+/**
+ * Correlates down the columns, two result rows at a time; each row is read once for both.
+ *
+ *     out_k[x] = base_k[x] + Σ_j taps[j] · rows[k + j][x],   0 ≤ j < n, k = 0, 1
+ *
+ * Shapes, units and promises as correlateRows with m = 1.
+ */
+export function correlateColumns<V>(out0: usize, out1: usize, rows: usize, taps: usize, n: i32, count: i32, accumulate: bool): void {
+  const bytes = <usize>count << 2;
+  const block: usize = 4 * laneBytes<V>();
+  let x: usize = 0;
+  for (; x + block <= bytes; x += block) columnsBlock<V>(out0 + x, out1 + x, rows, x, taps, n, accumulate);
+  for (; x < bytes; x += laneBytes<V>()) columnsVector<V>(out0 + x, out1 + x, rows, x, taps, n, accumulate);
+}
+
+function columnsBlock<V>(out0: usize, out1: usize, rows: usize, x: usize, taps: usize, n: i32, accumulate: bool): void {
+  const vector = laneBytes<V>();
+  let a0 = splat<V>(0), a1 = a0, a2 = a0, a3 = a0;
+  let b0 = a0, b1 = a0, b2 = a0, b3 = a0;
+  if (accumulate) {
+    a0 = loadLanes<V>(out0);
+    a1 = loadLanes<V>(out0 + vector);
+    a2 = loadLanes<V>(out0 + 2 * vector);
+    a3 = loadLanes<V>(out0 + 3 * vector);
+    b0 = loadLanes<V>(out1);
+    b1 = loadLanes<V>(out1 + vector);
+    b2 = loadLanes<V>(out1 + 2 * vector);
+    b3 = loadLanes<V>(out1 + 3 * vector);
+  }
+  let p = load<usize>(rows) + x;
+  let x0 = loadLanes<V>(p), x1 = loadLanes<V>(p + vector), x2 = loadLanes<V>(p + 2 * vector), x3 = loadLanes<V>(p + 3 * vector);
+  const end = taps + (<usize>n << 2);
+  while (taps < end) {
+    const h = splatFrom<V>(taps);
+    a0 = multiplyAdd<V>(a0, h, x0);
+    a1 = multiplyAdd<V>(a1, h, x1);
+    a2 = multiplyAdd<V>(a2, h, x2);
+    a3 = multiplyAdd<V>(a3, h, x3);
+    rows += 4;
+    taps += 4;
+    p = load<usize>(rows) + x;
+    x0 = loadLanes<V>(p);
+    x1 = loadLanes<V>(p + vector);
+    x2 = loadLanes<V>(p + 2 * vector);
+    x3 = loadLanes<V>(p + 3 * vector);
+    b0 = multiplyAdd<V>(b0, h, x0);
+    b1 = multiplyAdd<V>(b1, h, x1);
+    b2 = multiplyAdd<V>(b2, h, x2);
+    b3 = multiplyAdd<V>(b3, h, x3);
+  }
+  storeLanes<V>(out0, a0);
+  storeLanes<V>(out0 + vector, a1);
+  storeLanes<V>(out0 + 2 * vector, a2);
+  storeLanes<V>(out0 + 3 * vector, a3);
+  storeLanes<V>(out1, b0);
+  storeLanes<V>(out1 + vector, b1);
+  storeLanes<V>(out1 + 2 * vector, b2);
+  storeLanes<V>(out1 + 3 * vector, b3);
+}
+
+function columnsVector<V>(out0: usize, out1: usize, rows: usize, x: usize, taps: usize, n: i32, accumulate: bool): void {
+  let a = accumulate ? loadLanes<V>(out0) : splat<V>(0);
+  let b = accumulate ? loadLanes<V>(out1) : splat<V>(0);
+  const end = taps + (<usize>n << 2);
+  for (; taps < end; taps += 4, rows += 4) {
+    const h = splatFrom<V>(taps);
+    a = multiplyAdd<V>(a, h, loadLanes<V>(load<usize>(rows) + x));
+    b = multiplyAdd<V>(b, h, loadLanes<V>(load<usize>(rows, 4) + x));
+  }
+  storeLanes<V>(out0, a);
+  storeLanes<V>(out1, b);
+}

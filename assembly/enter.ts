@@ -1,0 +1,99 @@
+import { decode } from "./curve";
+import { widen16_u8, widen8_u16 } from "./lanes";
+import {
+  CHANNELS, COLOURS, CONSTANT_PIXEL, CONSTANT_ROW, CURVE, DECODE, EXTENDED_COLUMNS, HALO, HALO_COUNT, PREMULTIPLY, ROW_MAP,
+  RUN_COLUMN, RUN_COUNT, RUN_SOURCE, SOURCE_FULL, SOURCE_KIND,
+} from "./record";
+
+/** Source samples → floats in the source's own units. */
+function widen<V>(kind: i32, out: usize, source: usize, count: i32): void {
+  let k: usize = 0;
+  const end = <usize>count;
+  if (kind == 0) {
+    for (; k + 16 <= end; k += 16) widen16_u8<V>(out + (k << 2), source + k);
+    for (; k < end; k++) store<f32>(out + (k << 2), <f32>(<i32>load<u8>(source + k)));
+  } else if (kind == 1) {
+    for (; k + 8 <= end; k += 8) widen8_u16<V>(out + (k << 2), source + (k << 1));
+    for (; k < end; k++) store<f32>(out + (k << 2), <f32>(<i32>load<u16>(source + (k << 1))));
+  } else {
+    memory.copy(out, source, end << 2);
+  }
+}
+
+/** Replaces the colours of widened pixels by their linear values: by table for integer samples, else by the formula. */
+function decodePixels(job: usize, out: usize, pixels: i32): void {
+  const kind = load<i32>(job, SOURCE_KIND);
+  const channels = load<i32>(job, CHANNELS);
+  const colours = load<i32>(job, COLOURS);
+  const curve = load<usize>(job, CURVE);
+  for (let p = 0; p < pixels; p++) {
+    for (let c = 0; c < colours; c++) {
+      const at = out + (<usize>(p * channels + c) << 2);
+      const x = load<f32>(at);
+      store<f32>(at, kind == 2 ? decode(x) : load<f32>(curve + (<usize>x << 2)));
+    }
+  }
+}
+
+/** colour ← a · colour, alpha ← a, with a = alpha ÷ full (exactly 1 where opaque). */
+function premultiplyPixels(job: usize, out: usize, pixels: i32): void {
+  const channels = load<i32>(job, CHANNELS);
+  const full = load<f32>(job, SOURCE_FULL);
+  for (let p = 0; p < pixels; p++) {
+    const pixel = out + (<usize>(p * channels) << 2);
+    const last = pixel + (<usize>(channels - 1) << 2);
+    const alpha = load<f32>(last) / full;
+    for (let at = pixel; at < last; at += 4) store<f32>(at, alpha * load<f32>(at));
+    store<f32>(last, alpha);
+  }
+}
+
+/** Brings neighbouring pixels in: widened, decoded, premultiplied. */
+export function enterPixels<V>(job: usize, out: usize, source: usize, pixels: i32): void {
+  widen<V>(load<i32>(job, SOURCE_KIND), out, source, pixels * load<i32>(job, CHANNELS));
+  if (load<i32>(job, DECODE)) decodePixels(job, out, pixels);
+  if (load<i32>(job, PREMULTIPLY)) premultiplyPixels(job, out, pixels);
+}
+
+// @ts-ignore: decorator
+@inline
+function copyPixel(out: usize, source: usize, channels: i32): void {
+  for (let c = 0; c < channels; c++) store<f32>(out + (<usize>c << 2), load<f32>(source + (<usize>c << 2)));
+}
+
+/**
+ * One row of the extended image: the stretch that lies in the source, then the halo through the index map.
+ *
+ * @param out extended row, EXTENDED_COLUMNS · CHANNELS floats
+ * @param row index of the row in the extended image
+ * @param source its staged samples; not read where the row map says "outside"
+ */
+export function enterRow<V>(job: usize, out: usize, row: i32, source: usize): void {
+  const channels = load<i32>(job, CHANNELS);
+  const pixelBytes = <usize>channels << 2;
+  const constant = load<usize>(job, CONSTANT_ROW);
+  if (load<i32>(load<usize>(job, ROW_MAP) + (<usize>row << 2)) < 0) {
+    memory.copy(out, constant, <usize>load<i32>(job, EXTENDED_COLUMNS) * pixelBytes);
+    return;
+  }
+  const sampleShift = load<i32>(job, SOURCE_KIND);
+  const run = source + ((<usize>load<i32>(job, RUN_SOURCE) * channels) << sampleShift);
+  enterPixels<V>(job, out + <usize>load<i32>(job, RUN_COLUMN) * pixelBytes, run, load<i32>(job, RUN_COUNT));
+  const end = load<usize>(job, HALO) + (<usize>load<i32>(job, HALO_COUNT) << 3);
+  for (let entry = load<usize>(job, HALO); entry < end; entry += 8) {
+    const target = out + <usize>load<i32>(entry) * pixelBytes;
+    const from = load<i32>(entry, 4);
+    if (from >= 0) copyPixel(target, out + <usize>from * pixelBytes, channels);
+    else if (from == -1) copyPixel(target, constant, channels);
+    else enterPixels<V>(job, target, source + ((<usize>(-2 - from) * channels) << sampleShift), 1);
+  }
+}
+
+/** Set-up: the constant pixel, entered like any other sample, all along one extended row. */
+export function enterConstant<V>(job: usize): void {
+  const pixelBytes = <usize>load<i32>(job, CHANNELS) << 2;
+  const row = load<usize>(job, CONSTANT_ROW);
+  enterPixels<V>(job, row, load<usize>(job, CONSTANT_PIXEL), 1);
+  const end = row + <usize>load<i32>(job, EXTENDED_COLUMNS) * pixelBytes;
+  for (let out = row + pixelBytes; out < end; out += 4) store<f32>(out, load<f32>(out - pixelBytes));
+}

@@ -1,0 +1,79 @@
+import { laneBytes } from "../lanes";
+import { forward2, forward3, forward4, forward5, inverse2, inverse3, inverse4, inverse5 } from "./butterflies";
+
+/*
+ * A transform of N points down the columns of complex planes, a few vectors of columns at a time, in place.
+ *
+ * Plan    i32 passes, then for each pass, widest span first:  i32 radix, i32 span, pointer to turns
+ * Turns   for j = 0 … span ÷ radix − 1: (cosine, −sine) of 2π·j·k ÷ span, k = 1 … radix − 1, rounded once from double
+ */
+
+/** One pass over `vectors` vectors of columns. j runs outside so that the turns of one j serve every block of the span. */
+// @ts-ignore: decorator
+@inline
+function pass<V>(radix: i32, inverse: bool, base: usize, stride: usize, apart: usize, points: i32, span: i32, turns: usize, vectors: i32): void {
+  const legs = span / radix;
+  const leg = <usize>legs * stride;
+  const width = <usize>vectors * laneBytes<V>();
+  const end = base + <usize>points * stride;
+  const spanBytes = <usize>span * stride;
+  for (let j = 0; j < legs; j++, base += stride, turns += <usize>(radix - 1) << 3) {
+    for (let block = base; block < end; block += spanBytes) {
+      for (let p = block; p < block + width; p += laneBytes<V>()) {
+        if (j) butterfly<V>(radix, inverse, p, leg, apart, turns, true);
+        else butterfly<V>(radix, inverse, p, leg, apart, turns, false);
+      }
+    }
+  }
+}
+
+// @ts-ignore: decorator
+@inline
+function butterfly<V>(radix: i32, inverse: bool, p: usize, leg: usize, apart: usize, turns: usize, turned: bool): void {
+  if (inverse) {
+    if (radix == 4) inverse4<V>(p, leg, apart, turns, turned);
+    else if (radix == 2) inverse2<V>(p, leg, apart, turns, turned);
+    else if (radix == 3) inverse3<V>(p, leg, apart, turns, turned);
+    else inverse5<V>(p, leg, apart, turns, turned);
+  } else if (radix == 4) forward4<V>(p, leg, apart, turns, turned);
+  else if (radix == 2) forward2<V>(p, leg, apart, turns, turned);
+  else if (radix == 3) forward3<V>(p, leg, apart, turns, turned);
+  else forward5<V>(p, leg, apart, turns, turned);
+}
+
+function forwardPass<V>(radix: i32, base: usize, stride: usize, apart: usize, points: i32, span: i32, turns: usize, vectors: i32): void {
+  if (radix == 4) pass<V>(4, false, base, stride, apart, points, span, turns, vectors);
+  else if (radix == 2) pass<V>(2, false, base, stride, apart, points, span, turns, vectors);
+  else if (radix == 3) pass<V>(3, false, base, stride, apart, points, span, turns, vectors);
+  else pass<V>(5, false, base, stride, apart, points, span, turns, vectors);
+}
+
+function inversePass<V>(radix: i32, base: usize, stride: usize, apart: usize, points: i32, span: i32, turns: usize, vectors: i32): void {
+  if (radix == 4) pass<V>(4, true, base, stride, apart, points, span, turns, vectors);
+  else if (radix == 2) pass<V>(2, true, base, stride, apart, points, span, turns, vectors);
+  else if (radix == 3) pass<V>(3, true, base, stride, apart, points, span, turns, vectors);
+  else pass<V>(5, true, base, stride, apart, points, span, turns, vectors);
+}
+
+/**
+ * Forward transform: natural order in, digit-reversed order out.
+ *
+ * @param base first real part; imaginary parts `apart` bytes behind
+ * @param stride bytes from one point to the next
+ * @param vectors vectors of neighbouring columns transformed together
+ */
+export function forwardTransform<V>(plan: usize, base: usize, stride: usize, apart: usize, vectors: i32): void {
+  const points = load<i32>(plan, 8);
+  const end = plan + 4 + 12 * <usize>load<i32>(plan);
+  for (plan += 4; plan < end; plan += 12) {
+    forwardPass<V>(load<i32>(plan), base, stride, apart, points, load<i32>(plan, 4), load<usize>(plan, 8), vectors);
+  }
+}
+
+/** Inverse transform, unscaled: digit-reversed order in, natural order out. */
+export function inverseTransform<V>(plan: usize, base: usize, stride: usize, apart: usize, vectors: i32): void {
+  const points = load<i32>(plan, 8);
+  for (let at = plan + 4 + 12 * <usize>(load<i32>(plan) - 1); at > plan; at -= 12) {
+    inversePass<V>(load<i32>(at), base, stride, apart, points, load<i32>(at, 4), load<usize>(at, 8), vectors);
+  }
+}

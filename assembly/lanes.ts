@@ -1,0 +1,249 @@
+/**
+ * The only file that spells v128.
+ *
+ * Every routine is generic over V, its working vector: v128 (four floats) in SIMD builds, f32 (one float) in scalar ones.
+ * `lanes<V>()` tells how many floats V holds. All arithmetic is lane by lane in the same order, so both builds give the same bytes.
+ */
+
+/** Floats held by one V. */
+// @ts-ignore: decorator
+@inline
+export function lanes<V>(): i32 {
+  return isVector<V>() ? 4 : 1;
+}
+
+/** Bytes held by one V. */
+// @ts-ignore: decorator
+@inline
+export function laneBytes<V>(): usize {
+  return isVector<V>() ? 16 : 4;
+}
+
+// @ts-ignore: decorator
+@inline
+export function loadLanes<V>(pointer: usize): V {
+  if (isVector<V>()) return changetype<V>(v128.load(pointer));
+  return load<V>(pointer);
+}
+
+// @ts-ignore: decorator
+@inline
+export function storeLanes<V>(pointer: usize, value: V): void {
+  if (isVector<V>()) v128.store(pointer, changetype<v128>(value));
+  else store<V>(pointer, value);
+}
+
+/** One float of memory in every lane. */
+// @ts-ignore: decorator
+@inline
+export function splatFrom<V>(pointer: usize): V {
+  if (isVector<V>()) return changetype<V>(v128.load_splat<f32>(pointer));
+  return load<V>(pointer);
+}
+
+// @ts-ignore: decorator
+@inline
+export function splat<V>(value: f32): V {
+  if (isVector<V>()) return changetype<V>(f32x4.splat(value));
+  return <V>value;
+}
+
+// @ts-ignore: decorator
+@inline
+export function add<V>(a: V, b: V): V {
+  if (isVector<V>()) return changetype<V>(f32x4.add(changetype<v128>(a), changetype<v128>(b)));
+  return <V>((<f32>a) + (<f32>b));
+}
+
+// @ts-ignore: decorator
+@inline
+export function subtract<V>(a: V, b: V): V {
+  if (isVector<V>()) return changetype<V>(f32x4.sub(changetype<v128>(a), changetype<v128>(b)));
+  return <V>((<f32>a) - (<f32>b));
+}
+
+// @ts-ignore: decorator
+@inline
+export function multiply<V>(a: V, b: V): V {
+  if (isVector<V>()) return changetype<V>(f32x4.mul(changetype<v128>(a), changetype<v128>(b)));
+  return <V>((<f32>a) * (<f32>b));
+}
+
+/** a + h · x, with both roundings (never fused: the same bytes on every processor). */
+// @ts-ignore: decorator
+@inline
+export function multiplyAdd<V>(a: V, h: V, x: V): V {
+  return add<V>(a, multiply<V>(h, x));
+}
+
+/** Widens 16 bytes to 16 floats. */
+// @ts-ignore: decorator
+@inline
+export function widen16_u8<V>(out: usize, source: usize): void {
+  if (isVector<V>()) {
+    const bytes = v128.load(source);
+    const low = i16x8.extend_low_i8x16_u(bytes);
+    const high = i16x8.extend_high_i8x16_u(bytes);
+    v128.store(out, f32x4.convert_i32x4_s(i32x4.extend_low_i16x8_u(low)));
+    v128.store(out, f32x4.convert_i32x4_s(i32x4.extend_high_i16x8_u(low)), 16);
+    v128.store(out, f32x4.convert_i32x4_s(i32x4.extend_low_i16x8_u(high)), 32);
+    v128.store(out, f32x4.convert_i32x4_s(i32x4.extend_high_i16x8_u(high)), 48);
+  } else {
+    for (let k: usize = 0; k < 16; k++) store<f32>(out + (k << 2), <f32>(<i32>load<u8>(source + k)));
+  }
+}
+
+/** Widens eight 16-bit integers to eight floats. */
+// @ts-ignore: decorator
+@inline
+export function widen8_u16<V>(out: usize, source: usize): void {
+  if (isVector<V>()) {
+    const words = v128.load(source);
+    v128.store(out, f32x4.convert_i32x4_s(i32x4.extend_low_i16x8_u(words)));
+    v128.store(out, f32x4.convert_i32x4_s(i32x4.extend_high_i16x8_u(words)), 16);
+  } else {
+    for (let k: usize = 0; k < 8; k++) store<f32>(out + (k << 2), <f32>(<i32>load<u16>(source + (k << 1))));
+  }
+}
+
+/**
+ * ⌊y + ½⌋ held within 0 … limit, NaN as 0, as 32-bit integers in V's lanes.
+ * y − ⌊y⌋ is exact, so the comparison with ½ is; adding 2²³ puts an integer below 2²³ into the low bits of the float.
+ */
+// @ts-ignore: decorator
+@inline
+function roundHalfUp(y: v128, limit: v128): v128 {
+  const held = f32x4.pmin(limit, f32x4.pmax(f32x4.splat(0), y));
+  const whole = f32x4.floor(held);
+  const up = f32x4.ge(f32x4.sub(held, whole), f32x4.splat(0.5));
+  const integer = i32x4.sub(f32x4.add(whole, f32x4.splat(8388608)), i32x4.splat(0x4b000000));
+  return i32x4.sub(integer, up);
+}
+
+/** ⌊y + ½⌋ held within 0 … limit, NaN as 0. */
+// @ts-ignore: decorator
+@inline
+export function roundHalfUpOne(y: f32, limit: f32): i32 {
+  let held: f32 = y > 0 ? y : 0;
+  held = held < limit ? held : limit;
+  const whole = floor<f32>(held);
+  return <i32>whole + (held - whole >= 0.5 ? 1 : 0);
+}
+
+/** Rounds 16 floats to bytes. */
+// @ts-ignore: decorator
+@inline
+export function narrow16_u8<V>(out: usize, source: usize): void {
+  if (isVector<V>()) {
+    const limit = f32x4.splat(255);
+    const low = i16x8.narrow_i32x4_s(roundHalfUp(v128.load(source), limit), roundHalfUp(v128.load(source, 16), limit));
+    const high = i16x8.narrow_i32x4_s(roundHalfUp(v128.load(source, 32), limit), roundHalfUp(v128.load(source, 48), limit));
+    v128.store(out, i8x16.narrow_i16x8_u(low, high));
+  } else {
+    for (let k: usize = 0; k < 16; k++) store<u8>(out + k, roundHalfUpOne(load<f32>(source + (k << 2)), 255));
+  }
+}
+
+/** Rounds eight floats to 16-bit integers. */
+// @ts-ignore: decorator
+@inline
+export function narrow8_u16<V>(out: usize, source: usize): void {
+  if (isVector<V>()) {
+    const limit = f32x4.splat(65535);
+    v128.store(out, i16x8.narrow_i32x4_u(roundHalfUp(v128.load(source), limit), roundHalfUp(v128.load(source, 16), limit)));
+  } else {
+    for (let k: usize = 0; k < 8; k++) store<u16>(out + (k << 1), roundHalfUpOne(load<f32>(source + (k << 2)), 65535));
+  }
+}
+
+/** True where one of V's floats is NaN or infinite: x − x is then NaN, which differs from itself. */
+// @ts-ignore: decorator
+@inline
+export function anyNonFinite<V>(x: V): bool {
+  if (isVector<V>()) {
+    const difference = f32x4.sub(changetype<v128>(x), changetype<v128>(x));
+    return v128.any_true(f32x4.ne(difference, difference));
+  }
+  const difference = (<f32>x) - (<f32>x);
+  return difference != difference;
+}
+
+/**
+ * Moves a block of V's lanes² floats from rows to columns: out[c][r] = source[r][c], strides in bytes. A copy in scalar builds.
+ */
+// @ts-ignore: decorator
+@inline
+export function transpose<V>(out: usize, outStride: usize, source: usize, sourceStride: usize): void {
+  if (isVector<V>()) {
+    const a = v128.load(source);
+    const b = v128.load(source + sourceStride);
+    const c = v128.load(source + 2 * sourceStride);
+    const d = v128.load(source + 3 * sourceStride);
+    const ab = v128.shuffle<f32>(a, b, 0, 4, 1, 5);
+    const cd = v128.shuffle<f32>(c, d, 0, 4, 1, 5);
+    const ef = v128.shuffle<f32>(a, b, 2, 6, 3, 7);
+    const gh = v128.shuffle<f32>(c, d, 2, 6, 3, 7);
+    v128.store(out, v128.shuffle<f64>(ab, cd, 0, 2));
+    v128.store(out + outStride, v128.shuffle<f64>(ab, cd, 1, 3));
+    v128.store(out + 2 * outStride, v128.shuffle<f64>(ef, gh, 0, 2));
+    v128.store(out + 3 * outStride, v128.shuffle<f64>(ef, gh, 1, 3));
+  } else {
+    store<f32>(out, load<f32>(source));
+  }
+}
+
+/** Splits rows of interleaved pixels: plane k receives channel k of `count` pixels (a multiple of four), 2 or 4 channels. */
+// @ts-ignore: decorator
+@inline
+export function deinterleave4<V>(plane0: usize, plane1: usize, plane2: usize, plane3: usize, source: usize): void {
+  if (isVector<V>()) {
+    const a = v128.load(source);
+    const b = v128.load(source, 16);
+    const c = v128.load(source, 32);
+    const d = v128.load(source, 48);
+    const ab = v128.shuffle<f32>(a, b, 0, 4, 1, 5);
+    const cd = v128.shuffle<f32>(c, d, 0, 4, 1, 5);
+    const ef = v128.shuffle<f32>(a, b, 2, 6, 3, 7);
+    const gh = v128.shuffle<f32>(c, d, 2, 6, 3, 7);
+    v128.store(plane0, v128.shuffle<f64>(ab, cd, 0, 2));
+    v128.store(plane1, v128.shuffle<f64>(ab, cd, 1, 3));
+    v128.store(plane2, v128.shuffle<f64>(ef, gh, 0, 2));
+    v128.store(plane3, v128.shuffle<f64>(ef, gh, 1, 3));
+  } else {
+    for (let k: usize = 0; k < 4; k++) {
+      store<f32>(plane0 + (k << 2), load<f32>(source + (k << 4)));
+      store<f32>(plane1 + (k << 2), load<f32>(source + (k << 4), 4));
+      store<f32>(plane2 + (k << 2), load<f32>(source + (k << 4), 8));
+      store<f32>(plane3 + (k << 2), load<f32>(source + (k << 4), 12));
+    }
+  }
+}
+
+/** Whole floats → 32-bit integers in the same lanes, and back (unsigned). */
+// @ts-ignore: decorator
+@inline
+export function toIntegers<V>(x: V): V {
+  if (isVector<V>()) return changetype<V>(i32x4.trunc_sat_f32x4_s(changetype<v128>(x)));
+  return <V>reinterpret<f32>(<i32>(<f32>x));
+}
+
+// @ts-ignore: decorator
+@inline
+export function integersToFloats<V>(x: V): V {
+  if (isVector<V>()) return changetype<V>(f32x4.convert_i32x4_u(changetype<v128>(x)));
+  return <V>(<f32>reinterpret<u32>(<f32>x));
+}
+
+// @ts-ignore: decorator
+@inline
+export function integerAdd<V>(a: V, b: V): V {
+  if (isVector<V>()) return changetype<V>(i32x4.add(changetype<v128>(a), changetype<v128>(b)));
+  return <V>reinterpret<f32>(reinterpret<i32>(<f32>a) + reinterpret<i32>(<f32>b));
+}
+
+// @ts-ignore: decorator
+@inline
+export function integerSubtract<V>(a: V, b: V): V {
+  if (isVector<V>()) return changetype<V>(i32x4.sub(changetype<v128>(a), changetype<v128>(b)));
+  return <V>reinterpret<f32>(reinterpret<i32>(<f32>a) - reinterpret<i32>(<f32>b));
+}

@@ -1,0 +1,179 @@
+import { enterRow } from "./enter";
+import { add, integerAdd, integerSubtract, integersToFloats, laneBytes, loadLanes, multiply, splat, storeLanes, toIntegers } from "./lanes";
+import {
+  CHANNELS, COLUMN_PHASE, ENTERED, ENTERED_STRIDE, INTEGER_SUMS, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, RESULT, RESULT_FLOATS,
+  RESULT_STRIDE, ROW_PHASE, ROW_TABLE, SUMS, TAPS,
+} from "./record";
+import { firstNewRow, leaveStaged, stagedRow } from "./sweep";
+
+/*
+ * Sums over a window, at a cost that does not depend on its size.
+ *
+ * Integers: one sum moves along, adding what comes and subtracting what goes; exact in 32 bits (modulo 2³², the result being below).
+ * Floats: blocks as long as the window. A window meets two neighbouring blocks: the tail of one (suffix sum) and the head of the next
+ * (prefix sum). Nothing is ever subtracted, so nothing drifts and a NaN stays where it is. Blocks are counted from image sample 0,
+ * so that a region gives the same bytes as the whole.  (van Herk 1992 and Gil & Werman 1993 use the same blocks for maxima.)
+ */
+
+/** out[x] = Σᵢ row[x + i], 0 ≤ i < m, in integers. `row` holds 32-bit integers, C to a pixel. */
+function slideIntegers(out: usize, row: usize, columns: i32, m: i32, channels: i32): void {
+  const pixel = <usize>channels << 2;
+  const window = <usize>m * pixel;
+  for (let c: usize = 0; c < pixel; c += 4) {
+    let sum: i32 = 0;
+    const end = out + <usize>columns * pixel;
+    for (let p = row + c; p < row + window - pixel; p += pixel) sum += load<i32>(p);
+    for (let q = out + c, p = row + c; q < end; q += pixel, p += pixel) {
+      sum += load<i32>(p + window - pixel);
+      store<i32>(q, sum);
+      sum -= load<i32>(p);
+    }
+  }
+}
+
+/** The same for four channels at once. */
+function slidePixels<V>(out: usize, row: usize, columns: i32, m: i32): void {
+  if (!isVector<V>()) return slideIntegers(out, row, columns, m, 4);
+  const window = <usize>m << 4;
+  let sum = splat<V>(0);
+  for (let p = row; p < row + window - 16; p += 16) sum = integerAdd<V>(sum, loadLanes<V>(p));
+  const end = out + (<usize>columns << 4);
+  for (let q = out, p = row; q < end; q += 16, p += 16) {
+    sum = integerAdd<V>(sum, loadLanes<V>(p + window - 16));
+    storeLanes<V>(q, sum);
+    sum = integerSubtract<V>(sum, loadLanes<V>(p));
+  }
+}
+
+/** row[k] ← Σ row[k] … row[end of its block], in floats; blocks of m pixels, the first one `phase` pixels in. */
+function suffixSums(out: usize, row: usize, columns: i32, m: i32, phase: i32, channels: i32): void {
+  const pixel = <usize>channels << 2;
+  for (let c: usize = 0; c < pixel; c += 4) {
+    let place = (phase + columns - 1) % m;
+    let sum: f32 = 0;
+    for (let k = columns - 1; k >= 0; k--) {
+      const at = <usize>k * pixel + c;
+      sum = place == m - 1 ? load<f32>(row + at) : load<f32>(row + at) + sum;
+      store<f32>(out + at, sum);
+      place = place == 0 ? m - 1 : place - 1;
+    }
+  }
+}
+
+/** out[x] = suffix[x] + prefix(x + m − 1), or the prefix alone where the window is a whole block. */
+function slideFloats(out: usize, row: usize, suffix: usize, columns: i32, m: i32, phase: i32, channels: i32): void {
+  const pixel = <usize>channels << 2;
+  const extended = columns + m - 1;
+  for (let c: usize = 0; c < pixel; c += 4) {
+    let place = phase;
+    let prefix: f32 = 0;
+    for (let k = 0; k < extended; k++) {
+      const x = load<f32>(row + <usize>k * pixel + c);
+      prefix = place == 0 ? x : prefix + x;
+      if (k >= m - 1) {
+        const at = <usize>(k - m + 1) * pixel + c;
+        store<f32>(out + at, place == m - 1 ? prefix : load<f32>(suffix + at) + prefix);
+      }
+      place = place == m - 1 ? 0 : place + 1;
+    }
+  }
+}
+
+/** Horizontal sums of one extended row into a ring row. */
+function sumRow<V>(job: usize, out: usize, row: i32, source: usize): void {
+  const columns = load<i32>(job, OUTPUT_COLUMNS);
+  const channels = load<i32>(job, CHANNELS);
+  const m = load<i32>(job, KERNEL_COLUMNS);
+  const entered = load<usize>(job, ENTERED);
+  enterRow<V>(job, entered, row, source);
+  if (load<i32>(job, INTEGER_SUMS)) {
+    const end = entered + (<usize>((columns + m - 1) * channels) << 2);
+    for (let p = entered; p < end; p += laneBytes<V>()) storeLanes<V>(p, toIntegers<V>(loadLanes<V>(p)));
+    if (channels == 4) slidePixels<V>(out, entered, columns, m);
+    else slideIntegers(out, entered, columns, m, channels);
+  } else {
+    const suffix = entered + load<usize>(job, ENTERED_STRIDE);
+    const phase = load<i32>(job, COLUMN_PHASE);
+    suffixSums(suffix, entered, columns + m - 1, m, phase, channels);
+    slideFloats(out, entered, suffix, columns, m, phase, channels);
+  }
+}
+
+/** sums ← sums + incoming − outgoing (integers); the result row is tap · sums. */
+function slideDownIntegers<V>(job: usize, incoming: usize, outgoing: usize, result: usize): void {
+  const sums = load<usize>(job, SUMS);
+  const bytes = <usize>load<i32>(job, RESULT_FLOATS) << 2;
+  const tap = splat<V>(load<f32>(load<usize>(job, TAPS)));
+  for (let x: usize = 0; x < bytes; x += laneBytes<V>()) {
+    let sum = integerAdd<V>(loadLanes<V>(sums + x), loadLanes<V>(incoming + x));
+    if (outgoing) sum = integerSubtract<V>(sum, loadLanes<V>(outgoing + x));
+    storeLanes<V>(sums + x, sum);
+    storeLanes<V>(result + x, multiply<V>(tap, integersToFloats<V>(sum)));
+  }
+}
+
+/** sums ← incoming, or sums + incoming inside a block. */
+function prefixDown<V>(job: usize, incoming: usize, start: bool): void {
+  const sums = load<usize>(job, SUMS);
+  const bytes = <usize>load<i32>(job, RESULT_FLOATS) << 2;
+  for (let x: usize = 0; x < bytes; x += laneBytes<V>()) {
+    const y = loadLanes<V>(incoming + x);
+    storeLanes<V>(sums + x, start ? y : add<V>(loadLanes<V>(sums + x), y));
+  }
+}
+
+/** The ring rows of a finished block, last but one to first: row ← row + the row after it. */
+function suffixDown<V>(job: usize, ring: usize, last: i32, count: i32, n: i32): void {
+  const bytes = <usize>load<i32>(job, RESULT_FLOATS) << 2;
+  for (let row = last - 1; row > last - count; row--) {
+    const upper = load<usize>(ring + (<usize>(row % n) << 2));
+    const lower = load<usize>(ring + (<usize>((row + 1) % n) << 2));
+    for (let x: usize = 0; x < bytes; x += laneBytes<V>()) storeLanes<V>(upper + x, add<V>(loadLanes<V>(upper + x), loadLanes<V>(lower + x)));
+  }
+}
+
+/** result = tap · (suffix + sums), or tap · sums where the window is a whole block. */
+function closeWindow<V>(job: usize, suffix: usize, result: usize): void {
+  const sums = load<usize>(job, SUMS);
+  const bytes = <usize>load<i32>(job, RESULT_FLOATS) << 2;
+  const tap = splat<V>(load<f32>(load<usize>(job, TAPS)));
+  for (let x: usize = 0; x < bytes; x += laneBytes<V>()) {
+    const y = loadLanes<V>(sums + x);
+    storeLanes<V>(result + x, multiply<V>(tap, suffix ? add<V>(loadLanes<V>(suffix + x), y) : y));
+  }
+}
+
+/** Takes extended row `row` in and, once a window is full, computes its result row. */
+function advanceFloats<V>(job: usize, ring: usize, row: i32, n: i32): void {
+  const place = (load<i32>(job, ROW_PHASE) + row) % n;
+  const incoming = load<usize>(ring + (<usize>(row % n) << 2));
+  prefixDown<V>(job, incoming, place == 0);
+  const whole = place == n - 1;
+  const suffix: usize = whole ? 0 : load<usize>(ring + (<usize>((row + 1) % n) << 2));
+  if (row >= n - 1) closeWindow<V>(job, suffix, load<usize>(job, RESULT));
+  if (whole) suffixDown<V>(job, ring, row, min<i32>(n, row + 1), n);
+}
+
+/** Running sums: horizontal sums in a ring of n rows, vertical sums in one row. Result rows from … to − 1 as in every sweep. */
+export function sweepRunningSum<V>(job: usize, from: i32, to: i32): void {
+  const n = load<i32>(job, KERNEL_ROWS);
+  const ring = load<usize>(job, ROW_TABLE);
+  const result = load<usize>(job, RESULT);
+  const first = firstNewRow(job, from);
+  const integers = load<i32>(job, INTEGER_SUMS);
+  if (first == 0 && integers) memory.fill(load<usize>(job, SUMS), 0, <usize>load<i32>(job, RESULT_FLOATS) << 2);
+  for (let next = first; next < to + n - 1; next++) {
+    const incoming = load<usize>(ring + (<usize>(next % n) << 2));
+    if (integers) {
+      const spare = result + load<usize>(job, RESULT_STRIDE);
+      const outgoing: usize = next >= n ? spare : 0;
+      if (outgoing) memory.copy(spare, incoming, <usize>load<i32>(job, RESULT_FLOATS) << 2);
+      sumRow<V>(job, incoming, next, stagedRow(job, next, first));
+      slideDownIntegers<V>(job, incoming, outgoing, result);
+    } else {
+      sumRow<V>(job, incoming, next, stagedRow(job, next, first));
+      advanceFloats<V>(job, ring, next, n);
+    }
+    if (next >= n - 1) leaveStaged<V>(job, result, next - n + 1, from);
+  }
+}

@@ -1,0 +1,107 @@
+import { correlateColumns } from "./columns";
+import { correlateRows } from "./correlate";
+import { enterRow } from "./enter";
+import { leaveRow } from "./leave";
+import {
+  ALPHA, ANCHOR_ROW, CHANNELS, COLUMN_TAPS, ENTERED, ENTERED_STRIDE, KEEP_ROW, KEEP_STAGING, KERNEL_COLUMNS, KERNEL_ROWS,
+  OUTPUT, OUTPUT_STRIDE, RESULT, RESULT_FLOATS, RESULT_STRIDE, RING_ROWS, ROW_TABLE, STAGING, STAGING_STRIDE, TAPS, TERMS,
+} from "./record";
+
+/*
+ * A sweep computes result rows from … to − 1. It starts with an empty ring where from is 0, else the ring holds the
+ * kernelRows − 1 extended rows before; the staged rows are those that come new: extended rows first … to + kernelRows − 2.
+ */
+
+/** First extended row that a sweep from result row `from` has to enter. */
+// @ts-ignore: decorator
+@inline
+export function firstNewRow(job: usize, from: i32): i32 {
+  return from == 0 ? 0 : from + load<i32>(job, KERNEL_ROWS) - 1;
+}
+
+/** Staged samples of an extended row. */
+// @ts-ignore: decorator
+@inline
+export function stagedRow(job: usize, row: i32, firstStaged: i32): usize {
+  return load<usize>(job, STAGING) + <usize>(row - firstStaged) * load<usize>(job, STAGING_STRIDE);
+}
+
+/** Pointer table of the ring of one term, turned so that `row` comes first. */
+// @ts-ignore: decorator
+@inline
+function ringFrom(job: usize, term: i32, row: i32): usize {
+  const ringRows = load<i32>(job, RING_ROWS);
+  return load<usize>(job, ROW_TABLE) + (<usize>(term * 2 * ringRows + (row % ringRows)) << 2);
+}
+
+/** Leaves one result row: enters the alpha row of `keep` before, where it is asked for. */
+export function leaveStaged<V>(job: usize, y: usize, row: i32, from: i32): void {
+  if (load<i32>(job, ALPHA) == 3) {
+    const staged = load<usize>(job, KEEP_STAGING) + <usize>(row - from) * load<usize>(job, STAGING_STRIDE);
+    enterRow<V>(job, load<usize>(job, KEEP_ROW), row + load<i32>(job, ANCHOR_ROW), staged);
+  }
+  leaveRow<V>(job, y, row, load<usize>(job, OUTPUT) + <usize>(row - from) * load<usize>(job, OUTPUT_STRIDE));
+}
+
+// @ts-ignore: decorator
+@inline
+function leavePair<V>(job: usize, row: i32, from: i32, to: i32): void {
+  const result = load<usize>(job, RESULT);
+  leaveStaged<V>(job, result, row, from);
+  if (row + 1 < to) leaveStaged<V>(job, result + load<usize>(job, RESULT_STRIDE), row + 1, from);
+}
+
+/** Direct: extended rows in the ring, all taps at once. */
+export function sweepDirect<V>(job: usize, from: i32, to: i32): void {
+  const n = load<i32>(job, KERNEL_ROWS);
+  const step = <usize>load<i32>(job, CHANNELS) << 2;
+  const result = load<usize>(job, RESULT);
+  const first = firstNewRow(job, from);
+  let next = first;
+  for (let row = from; row < to; row += 2) {
+    const last = min<i32>(row + n + 1, to + n - 1);
+    for (; next < last; next++) enterRow<V>(job, load<usize>(ringFrom(job, 0, next)), next, stagedRow(job, next, first));
+    correlateRows<V>(
+      result, result + load<usize>(job, RESULT_STRIDE), ringFrom(job, 0, row), load<usize>(job, TAPS), n,
+      load<i32>(job, KERNEL_COLUMNS), step, load<i32>(job, RESULT_FLOATS), false,
+    );
+    leavePair<V>(job, row, from, to);
+  }
+}
+
+/** Row passes of all terms over one or two entered rows, into the rings. */
+function rowPasses<V>(job: usize, next: i32): void {
+  const m = load<i32>(job, KERNEL_COLUMNS);
+  const table = load<usize>(job, ENTERED) + 2 * load<usize>(job, ENTERED_STRIDE);
+  for (let term = 0; term < load<i32>(job, TERMS); term++) {
+    const taps = load<usize>(job, TAPS) + (<usize>(term * m) << 2);
+    const ring = ringFrom(job, term, next);
+    correlateRows<V>(
+      load<usize>(ring), load<usize>(ring, 4), table, taps, 1, m, <usize>load<i32>(job, CHANNELS) << 2, load<i32>(job, RESULT_FLOATS), false,
+    );
+  }
+}
+
+/** Separable: row results in the rings, then columns; terms are summed in order. */
+export function sweepSeparable<V>(job: usize, from: i32, to: i32): void {
+  const n = load<i32>(job, KERNEL_ROWS);
+  const entered = load<usize>(job, ENTERED);
+  const result = load<usize>(job, RESULT);
+  const first = firstNewRow(job, from);
+  const staged = to + n - 1;
+  let next = first;
+  for (let row = from; row < to; row += 2) {
+    for (const last = min<i32>(row + n + 1, staged); next < last; next += 2) {
+      enterRow<V>(job, entered, next, stagedRow(job, next, first));
+      if (next + 1 < staged) enterRow<V>(job, entered + load<usize>(job, ENTERED_STRIDE), next + 1, stagedRow(job, next + 1, first));
+      rowPasses<V>(job, next);
+    }
+    for (let term = 0; term < load<i32>(job, TERMS); term++) {
+      const taps = load<usize>(job, COLUMN_TAPS) + (<usize>(term * n) << 2);
+      correlateColumns<V>(
+        result, result + load<usize>(job, RESULT_STRIDE), ringFrom(job, term, row), taps, n, load<i32>(job, RESULT_FLOATS), term > 0,
+      );
+    }
+    leavePair<V>(job, row, from, to);
+  }
+}
