@@ -4,11 +4,13 @@ import { compensatedSum } from "../math/compensatedSum.js";
  * Moves the tap at `centre` so that the taps sum to 1, as far as that tap's own last bit allows; changes `taps`.
  * The others keep their bits and therefore their symmetry.
  *
- * Accuracy  |Σ − 1| ≤ ½ ulp(taps[centre]), so that the sum rounds to 1
+ * Accuracy  |Σ − 1| ≤ ½ ulp(taps[centre]): the sum rounds to 1 where that tap is at most ½, and else is within 1 ulp
  * Requires  the taps nearly sum to 1
  */
 export function centreToSumOne(taps: Float64Array<ArrayBuffer>, centre: number): Float64Array<ArrayBuffer> {
-  const parts = [...taps, -1];
+  const parts = new Float64Array(taps.length + 1);
+  parts.set(taps);
+  parts[taps.length] = -1;
   for (let attempt = 0; attempt < 4; attempt++) {
     const excess = compensatedSum(parts);
     const moved = taps[centre]! - excess;

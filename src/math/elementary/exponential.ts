@@ -25,7 +25,8 @@ export function exponential(x: number, xLow = 0): number {
   const rLow = high - r - low;
   let sum = series[series.length - 1]!;
   for (let i = series.length - 2; i >= 0; i--) sum = sum * r + series[i]!;
-  return timesPowerOfTwo(1 + (r + (r * r * sum + rLow * (1 + r))), k);
+  const linear = 1 + r;
+  return timesPowerOfTwo(linear + (1 - linear + r + (r * r * sum + rLow * linear)), k);
 }
 
 /** x · 2ᵏ for −1080 ≤ k ≤ 1030, exact where the result is a normal number. */
