@@ -44,6 +44,15 @@ function identifiers(source: Source): Set<string> {
   return words;
 }
 
+/** Places where a member of a vector type is used: `f32x4.add`, `v128.load` and so on. */
+function computations(source: Source, vectors: RegExp): string[] {
+  const found: string[] = [];
+  visit(source.tree, (node) => {
+    if (ts.isPropertyAccessExpression(node) && ts.isIdentifier(node.expression) && vectors.test(node.expression.text)) found.push(place(source, node));
+  });
+  return found;
+}
+
 /** Variables of a module: state that would outlive a call. */
 function moduleVariables(source: Source): string[] {
   const isVariable = (statement: ts.Statement): boolean => ts.isVariableStatement(statement) && (statement.declarationList.flags & ts.NodeFlags.Const) === 0;
@@ -111,9 +120,16 @@ describe("the core is stateless", () => {
     expect(moduleVariables(parse("assembly/a.ts", "let calls = 0;"))).toEqual(["assembly/a.ts:1"]);
   });
 
-  test("lanes.ts alone spells v128", () => {
-    const spelling = assembly.filter((source) => [...identifiers(source)].some((word) => /^(v128|[iuf](8x16|16x8|32x4|64x2))$/.test(word)));
-    expect(spelling.map(({ path }) => path).filter((path) => path !== "assembly/lanes.ts")).toEqual([]);
-    expect(spelling.length).toBeGreaterThan(0);
+  test("lanes.ts alone computes with vectors, and index.ts alone chooses the vector of a build", () => {
+    const vectors = /^(v128|[iuf](8x16|16x8|32x4|64x2))$/;
+    const spelling = assembly.filter((source) => [...identifiers(source)].some((word) => vectors.test(word)));
+    expect(spelling.map(({ path }) => path)).toEqual(["assembly/index.ts", "assembly/lanes.ts"]);
+    expect(
+      computations(
+        assembly.find(({ path }) => path === "assembly/index.ts")!,
+        vectors,
+      ),
+    ).toEqual([]);
+    expect(computations(parse("assembly/a.ts", "const sum = f32x4.add(a, b);"), vectors)).toEqual(["assembly/a.ts:1"]);
   });
 });
