@@ -26,7 +26,8 @@ const sampleArrays = ["Uint8Array", "Uint8ClampedArray", "Uint16Array", "Float32
  *
  * @param raster any sample type, 1–4 channels, any stride; it is only read
  * @throws ConvolutionError `invalid-raster` (shape; samples not finite; no light above the background where the centre or the sum is needed),
- *         `unsupported-samples`, `detached-samples`, `invalid-number` (background), `invalid-origin` (centre outside), `unknown-value`, `unknown-option`
+ *         `unsupported-samples`, `detached-samples`, `invalid-number` (background), `invalid-origin` (centre outside), `invalid-kernel` (too many samples),
+ *         `unknown-value`, `unknown-option`
  * @example
  * const blur = kernelFromRaster(photographOfAPinhole, { background: 12 });
  */
@@ -68,7 +69,7 @@ function checkedShape(raster: Raster): Required<Omit<Raster, "colorSpace" | "cha
     const message = `Samples in ${kind} are not supported. Use ${sampleArrays.join(", ")}.`;
     throw new ConvolutionError("unsupported-samples", message, { expected: sampleArrays, received: kind });
   }
-  if ((data.buffer as { detached?: boolean }).detached === true) {
+  if (isDetached(data)) {
     const message = "The image's buffer is detached: it was transferred elsewhere. Hand over a copy instead.";
     throw new ConvolutionError("detached-samples", message, { expected: "an attached buffer", received: "detached" });
   }
@@ -89,6 +90,16 @@ function checkedShape(raster: Raster): Required<Omit<Raster, "colorSpace" | "cha
     refuse(`The image holds ${data.length} samples; ${width}×${height}, ${channels} channels and stride ${stride} need ${needed}.`, needed, data.length);
   }
   return { data, width, height, channels, stride };
+}
+
+/** A transferred buffer leaves an empty array behind, and no new view of it can be made. */
+function isDetached(data: Raster["data"]): boolean {
+  if (data.length > 0) return false;
+  try {
+    return new Uint8Array(data.buffer).length < 0;
+  } catch {
+    return true;
+  }
 }
 
 /** The sample nearest to (Σ x · tap / Σ tap, Σ y · tap / Σ tap), within the image. */
