@@ -31,7 +31,9 @@ export interface Setting {
   width: number;
   height: number;
   channels: number;
+  /** Size and origin; `taps` is read once. */
   kernel: Taps;
+  taps: Float64Array;
   correlate: boolean;
   rows: BorderRule;
   columns: BorderRule;
@@ -55,8 +57,9 @@ export type Finish = (sums: readonly number[], keptAlpha: number) => number[];
 export function settingOf(image: Raster, kernel: Taps, options: ConvolveOptions = {}, correlate = false): Setting {
   const { width, height } = image;
   const channels = image.channels ?? image.data.length / (width * height);
-  const sum = kernel.taps.reduce((total, tap) => total + tap, 0);
-  const absoluteSum = kernel.taps.reduce((total, tap) => total + Math.abs(tap), 0);
+  const { taps } = kernel;
+  const sum = taps.reduce((total, tap) => total + tap, 0);
+  const absoluteSum = taps.reduce((total, tap) => total + Math.abs(tap), 0);
   const hasAlpha = channels === 2 || channels === 4;
   const defaultAlpha = !hasAlpha ? "none" : Math.abs(sum) <= 1e-9 * absoluteSum ? "keep" : "straight";
   const input = sampleTypeOf(image.data);
@@ -66,6 +69,7 @@ export function settingOf(image: Raster, kernel: Taps, options: ConvolveOptions 
     height,
     channels,
     kernel,
+    taps,
     correlate,
     input,
     sum,
@@ -201,8 +205,8 @@ export function define(image: Raster, kernel: Taps, options: ConvolveOptions = {
 }
 
 function definePixel(setting: Setting, around: Surroundings, defined: Defined, r: number, c: number): void {
-  const { kernel, channels, first, result, alpha } = setting;
-  const { width: m, height: n, origin, taps } = kernel;
+  const { kernel, taps, channels, first, result, alpha } = setting;
+  const { width: m, height: n, origin } = kernel;
   const direction = setting.correlate ? 1 : -1;
   const sums: number[] = Array.from({ length: channels }, () => 0);
   const touched: boolean[] = Array.from({ length: channels }, () => false);

@@ -2,10 +2,19 @@ import type { Build, Method, ResultRaster } from "../../src/index.js";
 import { builds, engines } from "./engines.js";
 import { definedAnswer, layoutOf, type Answer, type Question } from "./questions.js";
 
+/** A method that applies, with what it promises. */
+export interface Applicable {
+  method: Method;
+  errorBound: number;
+  arithmetic: string;
+}
+
 /** The methods that apply to a question, with their bounds, as one build explains them. */
-export function applicable(build: Build, { image, kernel, options = {}, correlate = false }: Question): { method: Method; errorBound: number }[] {
+export function applicable(build: Build, { image, kernel, options = {}, correlate = false }: Question): Applicable[] {
   const { candidates } = engines[build].explain(kernel, layoutOf(image), { ...options, correlate });
-  return candidates.flatMap(({ method, refused, errorBound }) => (refused === undefined ? [{ method, errorBound: errorBound! }] : []));
+  return candidates.flatMap(({ method, refused, errorBound, arithmetic }) =>
+    refused === undefined ? [{ method, errorBound: errorBound!, arithmetic: arithmetic! }] : [],
+  );
 }
 
 /** Runs one method of one build. */
