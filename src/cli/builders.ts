@@ -1,4 +1,20 @@
-import { type Kernel, binomial, box, delta } from "../index.js";
+import {
+  type Kernel,
+  binomial,
+  box,
+  delta,
+  differenceOfGaussians,
+  disk,
+  gaussian,
+  laplacian,
+  laplacianOfGaussian,
+  line,
+  prewitt,
+  scharr,
+  sharpen,
+  sobel,
+  unsharp,
+} from "../index.js";
 
 /** A value of a builder's option as the command line can spell it. */
 export type BuilderValue = number | string | { x: number; y: number };
@@ -19,7 +35,18 @@ function builder(build: (options: never) => Kernel, parameters: readonly string[
 
 /** Every kernel builder that the command line knows, by name. */
 export const builders: Readonly<Record<string, Builder>> = {
-  delta: builder(delta, ["width", "height"], 0, "a single 1: leaves the image as it is, or shifts it"),
+  delta: builder(delta, ["width", "height", "position"], 0, "a single 1: no change, or a shift"),
   box: builder(box, ["width", "height"], 1, "mean of a rectangle"),
-  binomial: builder(binomial, ["order"], 1, "rows of Pascal's triangle, order + 1 taps wide"),
+  binomial: builder(binomial, ["order"], 1, "smooths by a row of Pascal's triangle: 2 is 1 2 1"),
+  gaussian: builder(gaussian, ["sigma", "radius", "sampling"], 1, "smooths by a bell; sampling: point, area"),
+  disk: builder(disk, ["radius", "sampling"], 1, "mean of a disk, as out of focus; sampling: area, point"),
+  line: builder(line, ["length", "angleInDegrees"], 1, "mean along a line, as moved; angle counter-clockwise"),
+  sharpen: builder(sharpen, ["amount", "stencil"], 0, "takes the Laplacian away; stencils as laplacian"),
+  unsharp: builder(unsharp, ["sigma", "amount", "radius", "sampling"], 1, "adds the difference from a Gaussian"),
+  laplacian: builder(laplacian, ["stencil"], 0, "second derivatives; cross, square, diagonal, mehrstellen, oono-puri"),
+  laplacianOfGaussian: builder(laplacianOfGaussian, ["sigma", "radius"], 1, "edges and spots of one size"),
+  differenceOfGaussians: builder(differenceOfGaussians, ["sigma", "ratio", "radius", "sampling"], 1, "the same, by two bells"),
+  sobel: builder(sobel, ["axis"], 1, "slope along x or y; weights 1 2 1 across"),
+  prewitt: builder(prewitt, ["axis"], 1, "slope along x or y; weights 1 1 1 across"),
+  scharr: builder(scharr, ["axis"], 1, "slope along x or y; weights 3 10 3 across"),
 };

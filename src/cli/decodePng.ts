@@ -1,7 +1,8 @@
 import { PNG } from "pngjs";
 import { type Raster, ConvolutionError } from "../index.js";
-import { type Chunk, isCritical, joinChunks } from "./chunks.js";
+import { type Chunk, isCritical, makeChunk, signature } from "./chunks.js";
 import { type PngHeader, broken } from "./pngHeader.js";
+import { repackWhole } from "./scanlines.js";
 
 /** Samples a pixel in what the decoder hands out, whatever the file has. */
 const unpackedChannels = 4;
@@ -41,22 +42,21 @@ function checkCriticalChunks(chunks: readonly Chunk[], name: string): void {
 }
 
 function unpack(chunks: readonly Chunk[], header: PngHeader, name: string): Uint8Array | Uint16Array {
-  const wanted = chunks.filter(({ type }) => pixelTypes.has(type) || (header.isPalette && type === "tRNS"));
+  const before = chunks.filter(({ type }) => type === "IHDR" || type === "PLTE" || (header.isPalette && type === "tRNS"));
+  const packed = Buffer.concat(chunks.filter(({ type }) => type === "IDAT").map((chunk) => chunk.data));
   try {
+    const whole = makeChunk("IDAT", repackWhole(packed, header.unpackedByteLength));
+    const file = Buffer.concat([signature, ...before.map((chunk) => chunk.whole), whole, makeChunk("IEND", new Uint8Array())]);
     // At 16 bits the decoder returns a Uint16Array when told not to rescale; fewer than 8 bits must be rescaled.
-    const { data } = PNG.sync.read(joinChunks(wanted), { checkCRC: false, skipRescale: header.bitDepth === 16 });
+    const { data } = PNG.sync.read(file, { checkCRC: false, skipRescale: header.bitDepth === 16 });
     return data;
   } catch (error) {
     const reason = error instanceof Error ? error.message : String(error);
-    throw new ConvolutionError(
-      "invalid-png",
-      `${name} is a damaged PNG: its image data end early or do not unpack (${reason}). Export or copy the file again.`,
-      {
-        expected: `${header.width}×${header.height} pixels`,
-        received: reason,
-        cause: error,
-      },
-    );
+    throw new ConvolutionError("invalid-png", `${name} is a damaged PNG: its image data do not unpack (${reason}). Export or copy the file again.`, {
+      expected: `${header.width}×${header.height} pixels`,
+      received: reason,
+      cause: error,
+    });
   }
 }
 

@@ -1,5 +1,6 @@
 import { type Channels, ConvolutionError, type SampleType } from "../index.js";
 import type { Chunk } from "./chunks.js";
+import { scanlineByteLength } from "./scanlines.js";
 
 /** Bits of the colour type (PNG §11.2.1). */
 const paletteBit = 1;
@@ -34,6 +35,8 @@ export interface PngHeader {
   readonly channels: Channels;
   /** What the samples become: 8 bits up to 8, else 16. */
   readonly sample: Extract<SampleType, "u8" | "u16">;
+  /** What the image data unpack to. */
+  readonly unpackedByteLength: number;
   readonly hasColourKey: boolean;
 }
 
@@ -55,8 +58,10 @@ export function readHeader(chunks: readonly Chunk[], name: string): PngHeader {
   const storesAlpha = (colorType & alphaBit) !== 0;
   const hasTransparency = chunks.some(({ type }) => type === "tRNS");
   const colours = (colorType & colourBit) !== 0 ? 3 : 1;
+  const isInterlaced = view.getUint8(12) === 1;
   const storedChannels = isPalette ? 1 : colours + (storesAlpha ? 1 : 0);
-  checkAgainstData(name, chunks, height * (1 + Math.ceil((width * bitDepth * storedChannels) / 8)));
+  const unpackedByteLength = scanlineByteLength(width, height, bitDepth * storedChannels, isInterlaced);
+  checkAgainstData(name, chunks, unpackedByteLength);
   return {
     width,
     height,
@@ -65,6 +70,7 @@ export function readHeader(chunks: readonly Chunk[], name: string): PngHeader {
     isPalette,
     channels: (colours + (storesAlpha || hasTransparency ? 1 : 0)) as Channels,
     sample: bitDepth === 16 ? "u16" : "u8",
+    unpackedByteLength,
     hasColourKey: !isPalette && !storesAlpha && hasTransparency,
   };
 }

@@ -17,8 +17,8 @@ function errorOf(file: Uint8Array): ConvolutionError {
 
 const file = writePng({ width: 16, height: 16, bitDepth: 8, colorType: 2, samples: patternedSamples(16 * 16 * 3, 8) });
 
-/** A file with the given header and image data, whole but for what these say. */
-function withParts(header: Buffer, data: Uint8Array = deflateSync(Buffer.alloc(64)), ...extra: Buffer[]): Buffer {
+/** A file with the given header and image data, those of 4×4 grey bytes unless given; whole but for what these say. */
+function withParts(header: Buffer, data: Uint8Array = deflateSync(Buffer.alloc(20)), ...extra: Buffer[]): Buffer {
   return Buffer.concat([signature, header, ...extra, chunk("IDAT", data), chunk("IEND")]);
 }
 
@@ -58,7 +58,10 @@ describe("a file that is no whole PNG is refused with invalid-png", () => {
     ["another chunk first", Buffer.concat([signature, chunk("IDAT"), chunk("IEND")]), "IHDR"],
     ["a critical chunk of another kind", withParts(headerChunk(4, 4, 8, 0), undefined, chunk("QRST")), "QRST"],
     ["no image data", Buffer.concat([signature, headerChunk(4, 4, 8, 0), chunk("IEND")]), "0 compressed bytes"],
-    ["image data that end early", withParts(headerChunk(40, 40, 8, 0), deflateSync(Buffer.alloc(100))), "end early"],
+    ["image data that end early", withParts(headerChunk(40, 40, 8, 0), deflateSync(Buffer.alloc(100))), "100 bytes instead of 1640"],
+    ["image data that go on", withParts(headerChunk(4, 4, 8, 0), deflateSync(Buffer.alloc(1000))), "more than"],
+    ["interlaced image data that go on", withParts(headerChunk(4, 4, 8, 0, 1), deflateSync(Buffer.alloc(1000))), "more than"],
+    ["a compressed stream cut short", withParts(headerChunk(4, 4, 8, 0), deflateSync(Buffer.alloc(20)).subarray(0, -5)), "do not unpack"],
     ["image data that are none", withParts(headerChunk(4, 4, 8, 0), Buffer.from("no deflate stream at all")), "do not unpack"],
     ["a filter type of 9", withParts(headerChunk(1, 1, 8, 0), deflateSync(Buffer.from([9, 0]))), "filter type"],
     ["a transparent colour of one byte", withParts(headerChunk(4, 4, 8, 0), undefined, chunk("tRNS", Buffer.alloc(1))), "tRNS"],

@@ -54,7 +54,8 @@ export function writePng({ width, height, bitDepth, colorType, samples, before =
   const channels = storedChannels[colorType]!;
   const rows: Buffer[] = [];
   for (const [x0, y0, dx, dy] of interlaced ? passes : [[0, 0, 1, 1] as const]) {
-    for (let y = y0; y < height && x0 < width; y += dy) {
+    if (x0 >= width) continue;
+    for (let y = y0; y < height; y += dy) {
       const row: number[] = [];
       for (let x = x0; x < width; x += dx) row.push(...samples.slice((y * width + x) * channels, (y * width + x + 1) * channels));
       rows.push(Buffer.from([0]), packRow(row, bitDepth));
