@@ -64,7 +64,7 @@ function opaque(sample: SampleType, full: number, channels: Channels): Raster {
   return image;
 }
 
-const colours = (data: Samples, channels: number): number[] => Array.from(data).filter((_, index) => index % channels !== channels - 1);
+const colours = (data: Samples, channels: number): number[] => Array.from<number>(data).filter((_, index) => index % channels !== channels - 1);
 
 describe.each(types)("%s", (sample, full) => {
   const positive = kernelsOfEveryKind.filter(([, { sum }]) => Math.abs(sum) > 0.1);
