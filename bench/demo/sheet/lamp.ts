@@ -9,6 +9,7 @@ import { randomFrom } from "./random.js";
 export function photographed(plate: Plate): Uint8Array {
   const bytes = new Uint8Array(plate.width * plate.height * 3);
   const random = randomFrom(90210);
+  const curve = Float32Array.from({ length: 4097 }, (_, step) => 255 * encoded(step / 4096));
   for (let row = 0; row < plate.height; row += 1) {
     for (let column = 0; column < plate.width; column += 1) {
       const index = row * plate.width + column;
@@ -16,9 +17,9 @@ export function photographed(plate: Plate): Uint8Array {
       const fallOff = 1.06 - 0.16 * Math.sqrt((column / plate.width - 0.3) ** 2 + ((row / plate.height - 0.25) * 0.75) ** 2);
       const shade = Math.min(1.35, Math.max(0.55, 1 + 0.3 * slope)) * fallOff;
       for (let channel = 0; channel < 3; channel += 1) {
-        const light = Math.min(1, plate.light[3 * index + channel] * shade);
+        const light = Math.min(4096, Math.max(0, Math.round(4096 * plate.light[3 * index + channel] * shade)));
         const noise = (random.next() + random.next() - 1) * 2.2;
-        bytes[3 * index + channel] = Math.min(255, Math.max(0, Math.round(255 * encoded(light) + noise)));
+        bytes[3 * index + channel] = Math.min(255, Math.max(0, Math.round(curve[light] + noise)));
       }
     }
   }

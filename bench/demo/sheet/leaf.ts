@@ -76,7 +76,9 @@ export function leafPiece(leaf: Leaf): Piece {
 function bladeTouch(leaf: Leaf, veins: Veins, u: number, along: number, v: number): Touch | undefined {
   const side = v < 0 ? -1 : 1;
   const across = Math.abs(v);
-  const half = halfWidth(leaf, veins, u, along, across, side);
+  const smooth = uncutHalfWidth(leaf, along);
+  if (across > 1.03 * smooth + 1) return undefined;
+  const half = halfWidth(leaf, veins, u, across, side, smooth);
   const place: Place = { along, across, side, half };
   const edge = (half - across) * 0.82;
   if (edge <= -0.6) return undefined;
@@ -99,14 +101,18 @@ function bladeTouch(leaf: Leaf, veins: Veins, u: number, along: number, v: numbe
   };
 }
 
-/** Outline: a smooth blade widest at `widestAt`, cut into lobes and teeth that follow the side veins. */
-function halfWidth(leaf: Leaf, veins: Veins, u: number, along: number, across: number, side: number): number {
+/** Half width of the uncut blade: breadth · tᵃ(1 − t)ᵇ over its greatest value, with a/b such that t is `widestAt` there. */
+function uncutHalfWidth(leaf: Leaf, along: number): number {
   const toTip = 0.92;
   const toBase = (toTip * leaf.widestAt) / (1 - leaf.widestAt);
-  const peak = leaf.widestAt ** toBase * (1 - leaf.widestAt) ** toTip;
-  const smooth = (leaf.breadth * along ** toBase * (1 - along) ** toTip) / peak;
+  return leaf.breadth * (along / leaf.widestAt) ** toBase * ((1 - along) / (1 - leaf.widestAt)) ** toTip;
+}
+
+/** Outline: a smooth blade, cut into lobes and teeth that follow the side veins. */
+function halfWidth(leaf: Leaf, veins: Veins, u: number, across: number, side: number, smooth: number): number {
+  const along = u / leaf.length;
   const phase = veins.phase(u, Math.min(across, smooth), side);
-  const lobe = leaf.lobeDepth === 0 ? 0 : leaf.lobeDepth * (0.5 - 0.5 * Math.cos(2 * Math.PI * (phase + 0.5))) ** 2.2 * smoothStep(0.02, 0.2, along) * smoothStep(1, 0.86, along);
+  const lobe = leaf.lobeDepth === 0 ? 0 : leaf.lobeDepth * (0.5 - 0.5 * Math.cos(2 * Math.PI * (phase + 0.5))) ** 2.2 * smoothStep(0.08, 0.42, along) * smoothStep(1, 0.86, along);
   const saw = leaf.teeth === 0 ? 0 : leaf.toothDepth * (1 - ((phase * leaf.teeth) % 1)) ** 0.9;
   return smooth * (1 - lobe) * (1 - saw) * (1 + 0.03 * side);
 }

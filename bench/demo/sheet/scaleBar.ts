@@ -25,7 +25,7 @@ export function layScaleBar(plate: Plate, left: number, top: number): void {
     lay(plate, plain(x, top + 53, x + 10 * unitsPerMillimetre, top + 60, centimetre % 2 === 0 ? ink : white));
   }
   for (let step = 0; step < 6; step += 1) {
-    const grey = 0.02 + 0.88 * (step / 5) ** 2;
+    const grey = 0.02 + 0.7 * (step / 5) ** 2;
     const width = (100 * unitsPerMillimetre) / 6;
     lay(plate, plain(left + step * width, top + 66, left + (step + 1) * width, top + 84, [grey, grey, grey]));
   }

@@ -84,7 +84,7 @@ export function layLobedLeaf(plate: Plate): void {
 /** Specimen c: a frond with paired leaflets. */
 export function layFrond(plate: Plate): void {
   const random = randomFrom(2718);
-  const rachis = smoothLine([{ x: 1180, y: 792 }, { x: 1236, y: 640 }, { x: 1300, y: 450 }, { x: 1336, y: 270 }, { x: 1330, y: 128 }], 24);
+  const rachis = smoothLine([{ x: 1180, y: 792 }, { x: 1236, y: 640 }, { x: 1300, y: 450 }, { x: 1336, y: 270 }, { x: 1332, y: 148 }], 24);
   const pairs = 17;
   for (let pair = 0; pair < pairs; pair += 1) {
     for (const side of [-1, 1]) {
@@ -96,6 +96,9 @@ export function layFrond(plate: Plate): void {
       lay(plate, leafPiece({ ...leaflet, breadth: length * 0.1 + 2.5, widestAt: 0.3, veinPairs: 9, teeth: 2, toothDepth: 0.12, bend: -0.05 * side, browning: random.between(0.1, 0.4) }));
     }
   }
+  const end = onLine(rachis, 1);
+  const terminal = serrateLeaf(random, { ...end, y: end.y + 24, angle: -Math.PI / 2 - 0.05 }, 92);
+  lay(plate, leafPiece({ ...terminal, breadth: 15, widestAt: 0.35, veinPairs: 8, teeth: 2, toothDepth: 0.12, browning: 0.3 }));
   layTwig(plate, rachis, 4, 1.6);
   lay(plate, tapePiece({ x: 1196, y: 748, length: 60, width: 15, angle: 0.3, startValue: 10 }));
   lay(plate, tapePiece({ x: 1318, y: 388, length: 56, width: 13, angle: 0.12, startValue: 11 }));
