@@ -67,14 +67,9 @@ export function insertAfterHeader(file: Uint8Array, chunks: readonly Chunk[]): U
   return Buffer.concat([file.subarray(0, headerEnd), ...chunks.map(({ whole }) => whole), file.subarray(headerEnd)]);
 }
 
-/** A chunk of its own. */
-export function makeChunk(type: string, data: Uint8Array): Buffer {
-  const whole = Buffer.alloc(data.length + frameByteLength);
-  whole.writeUInt32BE(data.length, 0);
-  whole.write(type, 4, "latin1");
-  whole.set(data, 8);
-  whole.writeUInt32BE(crc32(whole.subarray(4, -4)), whole.length - 4);
-  return whole;
+/** A PNG file of the given chunks. */
+export function joinChunks(chunks: readonly Chunk[]): Buffer {
+  return Buffer.concat([signature, ...chunks.map(({ whole }) => whole)]);
 }
 
 function notPng(file: Uint8Array, name: string): ConvolutionError {

@@ -1,8 +1,8 @@
 import { PNG } from "pngjs";
-import { type Raster, ConvolutionError } from "../index.js";
-import { type Chunk, isCritical, makeChunk, signature } from "./chunks.js";
+import { type Channels, ConvolutionError, type Raster } from "../index.js";
+import { type Chunk, isCritical, joinChunks } from "./chunks.js";
 import { type PngHeader, broken } from "./pngHeader.js";
-import { repackWhole } from "./scanlines.js";
+import { checkPackedRows } from "./scanlines.js";
 
 /** Samples a pixel in what the decoder hands out, whatever the file has. */
 const unpackedChannels = 4;
@@ -24,12 +24,21 @@ export function decodePixels(chunks: readonly Chunk[], header: PngHeader, name: 
   checkCriticalChunks(chunks, name);
   const unpacked = unpack(chunks, header, name);
   const { width, height, channels } = header;
-  const data = header.sample === "u16" ? new Uint16Array(width * height * channels) : new Uint8Array(width * height * channels);
-  const places = channels >= 3 ? [0, 1, 2, 3] : [0, 3];
-  for (let pixel = 0; pixel < width * height; pixel++)
-    for (let channel = 0; channel < channels; channel++) data[pixel * channels + channel] = unpacked[pixel * unpackedChannels + places[channel]];
+  const data = pickChannels(unpacked, width * height, channels);
   if (header.hasColourKey) applyColourKey(data, chunks, header, name);
   return { data, width, height, channels };
+}
+
+/** Of red, green, blue and alpha, those that the image has; grey stands in red. */
+function pickChannels(unpacked: PngSamples, pixelCount: number, channels: Channels): PngSamples {
+  if (channels === unpackedChannels) return unpacked;
+  const places = channels === 3 ? [0, 1, 2] : [0, 3];
+  const data = unpacked instanceof Uint16Array ? new Uint16Array(pixelCount * channels) : new Uint8Array(pixelCount * channels);
+  for (let channel = 0; channel < channels; channel++) {
+    const place = places[channel]!;
+    for (let pixel = 0; pixel < pixelCount; pixel++) data[pixel * channels + channel] = unpacked[pixel * unpackedChannels + place]!;
+  }
+  return data;
 }
 
 function checkCriticalChunks(chunks: readonly Chunk[], name: string): void {
@@ -41,15 +50,14 @@ function checkCriticalChunks(chunks: readonly Chunk[], name: string): void {
   }
 }
 
-function unpack(chunks: readonly Chunk[], header: PngHeader, name: string): Uint8Array | Uint16Array {
-  const before = chunks.filter(({ type }) => type === "IHDR" || type === "PLTE" || (header.isPalette && type === "tRNS"));
-  const packed = Buffer.concat(chunks.filter(({ type }) => type === "IDAT").map((chunk) => chunk.data));
+function unpack(chunks: readonly Chunk[], header: PngHeader, name: string): PngSamples {
+  const wanted = chunks.filter(({ type }) => pixelTypes.has(type) || (header.isPalette && type === "tRNS"));
+  const packed = wanted.filter(({ type }) => type === "IDAT").map((chunk) => chunk.data);
   try {
-    const whole = makeChunk("IDAT", repackWhole(packed, header.unpackedByteLength));
-    const file = Buffer.concat([signature, ...before.map((chunk) => chunk.whole), whole, makeChunk("IEND", new Uint8Array())]);
+    checkPackedRows(Buffer.concat(packed), header.unpackedByteLength);
     // At 16 bits the decoder returns a Uint16Array when told not to rescale; fewer than 8 bits must be rescaled.
-    const { data } = PNG.sync.read(file, { checkCRC: false, skipRescale: header.bitDepth === 16 });
-    return data;
+    const { data } = PNG.sync.read(joinChunks(wanted), { checkCRC: false, skipRescale: header.bitDepth === 16 });
+    return plainSamples(data);
   } catch (error) {
     const reason = error instanceof Error ? error.message : String(error);
     throw new ConvolutionError("invalid-png", `${name} is a damaged PNG: its image data do not unpack (${reason}). Export or copy the file again.`, {
@@ -58,6 +66,12 @@ function unpack(chunks: readonly Chunk[], header: PngHeader, name: string): Uint
       cause: error,
     });
   }
+}
+
+/** The decoder's Buffer (8 bits) as the plain array under it; its Uint16Array as it is. */
+function plainSamples(data: Buffer | Uint16Array): PngSamples {
+  const { buffer, byteOffset, length } = data as { buffer: ArrayBuffer; byteOffset: number; length: number };
+  return data instanceof Uint16Array ? new Uint16Array(buffer, byteOffset, length) : new Uint8Array(buffer, byteOffset, length);
 }
 
 /** tRNS of a grey or colour image: one colour, in the file's own depth, that is transparent (PNG §11.3.1.1). */

@@ -1,7 +1,7 @@
 import { randomBytes } from "node:crypto";
 import { type Stats, unlinkSync } from "node:fs";
 import { chmod, open, readFile, realpath, rename, stat, unlink } from "node:fs/promises";
-import { basename, dirname, join } from "node:path";
+import { dirname, join } from "node:path";
 import { ConvolutionError } from "../index.js";
 
 /** @throws ConvolutionError `file-unreadable` */
@@ -47,7 +47,7 @@ export async function checkOutput(path: string, force: boolean): Promise<void> {
 export async function writeOutput(path: string, content: Uint8Array, force: boolean): Promise<void> {
   await checkOutput(path, force);
   const target = await realpath(path).catch(() => path);
-  const begun = join(dirname(target), `.${basename(target)}.${randomBytes(6).toString("hex")}.part`);
+  const begun = join(dirname(target), `.tapwise-${randomBytes(6).toString("hex")}.part`);
   const release = removeWhenInterrupted(begun);
   try {
     await writeDurably(begun, content);

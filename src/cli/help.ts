@@ -8,7 +8,7 @@ function builderLines(): string {
     summary,
   }));
   const width = Math.max(...forms.map(({ form }) => form.length));
-  return forms.map(({ form, summary }) => `             ${form.padEnd(width)}  ${summary}`).join("\n");
+  return forms.map(({ form, summary }) => `    ${form.padEnd(width)}  ${summary}`).join("\n");
 }
 
 const exitCodeLine = "Exit codes: 0 done, 1 failed (files, memory, host), 2 the command has to be written differently.";
@@ -28,7 +28,8 @@ const kernelHelp = `
 Kernels (quote them; pass one with --kernel):
   builder  its name and values in order, or name=value: "gaussian 3", "box width=9 height=1"
 ${builderLines()}
-           Values are numbers or fractions (1/3); x,y gives the axes one each where a builder allows it.
+           Values are numbers or fractions (1/3), or x,y for one on each axis: "gaussian 3,1".
+           axis: x, y. sampling: point, area. stencil: cross, square, diagonal, mehrstellen, oono-puri.
   taps     rows parted by ";", numbers by blanks or commas, at the end a divisor for all of them:
            "1 2 1; 2 4 2; 1 2 1 /16"
   file     a name that ends in .json: [[1, 2, 1], [2, 4, 2], [1, 2, 1]]

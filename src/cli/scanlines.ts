@@ -1,4 +1,4 @@
-import { constants, deflateSync, inflateSync } from "node:zlib";
+import { constants, inflateSync } from "node:zlib";
 
 /** First column, first row, column step and row step of the seven passes of an interlaced image (PNG, Third Edition, §8.2). */
 const passes = [
@@ -25,22 +25,19 @@ export function scanlineByteLength(width: number, height: number, bitsPerPixel: 
 }
 
 /**
- * Unpacks image data and packs them again without compression.
- *
- * The decoder's own unpacking takes damaged data for memory that happens to lie about, so it is given data that are known to be whole.
- * Never takes more memory than announced: packed data may hold a thousand times as much as the header says.
+ * Unpacks image data to see that they are whole: the decoder's own unpacking takes missing data for memory that happens to lie about.
+ * Never takes more memory than announced; packed data may hold a thousand times as much as the header says.
  *
  * @throws Error that says what is wrong with the data
  */
-export function repackWhole(packed: Uint8Array, byteLength: number): Buffer {
-  const unpacked = unpackUpTo(packed, byteLength);
-  if (unpacked.length < byteLength) throw new Error(`they hold ${unpacked.length} bytes instead of ${byteLength}`);
-  return deflateSync(unpacked, { level: constants.Z_NO_COMPRESSION });
+export function checkPackedRows(packed: Uint8Array, byteLength: number): void {
+  const { length } = unpackUpTo(packed, byteLength);
+  if (length < byteLength) throw new Error(`they hold ${length} bytes instead of ${byteLength}`);
 }
 
 function unpackUpTo(packed: Uint8Array, byteLength: number): Buffer {
   try {
-    return inflateSync(packed, { maxOutputLength: byteLength });
+    return inflateSync(packed, { maxOutputLength: byteLength, chunkSize: Math.max(byteLength, constants.Z_MIN_CHUNK) });
   } catch (error) {
     const isTooLarge = error instanceof RangeError && "code" in error && error.code === "ERR_BUFFER_TOO_LARGE";
     throw isTooLarge ? new Error(`they hold more than ${byteLength} bytes`, { cause: error }) : error;

@@ -34,6 +34,12 @@ describe("writing a file", () => {
     expect(await readdir(at())).toEqual(["out.png"]);
   });
 
+  it("takes names as long as the file system does", async () => {
+    const name = `${"x".repeat(251)}.png`;
+    await writeOutput(at(name), content, false);
+    expect(await readdir(at())).toEqual([name]);
+  });
+
   it("follows a link to the file that is meant", async () => {
     await mkdir(at("sheets"));
     await writeFile(at("sheets/real.png"), "old");

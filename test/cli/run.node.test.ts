@@ -134,7 +134,7 @@ describe("help", () => {
   it.each(["filter", "explain"])("of %s lists every builder, border and option", async (command) => {
     const { exitCode, stdout } = await tapwise(command, "--help");
     expect(exitCode).toBe(0);
-    for (const name of Object.keys(builders)) expect(stdout).toContain(`\n             ${name}`);
+    for (const name of Object.keys(builders)) expect(stdout).toContain(`\n    ${name}`);
     for (const words of ["renormalised", "--border-rows", "--light", "--memory-limit", "running-sum", "Examples:"]) expect(stdout).toContain(words);
     for (const line of stdout.split("\n")) expect(line.length).toBeLessThanOrEqual(120);
   });
