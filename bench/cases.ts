@@ -1,4 +1,4 @@
-import { box, gaussian, kernel, sharpen, type Kernel } from "../src/kernels/index.js";
+import { box, gaussian, kernel, sharpen, type Kernel } from "../src/index.js";
 import type { Layout, PrepareOptions } from "../src/types.js";
 import { noise } from "../test/support/noise.js";
 
@@ -32,7 +32,12 @@ const listed = {
   directStraight3: { name: "direct RGBA bytes 3×3, straight alpha", layout: photograph, kernel: structureless(3), options: { method: "direct" } },
   separable31: { name: "separable f32 31 taps", layout: plane, kernel: bell(31), options: { method: "separable" } },
   separableBytes31: { name: "separable RGBA bytes 31 taps", layout: photograph, kernel: bell(31), options: { method: "separable", alpha: "none" } },
-  separableLinear9: { name: "separable RGBA bytes 9 taps, linear light", layout: photograph, kernel: bell(9), options: { method: "separable", light: "linear" } },
+  separableLinear9: {
+    name: "separable RGBA bytes 9 taps, linear light",
+    layout: photograph,
+    kernel: bell(9),
+    options: { method: "separable", light: "linear" },
+  },
   fft31: { name: "FFT f32 31×31", layout: plane, kernel: structureless(31), options: { method: "fft", border: "zero" } },
   fft127: { name: "FFT f32 127×127", layout: plane, kernel: structureless(127), options: { method: "fft", border: "zero" } },
   fftBytes65: { name: "FFT RGBA bytes 65×65", layout: photograph, kernel: structureless(65), options: { method: "fft", alpha: "none" } },

@@ -25,7 +25,8 @@ export function verify(one: Case, image: Raster, result: ArrayLike<number>, tole
       const { exact } = define(image, one.kernel, { ...regionless(one), region: { x, y, width: 1, height: 1 } }, one.options.correlate);
       for (let channel = 0; channel < channels; channel += 1) {
         const difference = Math.abs(result[(y * width + x) * channels + channel]! - exact[channel]!);
-        if (!(difference <= tolerance + rounding)) throw new Error(`${one.name}: off by ${difference} at row ${y}, column ${x}; ${tolerance + rounding} is allowed`);
+        if (!(difference <= tolerance + rounding))
+          throw new Error(`${one.name}: off by ${difference} at row ${y}, column ${x}; ${tolerance + rounding} is allowed`);
         largest = Math.max(largest, difference);
       }
     }

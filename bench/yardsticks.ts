@@ -60,7 +60,10 @@ const rows: Row[] = [];
 if (versions.gcc === undefined) console.log("plain C is skipped: there is no gcc");
 else {
   console.log(`${versions.gcc}: gcc ${flags.join(" ")}`);
-  for (const [one, loops] of [[cases.direct9, "direct"], [cases.separable31, "separable"]] as [Case, PlainLoops][])
+  for (const [one, loops] of [
+    [cases.direct9, "direct"],
+    [cases.separable31, "separable"],
+  ] as [Case, PlainLoops][])
     rows.push(...(await measureAll(one, (planes) => startPlainC(folder, loops, one.kernel, planes, one.layout.width), formsOf[loops], "C")));
 }
 if (versions.scipy === undefined) console.log("SciPy is skipped: there is no python3 with scipy");

@@ -1,10 +1,9 @@
 import { spawnSync } from "node:child_process";
-import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import type { Kernel } from "../../src/kernels/kernel.js";
 import { firstLineOf } from "../host.js";
 import { YardstickProcess } from "./process.js";
-import { writeFloats } from "./workFolder.js";
+import { freshPath, writeFloats } from "./workFolder.js";
 
 const compiler = "gcc";
 export const flags = ["-O3", "-msse4.2"];
@@ -18,7 +17,7 @@ export type PlainLoops = keyof typeof formsOf;
 /** Compiles the loops for that number of taps: constants to the compiler. */
 function compile(folder: string, loops: PlainLoops, columns: number, rows: number): string {
   const source = fileURLToPath(new URL(`${loops}.c`, import.meta.url));
-  const binary = join(folder, `${loops}-${columns}-${rows}`);
+  const binary = freshPath(folder, `${loops}-${columns}-${rows}`);
   const { status, stderr } = spawnSync(compiler, [...flags, `-DTAP_COLUMNS=${columns}`, `-DTAP_ROWS=${rows}`, source, "-o", binary], { encoding: "utf8" });
   if (status !== 0) throw new Error(`${compiler} does not compile ${loops}.c:\n${stderr}`);
   return binary;
@@ -51,5 +50,5 @@ export function startPlainC(folder: string, loops: PlainLoops, kernel: Kernel, p
     writeFloats(folder, "planes.f32", planes),
     writeFloats(folder, `${loops}-taps.f32`, [Float32Array.from(taps)]),
   ];
-  return new YardstickProcess(compile(folder, loops, m, n), parameters, join(folder, `${loops}-result.f32`));
+  return new YardstickProcess(compile(folder, loops, m, n), parameters, freshPath(folder, `${loops}-result.f32`));
 }

@@ -1,9 +1,8 @@
-import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import type { Kernel } from "../../src/kernels/kernel.js";
 import { firstLineOf } from "../host.js";
 import { YardstickProcess } from "./process.js";
-import { writeFloats } from "./workFolder.js";
+import { freshPath, writeFloats } from "./workFolder.js";
 
 /** The first of them that has SciPy is used: a system's own Python may have it where another one on the path does not. */
 const interpreters = ["python3", "/usr/bin/python3"];
@@ -35,5 +34,5 @@ export function startScipy(folder: string, kernel: Kernel, planes: readonly Floa
     String(n),
     writeFloats(folder, "scipy-taps.f32", [Float32Array.from(kernel.taps)]),
   ];
-  return new YardstickProcess(findInterpreter() ?? "python3", parameters, join(folder, "scipy-result.f32"), oneThread);
+  return new YardstickProcess(findInterpreter() ?? "python3", parameters, freshPath(folder, "scipy-result.f32"), oneThread);
 }

@@ -9,8 +9,16 @@ export function makeWorkFolder(): string {
   return folder;
 }
 
+let fileCount = 0;
+
+/** A path in the folder that nothing else has. */
+export function freshPath(folder: string, name: string): string {
+  fileCount += 1;
+  return join(folder, `${fileCount}-${name}`);
+}
+
 export function writeFloats(folder: string, name: string, values: readonly Float32Array[]): string {
-  const path = join(folder, name);
+  const path = freshPath(folder, name);
   writeFileSync(path, Buffer.concat(values.map(({ buffer, byteOffset, byteLength }) => Buffer.from(buffer, byteOffset, byteLength))));
   return path;
 }

@@ -1,0 +1,35 @@
+import type { Engine, Filter, Raster, ResultRaster } from "../src/index.js";
+import type { Case } from "./cases.js";
+import type { Contender } from "./contender.js";
+import { planesOf } from "./inputs.js";
+import { verify } from "./verify.js";
+
+/** A prepared filter that runs a case into a target of its own. */
+export class EngineContender implements Contender {
+  readonly name: string;
+  readonly case: Case;
+  readonly planes: readonly Raster[];
+  readonly target: ResultRaster;
+  readonly filter: Filter;
+
+  constructor(engine: Engine, one: Case, planes: readonly Raster[] = planesOf(one.layout)) {
+    this.name = one.name;
+    this.case = one;
+    this.planes = planes;
+    this.filter = engine.prepare(one.kernel, one.layout, one.options);
+    this.target = this.filter.run(planes[0]!);
+  }
+
+  run(plane: number): number {
+    const image = this.planes[plane % this.planes.length]!;
+    const begun = performance.now();
+    this.filter.run(image, this.target);
+    return performance.now() - begun;
+  }
+
+  /** Largest difference from the definition; throws where it is above the filter's own bound. */
+  verify(): number {
+    this.filter.run(this.planes[0]!, this.target);
+    return verify(this.case, this.planes[0]!, this.target.data, this.filter.explanation.errorBound);
+  }
+}
