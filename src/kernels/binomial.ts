@@ -20,8 +20,8 @@ const orderRange: NumberRange = { what: "a whole number, 0…1000", least: 0, mo
  * @param options a bare number is the order on both axes
  * @throws ConvolutionError `unknown-option`, `invalid-number`
  * @example
- * binomial(2); // [1 2 1; 2 4 2; 1 2 1] / 16
- * binomial({ order: { x: 4, y: 0 } }); // [1 4 6 4 1] / 16
+ * scaled(binomial(2), 16).taps; // [1, 2, 1, 2, 4, 2, 1, 2, 1]
+ * scaled(binomial({ order: { x: 4, y: 0 } }), 16).taps; // [1, 4, 6, 4, 1]
  */
 export function binomial(options: BinomialOptions | number): Kernel {
   const given = asOptions<BinomialOptions>("binomial", options, "order");

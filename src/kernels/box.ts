@@ -21,8 +21,7 @@ export interface BoxOptions {
  * @param options a bare number is the side of a square
  * @throws ConvolutionError `unknown-option`, `invalid-number`, `invalid-origin`, `invalid-kernel` (too many taps)
  * @example
- * box(3);
- * box({ width: 9, height: 1 }); // along rows only
+ * box({ width: 4, height: 1 }).taps; // [0.25, 0.25, 0.25, 0.25]
  */
 export function box(options: BoxOptions | number): Kernel {
   const given = asOptions<BoxOptions>("box", options, "width");

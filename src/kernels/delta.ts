@@ -21,7 +21,9 @@ export interface DeltaOptions {
  *
  * @throws ConvolutionError `unknown-option`, `invalid-number`, `invalid-origin` (origin or position outside), `invalid-kernel` (too many taps)
  * @example
- * delta({ width: 5, position: { x: 4, y: 2 } }); // shifts an image two samples to the right
+ * const shift = delta({ width: 5, height: 1, position: { x: 4, y: 0 } });
+ * shift.taps; // [0, 0, 0, 0, 1]
+ * engine.convolve(image, shift); // two samples to the right
  */
 export function delta(options: DeltaOptions | number = {}): Kernel {
   const given = asOptions<DeltaOptions>("delta", options, "width");

@@ -24,7 +24,12 @@ export function scaled(given: Kernel, factor: number): Kernel {
   const source = asKernel(given);
   const { width, height, origin } = source;
   const finiteFactor = checkedNumber("scaled", "the factor", factor, { what: "a finite number" });
-  return makeKernel(width, height, Float64Array.from(readTaps(source), (tap) => tap * finiteFactor), origin);
+  return makeKernel(
+    width,
+    height,
+    Float64Array.from(readTaps(source), (tap) => tap * finiteFactor),
+    origin,
+  );
 }
 
 /**
@@ -42,5 +47,10 @@ export function normalised(given: Kernel): Kernel {
     const message = `The taps of the ${width}×${height} kernel sum to ${sum} and cannot be scaled to 1. Use scaled(kernel, factor) instead.`;
     throw new ConvolutionError("invalid-kernel", message, { expected: "a sum other than 0", received: sum });
   }
-  return makeKernel(width, height, Float64Array.from(taps, (tap) => tap / sum), origin);
+  return makeKernel(
+    width,
+    height,
+    Float64Array.from(taps, (tap) => tap / sum),
+    origin,
+  );
 }

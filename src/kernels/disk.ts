@@ -25,7 +25,7 @@ const radiusRange: NumberRange = { what: "a number of samples above 0, at most 4
  * @throws ConvolutionError `unknown-option`, `invalid-number`, `unknown-value`, `invalid-kernel` (too many taps)
  * Source  geometric optics; common practice
  * @example
- * disk({ radius: 2.5 }); // 5×5
+ * disk({ radius: 2.5 }).width; // 5
  */
 export function disk(options: DiskOptions | number): Kernel {
   const given = asOptions<DiskOptions>("disk", options, "radius");

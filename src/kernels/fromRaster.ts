@@ -3,7 +3,7 @@ import type { Raster } from "../types.js";
 import { normalised } from "./derive.js";
 import { allowedTapCount } from "./fromTaps.js";
 import { type Kernel, type Origin, makeKernel } from "./kernel.js";
-import { checkOptionNames, checkedNumber, chosenWord } from "./options.js";
+import { checkOptionNames, checkedNumber } from "./options.js";
 
 export interface KernelFromRasterOptions {
   /** Taken from every sample, in the image's own units: the level where there is no light. @defaultValue 0 */
@@ -29,7 +29,8 @@ const sampleArrays = ["Uint8Array", "Uint8ClampedArray", "Uint16Array", "Float32
  *         `unsupported-samples`, `detached-samples`, `invalid-number` (background), `invalid-origin` (centre outside), `invalid-kernel` (too many samples),
  *         `unknown-value`, `unknown-option`
  * @example
- * const blur = kernelFromRaster(photographOfAPinhole, { background: 12 });
+ * const pinhole = { data: Uint8Array.of(10, 10, 10, 10, 50, 30, 10, 10, 10), width: 3, height: 3 };
+ * kernelFromRaster(pinhole, { background: 10 }).taps; // [0, 0, 0, 0, 0.6667, 0.3333, 0, 0, 0]
  */
 export function kernelFromRaster(raster: Raster, options: KernelFromRasterOptions = {}): Kernel {
   checkOptionNames("kernelFromRaster", options, ["background", "centre", "normalise"]);
@@ -43,7 +44,9 @@ export function kernelFromRaster(raster: Raster, options: KernelFromRasterOption
 }
 
 function chosenBoolean(value: unknown = true): boolean {
-  return typeof value === "boolean" ? value : chosenWord("kernelFromRaster", "normalise", String(value), ["true", "false"]) === "true";
+  if (typeof value === "boolean") return value;
+  const message = `kernelFromRaster: normalise is ${JSON.stringify(value)}. Use true or false.`;
+  throw new ConvolutionError("unknown-value", message, { expected: [true, false], received: value });
 }
 
 function greySamples(raster: Raster, background: number): { width: number; height: number; taps: Float64Array<ArrayBuffer> } {
@@ -73,8 +76,12 @@ function checkedShape(raster: Raster): Required<Omit<Raster, "colorSpace" | "cha
     const message = "The image's buffer is detached: it was transferred elsewhere. Hand over a copy instead.";
     throw new ConvolutionError("detached-samples", message, { expected: "an attached buffer", received: "detached" });
   }
-  for (const [name, side] of [["width", width], ["height", height]] as const) {
-    if (!Number.isInteger(side) || side <= 0) refuse(`The image's ${name} is ${String(side)}. It must be a positive whole number.`, "a positive whole number", side);
+  for (const [name, side] of [
+    ["width", width],
+    ["height", height],
+  ] as const) {
+    if (!Number.isInteger(side) || side <= 0)
+      refuse(`The image's ${name} is ${String(side)}. It must be a positive whole number.`, "a positive whole number", side);
   }
   allowedTapCount(width, height);
   const channels = raster.channels ?? data.length / (width * height);

@@ -42,7 +42,7 @@ export function kernel(rows: readonly ArrayLike<number>[] | ArrayLike<number>, o
  * @param rowTaps run along a row; as many as the kernel has columns
  * @throws ConvolutionError `invalid-kernel` (empty, not finite, beyond single precision), `invalid-origin`, `unknown-option`
  * @example
- * outer([1, 2, 1], [-1, 0, 1]).taps; // −1 0 1, −2 0 2, −1 0 1
+ * outer([1, 2, 1], [-1, 0, 1]).taps; // [-1, 0, 1, -2, 0, 2, -1, 0, 1]
  */
 export function outer(columnTaps: ArrayLike<number>, rowTaps: ArrayLike<number>, options: KernelOptions = {}): Kernel {
   checkOptionNames("outer", options, ["origin"]);

@@ -163,7 +163,12 @@ function printedRows(taps: Float64Array, width: number): string {
   const widest = Math.max(...words.map((word) => word.length));
   const rows: string[] = [];
   for (let k = 0; k < words.length; k += width) {
-    rows.push(`  ${words.slice(k, k + width).map((word) => word.padStart(widest)).join("  ")}`);
+    rows.push(
+      `  ${words
+        .slice(k, k + width)
+        .map((word) => word.padStart(widest))
+        .join("  ")}`,
+    );
   }
   return rows.join("\n");
 }

@@ -23,8 +23,8 @@ const lengthRange: NumberRange = { what: "a number of samples above 0, at most 8
  * @throws ConvolutionError `unknown-option`, `invalid-number`, `invalid-kernel` (too many taps)
  * Source  common practice (uniform motion during the exposure)
  * @example
- * line({ length: 5 }); // five taps of 1/5
- * line({ length: 15, angleInDegrees: 30 });
+ * line({ length: 4 }).taps; // [0.125, 0.25, 0.25, 0.25, 0.125]
+ * line({ length: 15, angleInDegrees: 90 }).height; // 15
  */
 export function line(options: LineOptions | number): Kernel {
   const given = asOptions<LineOptions>("line", options, "length");

@@ -28,7 +28,7 @@ const amountRange: NumberRange = { what: "a number, 0…1000", least: 0, most: 1
  * @throws ConvolutionError `unknown-option`, `invalid-number`, `unknown-value` (stencil)
  * Source  Rosenfeld & Kak, Digital Picture Processing, chapter on enhancement (from memory)
  * @example
- * sharpen(); // 0 −1 0, −1 5 −1, 0 −1 0
+ * sharpen().taps; // [0, -1, 0, -1, 5, -1, 0, -1, 0]
  */
 export function sharpen(options: SharpenOptions | number = {}): Kernel {
   const given = asOptions<SharpenOptions>("sharpen", options, "amount");
@@ -46,7 +46,7 @@ export function sharpen(options: SharpenOptions | number = {}): Kernel {
  * @throws ConvolutionError `unknown-option`, `invalid-number`, `unknown-value` (sampling), `invalid-kernel` (too many taps)
  * Source  common practice
  * @example
- * unsharp({ sigma: 2, amount: 0.8 });
+ * engine.convolve(photo, unsharp({ sigma: 2, amount: 0.8 }));
  */
 export function unsharp(options: UnsharpOptions | number): Kernel {
   const { amount: givenAmount, ...blur } = asOptions<UnsharpOptions>("unsharp", options, "sigma");

@@ -48,5 +48,8 @@ export function nearestName(given: string, names: readonly string[]): string | u
 
 /** Only the first 64 letters are compared: a name is never longer, and what was given may be anything. */
 function folded(name: string): string {
-  return name.slice(0, 64).toLowerCase().replaceAll(/[-_\s]/g, "");
+  return name
+    .slice(0, 64)
+    .toLowerCase()
+    .replaceAll(/[-_\s]/g, "");
 }

@@ -2,8 +2,8 @@
  * Real numbers in fixed point, as whole numbers of 2^−1700, for checking doubles: far more digits than any result needs.
  * The formulas are the defining series; nothing is shared with the package's own functions.
  */
-export const fractionBits = 1700n;
-const one = 1n << fractionBits;
+const fractionBits = 1700n;
+export const one = 1n << fractionBits;
 
 /** A finite double, exactly. */
 export function exactly(x: number): bigint {
@@ -23,8 +23,8 @@ export function ulpError(got: number, exact: bigint): number {
 export const pi = 16n * arctanOfReciprocal(5n) - 4n * arctanOfReciprocal(239n);
 
 /** eˣ: the Taylor series of x / 2¹², squared twelve times. */
-export function exactExponential(x: number): bigint {
-  const step = exactly(x) >> 12n;
+export function exactExponential(x: bigint): bigint {
+  const step = x >> 12n;
   let sum = one;
   let term = one;
   for (let k = 1n; term !== 0n && term !== -1n; k++) {
@@ -36,15 +36,15 @@ export function exactExponential(x: number): bigint {
 }
 
 /** erf(x) = 2/√π · Σ (−1)ⁿ x²ⁿ⁺¹ / (n! (2n + 1)). */
-export function exactErrorFunction(x: number): bigint {
-  const square = product(exactly(x), exactly(x));
-  let power = exactly(x);
+export function exactErrorFunction(x: bigint): bigint {
+  const square = product(x, x);
+  let power = x;
   let sum = 0n;
   for (let n = 0n; power !== 0n && power !== -1n; n++) {
     sum += power / (2n * n + 1n);
     power = -product(power, square) / (n + 1n);
   }
-  return (2n * sum * one) / squareRoot(pi);
+  return quotient(2n * sum, squareRoot(pi));
 }
 
 /** cos and sin of 2πk / n, k and n whole. */
@@ -65,12 +65,12 @@ export function toNumber(x: bigint): number {
   return Number(x >> (fractionBits - 80n)) / 2 ** 80;
 }
 
-export function exactOne(): bigint {
-  return one;
+export function product(a: bigint, b: bigint): bigint {
+  return (a * b) >> fractionBits;
 }
 
-function product(a: bigint, b: bigint): bigint {
-  return (a * b) >> fractionBits;
+export function quotient(a: bigint, b: bigint): bigint {
+  return (a << fractionBits) / b;
 }
 
 function arctanOfReciprocal(n: bigint): bigint {
@@ -83,7 +83,7 @@ function arctanOfReciprocal(n: bigint): bigint {
   return sum;
 }
 
-function squareRoot(x: bigint): bigint {
+export function squareRoot(x: bigint): bigint {
   const target = x << fractionBits;
   let root = 1n << (fractionBits + 2n);
   for (let next = (root + target / root) >> 1n; next < root; next = (root + target / root) >> 1n) root = next;
