@@ -1,0 +1,153 @@
+import { createEngine, kernel, type ErrorCode, type HardwareProfile } from "../../src/index.js";
+import * as simdCore from "../../src/generated/simd.js";
+import { untyped, type ErrorCase } from "./errorCase.js";
+
+/** Runs with another value of a global, and puts the old one back. */
+async function withGlobal(name: "WebAssembly", value: unknown, act: () => Promise<unknown>): Promise<unknown> {
+  const before = Object.getOwnPropertyDescriptor(globalThis, name)!;
+  Object.defineProperty(globalThis, name, { ...before, value });
+  try {
+    return await act();
+  } finally {
+    Object.defineProperty(globalThis, name, before);
+  }
+}
+
+/** A host whose content security policy forbids to compile, in the words of Chromium. */
+function blockedWebAssembly(): object {
+  const refuse = (): never => {
+    throw new WebAssembly.CompileError(
+      "WebAssembly.Module(): Compiling or instantiating WebAssembly module violates the following Content Security policy directive because " +
+        "neither 'wasm-eval' nor 'unsafe-eval' is an allowed source of script",
+    );
+  };
+  const { Memory, Table, Global, Instance, CompileError, LinkError, RuntimeError, validate } = WebAssembly;
+  const rejectLater = async (): Promise<never> => refuse();
+  const Module = class {
+    constructor() {
+      refuse();
+    }
+  };
+  return { Memory, Table, Global, Instance, CompileError, LinkError, RuntimeError, validate, Module, compile: rejectLater, instantiate: rejectLater };
+}
+
+function bytesOf(base64: string): Uint8Array<ArrayBuffer> {
+  return Uint8Array.from(atob(base64), (character) => character.charCodeAt(0));
+}
+
+/** The core with every f32x4.mul (fd e6 01) replaced by f32x4.sub (fd e5 01): it links and runs, and is wrong. */
+function wrongCore(): WebAssembly.Module {
+  const code = Object.values(simdCore).find((value) => typeof value === "string" && value.length > 1000) as string;
+  const bytes = bytesOf(code);
+  let replaced = 0;
+  for (let index = 0; index + 2 < bytes.length; index++) {
+    if (bytes[index] !== 0xfd || bytes[index + 1] !== 0xe6 || bytes[index + 2] !== 0x01) continue;
+    bytes[index + 1] = 0xe5;
+    replaced++;
+  }
+  if (replaced === 0) throw new Error("the core has no vector product to break");
+  return new WebAssembly.Module(bytes);
+}
+
+/** A host that has no memory left when the engine asks for more. */
+async function withoutMemory(act: () => unknown): Promise<unknown> {
+  const { grow } = WebAssembly.Memory.prototype;
+  WebAssembly.Memory.prototype.grow = () => {
+    throw new RangeError("WebAssembly.Memory.grow(): Unable to grow instance memory");
+  };
+  try {
+    return await act();
+  } finally {
+    WebAssembly.Memory.prototype.grow = grow;
+  }
+}
+
+const profile = (change: object): HardwareProfile => untyped({ version: 1, host: "a test", build: "simd", date: "2026-01-01", nanoseconds: {}, ...change });
+
+export const states: Pick<
+  Record<ErrorCode, ErrorCase[]>,
+  "disposed" | "invalid-profile" | "memory-limit" | "memory-exhausted" | "webassembly-missing" | "webassembly-blocked" | "self-test-failed"
+> = {
+  disposed: [
+    {
+      title: "run after the filter is disposed",
+      act: ({ filter, image }) => {
+        const made = filter();
+        made.dispose();
+        made.dispose();
+        return made.run(image);
+      },
+      says: [/disposed/],
+    },
+    {
+      title: "convolve after the engine is disposed",
+      act: async ({ image, kernel: taps }) => {
+        const engine = await createEngine();
+        engine.dispose();
+        engine.dispose();
+        return engine.convolve(image, taps);
+      },
+      says: [/disposed/],
+    },
+    {
+      title: "prepare after the engine is disposed",
+      act: async ({ kernel: taps }) => {
+        const engine = await createEngine();
+        engine.dispose();
+        return engine.prepare(taps, { width: 3, height: 3 });
+      },
+    },
+    {
+      title: "run after the engine is disposed",
+      act: async ({ image, kernel: taps }) => {
+        const engine = await createEngine();
+        const filter = engine.prepare(taps, { width: 6, height: 5 });
+        engine.dispose();
+        return filter.run(image);
+      },
+    },
+    {
+      title: "explain after the engine is disposed",
+      act: async ({ kernel: taps }) => {
+        const engine = await createEngine();
+        engine.dispose();
+        return engine.explain(taps, { width: 3, height: 3 });
+      },
+    },
+  ],
+  "invalid-profile": [
+    { title: "another version", act: () => createEngine({ profile: profile({ version: 7 }) }), says: ["7", "1"] },
+    { title: "no coefficients", act: () => createEngine({ profile: profile({ nanoseconds: undefined }) }), says: ["nanoseconds"] },
+    { title: "missing coefficients", act: () => createEngine({ profile: profile({}) }) },
+    { title: "not an object", act: () => createEngine({ profile: untyped("fast") }) },
+  ],
+  "memory-limit": [
+    {
+      title: "a limit that no method can meet",
+      act: async ({ kernel: taps }) => {
+        const engine = await createEngine({ memoryLimit: 2 ** 20 });
+        try {
+          return engine.prepare(taps, { width: 2_000_000, height: 4, channels: 4, sample: "f32" });
+        } finally {
+          // The same engine works on for what does fit.
+          engine.convolve({ data: Uint8Array.of(1, 2, 3), width: 3, height: 1 }, kernel([[1]]));
+          engine.dispose();
+        }
+      },
+      says: [/1048576|1,048,576|1 MiB/],
+    },
+  ],
+  "memory-exhausted": [
+    {
+      title: "the host grants no more memory",
+      act: ({ engine, kernel: taps }) => withoutMemory(() => engine.prepare(taps, { width: 4000, height: 4000, channels: 4, sample: "f32" })),
+    },
+  ],
+  "webassembly-missing": [
+    { title: "a host without WebAssembly", act: () => withGlobal("WebAssembly", undefined, () => createEngine()), says: ["WebAssembly"] },
+  ],
+  "webassembly-blocked": [
+    { title: "a policy that forbids to compile", act: () => withGlobal("WebAssembly", blockedWebAssembly(), () => createEngine()), says: ["wasm-unsafe-eval"] },
+  ],
+  "self-test-failed": [{ title: "a module that multiplies wrongly", act: () => createEngine({ build: "simd", module: wrongCore() }) }],
+};
