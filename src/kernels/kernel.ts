@@ -27,7 +27,7 @@ export interface Origin {
 }
 
 /** Taps above this round to infinity in the engine's single-precision arithmetic. */
-export const largestTap = 3.4028234663852886e38;
+const largestTap = 3.4028234663852886e38;
 
 /** Kernels above this many taps (512 MiB of them) are refused instead of ending in the host's out-of-memory error. */
 export const largestTapCount = 67_108_864;

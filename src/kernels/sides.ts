@@ -12,7 +12,7 @@ export interface PerAxis {
 export const sideRange: NumberRange = { what: `a whole number of taps, 1…${largestTapCount}`, least: 1, most: largestTapCount, whole: true };
 
 /** Radii above this would make a square kernel of more taps than are supported. */
-export const largestRadius = 4095;
+const largestRadius = 4095;
 
 /**
  * One number for both axes, or `{ x, y }`.

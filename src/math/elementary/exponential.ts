@@ -30,7 +30,7 @@ export function exponential(x: number, xLow = 0): number {
 }
 
 /** x · 2ᵏ for −1080 ≤ k ≤ 1030, exact where the result is a normal number. */
-export function timesPowerOfTwo(x: number, k: number): number {
+function timesPowerOfTwo(x: number, k: number): number {
   const half = Math.trunc(k / 2);
   return x * powerOfTwo(half) * powerOfTwo(k - half);
 }
