@@ -23,11 +23,9 @@ function blockedWebAssembly(): object {
   };
   const { Memory, Table, Global, Instance, CompileError, LinkError, RuntimeError, validate } = WebAssembly;
   const rejectLater = async (): Promise<never> => refuse();
-  const Module = class {
-    constructor() {
-      refuse();
-    }
-  };
+  function Module(): never {
+    return refuse();
+  }
   return { Memory, Table, Global, Instance, CompileError, LinkError, RuntimeError, validate, Module, compile: rejectLater, instantiate: rejectLater };
 }
 
