@@ -16,7 +16,7 @@ const orderRange: NumberRange = { what: "a whole number, 0…1000", least: 0, mo
  *
  *     taps = b(order.y) · b(order.x)ᵀ,   b(n)[k] = C(n, k) / 2ⁿ,   0 ≤ k ≤ n
  *
- * Accuracy  exact up to order 56; above, each tap is within ½ ulp, the middle one within 2, and the sum is 1 within 1 ulp
+ * Accuracy  exact up to order 56; above, each tap is within ½ ulp, the middle one takes what rounding left, less than 2⁻⁵²; the sum is 1 within 1 ulp
  * @param options a bare number is the order on both axes
  * @throws ConvolutionError `unknown-option`, `invalid-number`
  * @example

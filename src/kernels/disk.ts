@@ -20,7 +20,7 @@ const radiusRange: NumberRange = { what: "a number of samples above 0, at most 4
  *     area    taps[y, x] ∝ area of {(s, t): s² + t² ≤ radius²} within |s − x| ≤ ½, |t − y| ≤ ½,   sum 1
  *     point   taps[y, x] ∝ 1 where x² + y² ≤ radius², else 0,   sum 1
  *
- * Accuracy  areas within 10⁻¹⁴ of a square before they are divided by the sum; the taps have all symmetries of the square, to the last bit
+ * Accuracy  areas within max(1, radius) · 2⁻⁵¹ of a square before they are divided by the sum; the taps have all symmetries of the square, to the last bit
  * @param options a bare number is the radius
  * @throws ConvolutionError `unknown-option`, `invalid-number`, `unknown-value`, `invalid-kernel` (too many taps)
  * Source  geometric optics; common practice

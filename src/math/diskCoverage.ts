@@ -3,7 +3,7 @@
  *
  *     area of {(s, t): s² + t² ≤ radius², |s − x| ≤ ½, |t − y| ≤ ½}
  *
- * Accuracy  ≤ 10⁻¹⁴ for radius ≤ 4095
+ * Accuracy  ≤ max(1, radius) · 2⁻⁵¹
  * Requires  whole x, y ≥ 0, radius > 0
  */
 export function diskCoverage(x: number, y: number, radius: number): number {
