@@ -62,11 +62,11 @@ function allowedRange(setting: Setting, defined: Defined, index: number, errorBo
   const leftOut = kernel.width * kernel.height * 2 ** -100 * full;
   const bound = errorBound * defined.magnitude + leftOut * Math.abs(gain);
   const plain = alpha === "none" || alpha === "keep";
-  if (plain && !setting.linear) {
-    if (alpha === "keep" && channel === channels - 1) return [exact, exact];
-    return [exact - bound, exact + bound];
+  if (alpha === "keep" && channel === channels - 1) {
+    // Kept alpha is only scaled from one type's full value to the other's: a quotient and a product.
+    return [exact - 2 * u * Math.abs(exact), exact + 2 * u * Math.abs(exact)];
   }
-  if (alpha === "keep" && channel === channels - 1) return [exact, exact];
+  if (plain && !setting.linear) return [exact - bound, exact + bound];
   const inSums = gain === 0 ? 0 : bound / Math.abs(gain) + leftOut;
   const values = corners(setting, defined, start, channel, inSums);
   const rounding = leaveRoundings * u * Math.max(Math.abs(offset), ...values.map((value) => Math.abs(value - offset)));
