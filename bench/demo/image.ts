@@ -16,9 +16,10 @@ export interface DemoImage {
   notes: readonly string[];
 }
 
-/** Of the drawn sheet: side veins, teeth and a hole; the frond under its tape; the label. */
+/** Of the drawn sheet: teeth, veins and a tape; the net of veins of the lobed leaf; the label. */
 const drawnPlaces: Region[] = [
-  { x: 420, y: 380, width: 320, height: 240 },
+  { x: 345, y: 520, width: 320, height: 240 },
+  { x: 820, y: 350, width: 320, height: 240 },
   { x: 1080, y: 868, width: 320, height: 240 },
 ];
 
@@ -26,7 +27,7 @@ const drawnPlaces: Region[] = [
 export function drawnImage(): DemoImage {
   const raster = drawSheet();
   const { width, height, channels } = raster;
-  return { raster, layout: { width, height, channels, sample: "u8" }, name: "A herbarium sheet, drawn by code", places: drawnPlaces, notes: [] };
+  return { raster, layout: { width, height, channels, sample: "u8" }, name: "A herbarium sheet drawn by code", places: drawnPlaces, notes: [] };
 }
 
 /**

@@ -102,7 +102,14 @@ function timingOf(entrant: Entrant, rows: number): Timing {
   };
 }
 
-/** Time of the chosen method over that of the fastest, less 1: what the choice cost. */
+/** What the choice cost, in words: see `regretOf`. */
+export function verdictOf(outcome: Outcome): string {
+  const regret = regretOf(outcome);
+  if (regret === 0) return "the fastest of those that apply";
+  return regret < 0.01 ? "within 1 % of the fastest" : `${Math.round(100 * regret)} % slower than the fastest`;
+}
+
+/** Time of the chosen method over that of the fastest, less 1. */
 export function regretOf(outcome: Outcome): number {
   const timings = outcome.methods.flatMap(({ timing }) => timing ?? []);
   const fastest = Math.min(...timings.map((timing) => timing.median));

@@ -1,17 +1,16 @@
 import type { Agreement } from "./agreement.js";
 import { duration, percent, small } from "./figures.js";
-import { regretOf, type Outcome } from "./measure.js";
+import { verdictOf, type Outcome } from "./measure.js";
 
 /** One job as lines for the terminal. */
 export function narrate(outcome: Outcome, agreements: readonly Agreement[]): string {
   const { job, explanation } = outcome;
-  const regret = regretOf(outcome);
   const surprise = explanation.method === job.madeFor ? "" : `\n  The job is made for ${job.madeFor}; here the engine saw it otherwise.`;
   return [
     `${job.title}: ${job.kernelName}, ${job.kernel.width} × ${job.kernel.height} taps`,
     `  Chosen: ${explanation.method}. ${explanation.because}${surprise}`,
     ...outcome.methods.map(methodLine(explanation.method)),
-    `  The choice was ${regret === 0 ? "the fastest" : `${percent(regret)} on the fastest`}.`,
+    `  The choice was ${verdictOf(outcome)}.`,
     ...agreements.map(agreementLine),
     "",
   ].join("\n");

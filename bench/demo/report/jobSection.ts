@@ -14,44 +14,41 @@ export function jobSection(outcome: Outcome, agreements: readonly Agreement[], p
 <p>${escaped(job.purpose)}</p>
 <p class="because">Chosen: <b>${explanation.method}</b>${terms} (${escaped(explanation.arithmetic)}). ${escaped(explanation.because)}</p>
 ${timeTable(outcome)}
-${agreementTable(agreements)}
+${agreementTable(job.file, agreements)}
 </div>${kernelFigure(job.kernel, job.kernelName)}</div>
 <h3>Before and after, at 1:1</h3>
 <div class="pairs">${pairs}</div>
 </section>`;
 }
 
-function timeTable(outcome: Outcome): string {
-  const rows = outcome.methods.map(({ candidate, timing }): Cell[] => {
-    const chosen = candidate.method === outcome.explanation.method;
-    const heading = { heading: chosen ? `<b class="chosen">${candidate.method}</b>` : candidate.method };
-    if (timing === undefined) return [heading, `<span class="refused">${escaped(candidate.refused ?? "")}</span>`, "", "", "", ""];
+function timeTable({ job, explanation, methods }: Outcome): string {
+  const rows = methods.flatMap(({ candidate, timing }): Cell[][] => {
+    if (timing === undefined) return [];
     const predicted = candidate.milliseconds ?? NaN;
-    const band = timing.rowsMeasured === undefined ? "" : `, from ${timing.rowsMeasured} rows`;
+    const band = timing.rowsMeasured === undefined ? "" : `, in proportion from ${timing.rowsMeasured} rows`;
     return [
-      heading,
-      { figure: duration(predicted) },
-      { figure: duration(timing.median) },
-      { figure: percent(timing.median / predicted - 1) },
-      { figure: `${duration(timing.shortest)} – ${duration(timing.longest)}, ${timing.runs}×${band}` },
-      { figure: byteCount(candidate.bytes ?? 0) },
+      [
+        { heading: candidate.method === explanation.method ? `<b class="chosen">${candidate.method}</b>` : candidate.method },
+        { figure: duration(predicted) },
+        { figure: duration(timing.median) },
+        { figure: percent(timing.median / predicted - 1) },
+        { figure: `${duration(timing.shortest)} – ${duration(timing.longest)}, ${timing.runs} runs${band}` },
+        { figure: byteCount(candidate.bytes ?? 0) },
+      ],
     ];
   });
-  return spanRefusals(table("One run over the whole sheet, by every method", ["Method", "Predicted", "Measured", "Off by", "Shortest – longest, runs", "Memory"], rows));
+  const refused = methods.flatMap(({ candidate, timing }) => (timing === undefined ? [`<li><b>${candidate.method}</b>: ${escaped(candidate.refused ?? "")}</li>`] : []));
+  const refusals = refused.length === 0 ? "" : `<p class="title">What does not apply, and why</p><ul class="refused">${refused.join("")}</ul>`;
+  return table(`${job.file}-times`, "One run over the whole image, by every method that applies", ["Method", "Predicted", "Measured", "Off by", "Shortest – longest", "Memory"], rows) + refusals;
 }
 
-/** A refusal is a sentence: it takes the room of the five figures. */
-function spanRefusals(html: string): string {
-  return html.replaceAll(/<td>(<span class="refused">[^\n]*?<\/span>)<\/td>(<td><\/td>)+/g, '<td colspan="5">$1</td>');
-}
-
-function agreementTable(agreements: readonly Agreement[]): string {
+function agreementTable(file: string, agreements: readonly Agreement[]): string {
   if (agreements.length === 0) return "<p>One method applies, so there is nothing to compare it with.</p>";
   const rows = agreements.map(({ methods, written, unrounded, holds }): Cell[] => [
     { heading: methods.join(" – ") },
     { figure: `${small(written.largest)} of ${small(written.allowed)}` },
     { figure: `${small(unrounded.largest)} of ${small(unrounded.allowed)}` },
-    holds ? "within" : "<strong>beyond</strong>",
+    { figure: holds ? "kept" : "<strong>broken</strong>" },
   ]);
-  return table("Largest difference between two methods, in levels, of what their error bounds allow", ["Methods", "As written", "Before rounding", "Bounds"], rows);
+  return table(`${file}-agreement`, "Largest difference between two methods, in levels, of what their error bounds allow", ["Methods", "As written", "Before rounding", "Bounds"], rows);
 }

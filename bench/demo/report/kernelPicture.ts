@@ -1,5 +1,5 @@
 import type { Kernel } from "../../../src/index.js";
-import { threeFigures, small } from "../figures.js";
+import { small } from "../figures.js";
 import { escaped } from "./markup.js";
 import { picture } from "./pictures.js";
 
@@ -9,7 +9,8 @@ const widestInNumbers = 7;
 /** A kernel to look at: a table of coloured taps, or a grey map with its scale. */
 export function kernelFigure(kernel: Kernel, name: string): string {
   const shown = kernel.width <= widestInNumbers ? tapTable(kernel, name) : greyMap(kernel, name);
-  return `<figure class="kernel">${shown}<figcaption>${escaped(name)}: ${kernel.width} × ${kernel.height} taps, sum ${threeFigures(kernel.sum)}.</figcaption></figure>`;
+  const scaleNote = kernel.width <= widestInNumbers ? "" : " Grey is the square root of the tap, so that faint taps show.";
+  return `<figure class="kernel">${shown}<figcaption>${escaped(name)}: ${kernel.width} × ${kernel.height} taps, sum ${small(kernel.sum)}.${scaleNote}</figcaption></figure>`;
 }
 
 /** Positive taps in one colour, negative ones in the other, stronger for larger ones; the numbers say it too. */
@@ -17,14 +18,14 @@ function tapTable(kernel: Kernel, name: string): string {
   const taps = kernel.taps;
   const largest = Math.max(...taps.map(Math.abs));
   const cell = (tap: number): string => {
-    const strength = Math.round((85 * Math.abs(tap)) / largest);
+    const strength = Math.round((62 * Math.abs(tap)) / largest);
     return `<td style="background:color-mix(in srgb,var(--${tap < 0 ? "negative" : "positive"}) ${strength}%,var(--paper))">${String(Number(tap.toPrecision(4))).replace("-", "−")}</td>`;
   };
   const rows = Array.from({ length: kernel.height }, (_, row) => `<tr>${[...taps.subarray(row * kernel.width, (row + 1) * kernel.width)].map(cell).join("")}</tr>`);
-  return `<table class="taps" aria-label="Taps of ${escaped(name)}"><tbody>${rows.join("")}</tbody></table>${scale("diverging", `−${threeFigures(largest)}`, "0", threeFigures(largest))}`;
+  return `<table class="taps" aria-label="Taps of ${escaped(name)}"><tbody>${rows.join("")}</tbody></table>${scale("diverging", `−${small(largest)}`, "0", small(largest))}`;
 }
 
-/** Grey is the square root of the tap over the largest, so that faint parts are seen. */
+/** Grey is the square root of the tap over the largest. */
 function greyMap(kernel: Kernel, name: string): string {
   const { taps, width, height } = kernel;
   const largest = taps.reduce((most, tap) => Math.max(most, tap), 0);

@@ -6,11 +6,14 @@ export function escaped(text: string): string {
 /** A table cell: a heading of its row, a figure aligned to the right, or words. */
 export type Cell = string | { figure: string } | { heading: string };
 
-/** A table with its caption and column headings; it scrolls sideways where the page is narrower. Cells are HTML. */
-export function table(caption: string, headings: readonly string[], rows: readonly (readonly Cell[])[]): string {
+/** A table under its title; it scrolls sideways where the page is narrower. Headings and cells are HTML. */
+export function table(id: string, title: string, headings: readonly string[], rows: readonly (readonly Cell[])[]): string {
   const head = headings.map((heading) => `<th scope="col">${heading}</th>`).join("");
   const body = rows.map((row) => `<tr>${row.map(cell).join("")}</tr>`).join("\n");
-  return `<div class="scroll" tabindex="0" role="group" aria-label="${escaped(caption)}"><table><caption>${escaped(caption)}</caption><thead><tr>${head}</tr></thead><tbody>\n${body}\n</tbody></table></div>`;
+  return `<p class="title" id="${id}">${escaped(title)}</p>
+<div class="scroll" tabindex="0" role="group" aria-labelledby="${id}"><table aria-labelledby="${id}"><thead><tr>${head}</tr></thead><tbody>
+${body}
+</tbody></table></div>`;
 }
 
 function cell(content: Cell): string {

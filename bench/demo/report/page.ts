@@ -1,12 +1,12 @@
 import type { Engine, Region, ResultRaster } from "../../../src/index.js";
 import type { Agreement } from "../agreement.js";
-import { duration, percent } from "../figures.js";
+import { duration } from "../figures.js";
 import type { Machine } from "../machine.js";
-import { regretOf, type Outcome } from "../measure.js";
+import { verdictOf, type Outcome } from "../measure.js";
 import { timeChart } from "./chart.js";
 import { cropPlaces } from "./cropPlaces.js";
 import { jobSection } from "./jobSection.js";
-import { escaped, table } from "./markup.js";
+import { escaped } from "./markup.js";
 import { cropped, picture, reduced } from "./pictures.js";
 import { style } from "./style.js";
 
@@ -40,10 +40,10 @@ export function reportPage(engine: Engine, findings: Findings): string {
 <p class="lead">${escaped(findings.imageName)} is sharpened, softened and blurred. The engine chose a method for each by predicted time; then every method that applies was run and timed.</p>
 </header>
 <main>
-<section aria-label="Summary">
+<section aria-label="Summary"><div class="glance">
 ${overview(engine, findings.image, findings.imageName, places)}
-${summaryTable(outcomes)}
-</section>
+<div>${summary(outcomes)}</div>
+</div></section>
 <section id="times">
 <h2>Predicted against measured</h2>
 <p>Time of one run, on a logarithmic scale. The line between the two is how far the prediction was off; what counts is that the order is right.</p>
@@ -64,30 +64,28 @@ ${machineList(findings)}
 
 function overview(engine: Engine, image: ResultRaster, name: string, places: readonly Region[]): string {
   const smaller = reduced(engine, image, 560);
+  const inDrawing = (units: number): number => Math.round((units * 560) / image.width);
   const marks = places.map((place, index) => {
-    const label = `<text x="${(place.x * 560) / image.width + 6}" y="${(place.y * 560) / image.width + 18}">${index + 1}</text>`;
-    const [x, y, width, height] = [place.x, place.y, place.width, place.height].map((units) => ((units * 560) / image.width).toFixed(1));
-    return `<rect x="${x}" y="${y}" width="${width}" height="${height}"/>${label}`;
+    const [x, y] = [inDrawing(place.x), inDrawing(place.y)];
+    const frame = `<rect x="${x}" y="${y}" width="${inDrawing(place.width)}" height="${inDrawing(place.height)}"/>`;
+    return `${frame}<rect class="tag" x="${x}" y="${y}" width="18" height="18"/><text x="${x + 9}" y="${y + 14}">${index + 1}</text>`;
   });
-  const overlay = `<svg viewBox="0 0 560 ${((560 * image.height) / image.width).toFixed(1)}" aria-hidden="true">${marks.join("")}</svg>`;
-  const alt = `The whole image, ${image.width} × ${image.height}: ${name}`;
+  const overlay = `<svg viewBox="0 0 560 ${inDrawing(image.height)}" aria-hidden="true">${marks.join("")}</svg>`;
+  const alt = `${name}: the whole image`;
   return `<figure><div class="overview">${picture(smaller, alt, "whole")}${overlay}</div><figcaption>${image.width} × ${image.height}, here made smaller; the numbered parts are shown at 1:1 below.</figcaption></figure>`;
 }
 
-function summaryTable(outcomes: readonly Outcome[]): string {
-  const rows = outcomes.map((outcome) => {
-    const chosen = outcome.methods.find(({ candidate }) => candidate.method === outcome.explanation.method);
-    const regret = regretOf(outcome);
-    return [
-      { heading: `<a href="#${outcome.job.file}">${escaped(outcome.job.title)}</a>` },
-      escaped(outcome.job.kernelName),
-      `<b class="method">${outcome.explanation.method}</b>`,
-      { figure: duration(outcome.explanation.milliseconds) },
-      { figure: duration(chosen?.timing?.median ?? NaN) },
-      regret === 0 ? "fastest" : `${percent(regret)} on the fastest`,
-    ];
-  });
-  return table("What was chosen, and what it took", ["Job", "Kernel", "Method", "Predicted", "Measured", "Choice"], rows);
+/** For each job a few lines: the method, its times, what the choice cost. */
+function summary(outcomes: readonly Outcome[]): string {
+  return outcomes
+    .map((outcome) => {
+      const { job, explanation } = outcome;
+      const chosen = outcome.methods.find(({ candidate }) => candidate.method === explanation.method);
+      return `<div class="short"><h2><a href="#${job.file}">${escaped(job.title)}</a></h2>
+<p><b class="method">${explanation.method}</b> for ${escaped(job.kernelName)}</p>
+<p>${duration(explanation.milliseconds)} predicted, <b>${duration(chosen?.timing?.median ?? NaN)}</b> measured, ${verdictOf(outcome)}</p></div>`;
+    })
+    .join("\n");
 }
 
 function cropPairs(image: ResultRaster, outcome: Outcome, places: readonly Region[]): string {

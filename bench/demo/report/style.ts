@@ -24,33 +24,39 @@ figure { margin: 1rem 0; }
 figcaption { color: var(--soft); font-size: 0.9rem; margin-top: 0.4rem; max-width: 44rem; }
 img { display: block; height: auto; max-width: 100%; border-radius: 3px; }
 img.crop { max-width: none; }
+.short { border-left: 4px solid var(--accent); padding-left: 0.9rem; margin: 1rem 0 1.3rem; }
+.short h2 { font-size: 1.2rem; margin: 0; } .short p { margin: 0.15rem 0; }
 .overview { position: relative; width: fit-content; max-width: 100%; }
 .overview svg { position: absolute; inset: 0; width: 100%; height: 100%; }
-.overview rect { fill: none; stroke: #fff; stroke-width: 2; paint-order: stroke; filter: drop-shadow(0 0 2px #000); }
-.overview text { fill: #fff; font: 700 15px system-ui, sans-serif; filter: drop-shadow(0 0 2px #000); }
-.pairs { display: grid; gap: 1rem; }
-.pair { display: grid; grid-template-columns: repeat(auto-fill, 320px); gap: 0.5rem; }
-.pair figure { margin: 0; width: 320px; }
+.overview rect { fill: none; stroke: #b4531f; stroke-width: 2.5; }
+.overview rect.tag { fill: #b4531f; }
+.overview text { fill: #fff; font: 700 14px system-ui, sans-serif; text-anchor: middle; }
+.pairs { display: grid; grid-template-columns: repeat(auto-fill, minmax(320px, 1fr)); gap: 1.2rem 1rem; }
+.pair figure { margin: 0 0 0.5rem; width: 320px; }
 .pair figcaption { margin-top: 0.2rem; }
-.job { display: grid; gap: 0 2.2rem; }
+.job { display: grid; gap: 0 2.2rem; grid-template-columns: minmax(0, 1fr); }
+.glance { display: grid; gap: 0 2.2rem; grid-template-columns: minmax(0, 1fr); }
 .kernel { width: min(100%, 19rem); }
 img.map { width: 100%; image-rendering: pixelated; border: 1px solid var(--rule); }
 table { border-collapse: collapse; font-size: 0.92rem; font-variant-numeric: tabular-nums; min-width: 100%; }
-caption { text-align: left; color: var(--soft); padding-bottom: 0.35rem; }
-.scroll { overflow-x: auto; margin: 1rem 0; }
-th, td { text-align: left; padding: 0.34rem 0.8rem 0.34rem 0; border-bottom: 1px solid var(--rule); vertical-align: top; }
+.title { color: var(--soft); font-size: 0.92rem; margin: 1.1rem 0 0.2rem; }
+.scroll { overflow-x: auto; margin: 0 0 0.6rem; }
+th, td { text-align: left; padding: 0.34rem 0.7rem 0.34rem 0; border-bottom: 1px solid var(--rule); vertical-align: top; }
 thead th { font-weight: 600; color: var(--soft); white-space: nowrap; }
 td.figure { text-align: right; white-space: nowrap; }
+thead th + th { text-align: right; } td:last-child, thead th:last-child { padding-right: 0.4rem; }
+tbody tr > :first-child, thead tr > :first-child { padding-left: 0.4rem; }
 tbody th { font-weight: 600; white-space: nowrap; }
 tr:has(b.chosen) { background: var(--wash); }
-td .refused { color: var(--soft); }
+.refused { margin: 0; padding-left: 1.1rem; max-width: 44rem; font-size: 0.95rem; }
+a { color: var(--accent); }
 table.taps { table-layout: fixed; width: 100%; border: 1px solid var(--rule); }
 table.taps td { text-align: center; vertical-align: middle; height: 3.6rem; padding: 0; border: 1px solid var(--rule); }
 .scale { display: grid; grid-template-columns: 1fr 1fr 1fr; font-size: 0.82rem; color: var(--soft); margin-top: 0.4rem; }
 .scale div { grid-column: 1 / -1; height: 0.6rem; border: 1px solid var(--rule); }
 .scale span:nth-of-type(2) { text-align: center; } .scale span:nth-of-type(3) { text-align: right; }
 .scale .grey { background: linear-gradient(90deg, #000, #fff); }
-.scale .diverging { background: linear-gradient(90deg, var(--negative), var(--paper), var(--positive)); }
+.scale .diverging { background: linear-gradient(90deg, color-mix(in srgb, var(--negative) 62%, var(--paper)), var(--paper), color-mix(in srgb, var(--positive) 62%, var(--paper))); }
 .legend { display: flex; flex-wrap: wrap; gap: 0.2rem 1.4rem; padding: 0; margin: 0.6rem 0 0; list-style: none; font-size: 0.92rem; }
 .legend li::before { content: ""; display: inline-block; width: 0.8rem; height: 0.8rem; border-radius: 50%; margin-right: 0.45rem; background: var(--key); vertical-align: -0.06rem; }
 .legend li.mark::before { width: 0.22rem; height: 1rem; border-radius: 1px; margin-inline: 0.3rem 0.7rem; vertical-align: -0.16rem; }
@@ -61,14 +67,17 @@ footer { border-top: 1px solid var(--rule); padding-block: 1rem 2.5rem; color: v
 @media (min-width: 50rem) {
   .chart.wide { display: block; } .chart.narrow { display: none; }
   .job { grid-template-columns: minmax(0, 1fr) 19rem; } .job > .kernel { grid-column: 2; grid-row: 1; margin-top: 0.4rem; }
+  .glance { grid-template-columns: minmax(0, 35rem) minmax(0, 1fr); }
 }
 @media print {
   :root { color-scheme: light; --paper: #fff; --card: #fff; --ink: #000; --soft: #444; --rule: #bbb; --accent: #3a5524; --chosen: #3a5524; --other: #8d836d;
     --predicted: #a8480f; --positive: #5c7f42; --negative: #c06a3a; --wash: #f1f3ea; }
   @page { margin: 16mm 14mm; }
-  body { font-size: 10pt; print-color-adjust: exact; -webkit-print-color-adjust: exact; }
-  section { break-inside: auto; } figure, tr, .pair, .because, .chart { break-inside: avoid; } h2, h3, caption { break-after: avoid; }
-  .scroll { overflow: visible; } .pair { grid-template-columns: 1fr 1fr; } .pair figure { width: auto; } img.crop { max-width: 100%; }
+  body { font-size: 9.5pt; line-height: 1.4; print-color-adjust: exact; -webkit-print-color-adjust: exact; }
+  section { break-inside: auto; } figure, tr, .pair, .because, .chart { break-inside: avoid; } h2, h3, .title { break-after: avoid; }
+  .scroll { overflow: visible; } .pairs { grid-template-columns: repeat(3, minmax(0, 1fr)); gap: 3mm; } .pair figure { width: auto; } img.crop { max-width: 100%; }
+  h1 { font-size: 20pt; } h2 { font-size: 14pt; } .glance { grid-template-columns: 92mm minmax(0, 1fr); } .short { margin: 0 0 4mm; } section { padding-block: 5mm 2mm; }
+  .kernel { width: 42mm; } .job { grid-template-columns: minmax(0, 1fr) 42mm; } .job > .kernel { grid-column: 2; grid-row: 1; } table, .title, .refused, figcaption, dl { font-size: 8.5pt; } .chart svg { width: 100%; max-height: 100mm; } table.taps td { height: 11mm; }
   .chart.wide { display: block; } .chart.narrow { display: none; }
 }
 `;
