@@ -1,8 +1,8 @@
 import { decode } from "./curve";
 import { widen16_u8, widen8_u16 } from "./lanes";
 import {
-  CHANNELS, COLOURS, CONSTANT_PIXEL, CONSTANT_ROW, CURVE, DECODE, EXTENDED_COLUMNS, HALO, HALO_COUNT, PREMULTIPLY, ROW_MAP,
-  RUN_COLUMN, RUN_COUNT, RUN_SOURCE, SOURCE_FULL, SOURCE_KIND,
+  CHANNELS, COLOURS, CONSTANT_COLUMN, CONSTANT_PIXELS, CONSTANT_ROW, CURVE, DECODE, EXTENDED_COLUMNS, HALO, HALO_COUNT, PREMULTIPLY, ROW_MAP,
+  RUN_COLUMN, RUN_COUNT, RUN_SOURCE, SOURCE_FULL, SOURCE_KIND, WORKING_FULL,
 } from "./record";
 
 /** Source samples → floats in the source's own units. */
@@ -20,31 +20,35 @@ function widen<V>(kind: i32, out: usize, source: usize, count: i32): void {
   }
 }
 
-/** Replaces the colours of widened pixels by their linear values: by table for integer samples, else by the formula. */
+/** Replaces the colours of widened pixels by their linear values, by table for integer samples, else by the formula; alpha goes to 0 … 1 with them. */
 function decodePixels(job: usize, out: usize, pixels: i32): void {
   const kind = load<i32>(job, SOURCE_KIND);
   const channels = load<i32>(job, CHANNELS);
   const colours = load<i32>(job, COLOURS);
   const curve = load<usize>(job, CURVE);
+  const full = load<f32>(job, SOURCE_FULL);
   for (let p = 0; p < pixels; p++) {
     for (let c = 0; c < colours; c++) {
       const at = out + (<usize>(p * channels + c) << 2);
       const x = load<f32>(at);
       store<f32>(at, kind == 2 ? decode(x) : load<f32>(curve + (<usize>x << 2)));
     }
+    if (colours < channels) {
+      const alpha = out + (<usize>(p * channels + colours) << 2);
+      store<f32>(alpha, load<f32>(alpha) / full);
+    }
   }
 }
 
-/** colour ← a · colour, alpha ← a, with a = alpha ÷ full (exactly 1 where opaque). */
+/** colour ← a · colour with a = alpha ÷ full, exactly 1 where opaque. */
 function premultiplyPixels(job: usize, out: usize, pixels: i32): void {
   const channels = load<i32>(job, CHANNELS);
-  const full = load<f32>(job, SOURCE_FULL);
+  const full = load<f32>(job, WORKING_FULL);
   for (let p = 0; p < pixels; p++) {
     const pixel = out + (<usize>(p * channels) << 2);
     const last = pixel + (<usize>(channels - 1) << 2);
     const alpha = load<f32>(last) / full;
     for (let at = pixel; at < last; at += 4) store<f32>(at, alpha * load<f32>(at));
-    store<f32>(last, alpha);
   }
 }
 
@@ -71,9 +75,8 @@ function copyPixel(out: usize, source: usize, channels: i32): void {
 export function enterRow<V>(job: usize, out: usize, row: i32, source: usize): void {
   const channels = load<i32>(job, CHANNELS);
   const pixelBytes = <usize>channels << 2;
-  const constant = load<usize>(job, CONSTANT_ROW);
   if (load<i32>(load<usize>(job, ROW_MAP) + (<usize>row << 2)) < 0) {
-    memory.copy(out, constant, <usize>load<i32>(job, EXTENDED_COLUMNS) * pixelBytes);
+    memory.copy(out, load<usize>(job, CONSTANT_ROW), <usize>load<i32>(job, EXTENDED_COLUMNS) * pixelBytes);
     return;
   }
   const sampleShift = load<i32>(job, SOURCE_KIND);
@@ -84,16 +87,19 @@ export function enterRow<V>(job: usize, out: usize, row: i32, source: usize): vo
     const target = out + <usize>load<i32>(entry) * pixelBytes;
     const from = load<i32>(entry, 4);
     if (from >= 0) copyPixel(target, out + <usize>from * pixelBytes, channels);
-    else if (from == -1) copyPixel(target, constant, channels);
+    else if (from == -1) copyPixel(target, load<usize>(job, CONSTANT_COLUMN), channels);
     else enterPixels<V>(job, target, source + ((<usize>(-2 - from) * channels) << sampleShift), 1);
   }
 }
 
-/** Set-up: the constant pixel, entered like any other sample, all along one extended row. */
-export function enterConstant<V>(job: usize): void {
-  const pixelBytes = <usize>load<i32>(job, CHANNELS) << 2;
+/** Set-up: the constant pixels, entered like any other samples: one all along an extended row, one for the halo of columns. */
+export function enterConstants<V>(job: usize): void {
+  const channels = load<i32>(job, CHANNELS);
+  const pixelBytes = <usize>channels << 2;
   const row = load<usize>(job, CONSTANT_ROW);
-  enterPixels<V>(job, row, load<usize>(job, CONSTANT_PIXEL), 1);
+  const pixels = load<usize>(job, CONSTANT_PIXELS);
+  enterPixels<V>(job, row, pixels, 1);
+  enterPixels<V>(job, load<usize>(job, CONSTANT_COLUMN), pixels + (<usize>channels << load<i32>(job, SOURCE_KIND)), 1);
   const end = row + <usize>load<i32>(job, EXTENDED_COLUMNS) * pixelBytes;
   for (let out = row + pixelBytes; out < end; out += 4) store<f32>(out, load<f32>(out - pixelBytes));
 }

@@ -6,12 +6,12 @@
  * write samples leave rows from … to − 1 in order (OUTPUT). Working vectors are four floats in SIMD builds and one in scalar ones:
  * every sum is taken in the same order in both.
  *
- *     set-up    enterConstant · decodeCurve · placeTaps, forwardColumns, takeSpectrum (FFT)
+ *     set-up    enterConstants · decodeCurve · placeTaps, forwardColumns, takeSpectrum (FFT)
  *     sweeps    sweepDirect · sweepSeparable · sweepRunningSum                          units: result rows
  *     FFT       enterStrip (rows) → forwardColumns (floats) → filterRows (groups of rows) → inverseColumns (floats) → leaveStrip (rows)
  */
 import { decodeTable } from "./curve";
-import { enterConstant as enterConstantOf } from "./enter";
+import { enterConstants as enterConstantsOf } from "./enter";
 import { enterStrip as enterStripOf, leaveStrip as leaveStripOf } from "./fft/strips";
 import {
   filterRows as filterRowsOf, forwardColumns as forwardColumnsOf, inverseColumns as inverseColumnsOf, placeTaps as placeTapsOf,
@@ -41,10 +41,10 @@ export function sweepRunningSum(job: usize, from: i32, to: i32): void {
   else sweepRunningSumOf<f32>(job, from, to);
 }
 
-/** Set-up: fills the constant row from the constant pixel. */
-export function enterConstant(job: usize): void {
-  if (ASC_FEATURE_SIMD) enterConstantOf<v128>(job);
-  else enterConstantOf<f32>(job);
+/** Set-up: what stands outside the image, from the two constant pixels. */
+export function enterConstants(job: usize): void {
+  if (ASC_FEATURE_SIMD) enterConstantsOf<v128>(job);
+  else enterConstantsOf<f32>(job);
 }
 
 /** Set-up: the linear value of every code up to `to` − 1, at CURVE. */

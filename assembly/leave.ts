@@ -1,8 +1,8 @@
 import { encode } from "./curve";
 import { add, laneBytes, loadLanes, multiply, narrow16_u8, narrow8_u16, roundHalfUpOne, splat, storeLanes } from "./lanes";
 import {
-  ALPHA, ALPHA_BOUND, ANCHOR_COLUMN, CHANNELS, COLOURS, DECODE, GAIN, KEEP_ROW, KERNEL_SUM, OFFSET, OUTPUT_COLUMNS, OUTPUT_FULL, OUTPUT_KIND,
-  ROUND, SOURCE_FULL, WEIGHTS, WEIGHT_COLUMNS, WEIGHT_ROWS, WEIGHT_STRIDE,
+  ALPHA, ALPHA_BOUND, ANCHOR_COLUMN, CHANNELS, COLOURS, DECODE, GAIN, KEEP_ROW, OPAQUE_SUM, OFFSET, OUTPUT_COLUMNS, OUTPUT_FULL, OUTPUT_KIND,
+  ROUND, SOURCE_FULL, WEIGHTS, WEIGHT_COLUMNS, WEIGHT_ROWS, WEIGHT_STRIDE, WORKING_FULL,
 } from "./record";
 
 /** Working floats → samples: ⌊y + ½⌋ held in range for integers, as they are for floats. */
@@ -65,7 +65,7 @@ function writtenAlpha(job: usize, alpha: f32): f32 {
 /** x′ = Σh · (h∗(a·x)) ÷ (h∗a), a′ = (h∗a) ÷ Σh; the quotient is exactly 1 where h∗a is Σh within its error. */
 function leaveStraight(job: usize, y: usize): void {
   const colours = load<i32>(job, COLOURS);
-  const sum = load<f32>(job, KERNEL_SUM);
+  const sum = load<f32>(job, OPAQUE_SUM);
   const gain = load<f32>(job, GAIN);
   const offset = load<f32>(job, OFFSET);
   const end = y + (<usize>(load<i32>(job, OUTPUT_COLUMNS) * (colours + 1)) << 2);
@@ -91,12 +91,13 @@ function leavePremultiplied(job: usize, y: usize): void {
   const offset = load<f32>(job, OFFSET);
   const end = y + (<usize>(load<i32>(job, OUTPUT_COLUMNS) * (colours + 1)) << 2);
   while (y < end) {
-    const alpha = load<f32>(y + (<usize>colours << 2));
+    const alpha = load<f32>(y + (<usize>colours << 2)) / load<f32>(job, WORKING_FULL);
+    const most = alpha * full;
     for (let c = 0; c < colours; c++, y += 4) {
       const x = encoded(job, load<f32>(y));
-      store<f32>(y, gain * (x < 0 ? 0 : x > alpha ? max<f32>(alpha, 0) : x) + offset);
+      store<f32>(y, gain * (x < 0 ? 0 : x > most ? max<f32>(most, 0) : x) + offset);
     }
-    store<f32>(y, (alpha / full) * load<f32>(job, OUTPUT_FULL));
+    store<f32>(y, alpha * load<f32>(job, OUTPUT_FULL));
     y += 4;
   }
 }
@@ -104,7 +105,7 @@ function leavePremultiplied(job: usize, y: usize): void {
 /** Colours as they are; alpha from the bordered image at the same place (the row that KEEP_ROW holds). */
 function leaveKept(job: usize, y: usize): void {
   const colours = load<i32>(job, COLOURS);
-  const full = load<f32>(job, SOURCE_FULL);
+  const full = load<f32>(job, WORKING_FULL);
   const gain = load<f32>(job, GAIN);
   const offset = load<f32>(job, OFFSET);
   const pixelBytes = <usize>(colours + 1) << 2;

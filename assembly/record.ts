@@ -10,7 +10,7 @@ export const SOURCE_KIND = 0;
 export const CHANNELS = 4;
 /** Channels that are colours: decoded and premultiplied where asked for. */
 export const COLOURS = 8;
-/** 1: colours become alpha · colour and alpha becomes alpha ÷ full. */
+/** 1: colours become a · colour, with a = alpha ÷ full. */
 export const PREMULTIPLY = 12;
 /** 1: colours are decoded from the sRGB curve. */
 export const DECODE = 16;
@@ -28,15 +28,18 @@ export const RUN_COUNT = 44;
 /** Pairs of i32 for all other columns: extended column; where from: ≥ 0 an extended column of the stretch, −1 the constant, −2 − k staged column k. */
 export const HALO = 48;
 export const HALO_COUNT = 52;
-/** One pixel in source samples, and the extended row of working floats made of it. */
-export const CONSTANT_PIXEL = 56;
+/** Two pixels in source samples (outside by row, outside by column) and what becomes of them: an extended row and one pixel of working floats. */
+export const CONSTANT_PIXELS = 56;
 export const CONSTANT_ROW = 60;
+export const CONSTANT_COLUMN = 76;
 /** Columns of the extended image. */
 export const EXTENDED_COLUMNS = 64;
 /** Rows of the extended image. */
 export const EXTENDED_ROWS = 68;
 /** f32: the source type's full value. */
 export const SOURCE_FULL = 72;
+/** f32: what the full value is among working floats: 1 where colours are decoded, else SOURCE_FULL. Alpha is held in the same unit. */
+export const WORKING_FULL = 292;
 
 // ---- method ----
 /** f32 taps in correlation order, row by row (direct); row vectors, one term after the other (separable); the one tap (running sums). */
@@ -82,8 +85,8 @@ export const OUTPUT_FULL = 172;
 export const ROUND = 176;
 /** 0 none, 1 straight, 2 premultiplied, 3 keep */
 export const ALPHA = 180;
-/** f32: sum of the taps, and how far the computed h∗a may be from it and still stand for it. */
-export const KERNEL_SUM = 184;
+/** f32: h∗a of an opaque image, Σh · WORKING_FULL, and how far the computed h∗a may be from it and still stand for it. */
+export const OPAQUE_SUM = 184;
 export const ALPHA_BOUND = 188;
 /** Renormalised border: i32 a row, i32 a column, floats [row pattern][column pattern], floats a row pattern; 0 where there is none. */
 export const WEIGHT_ROWS = 192;

@@ -1,0 +1,111 @@
+import { ConvolutionError } from "../errors.js";
+import type { Kernel } from "../kernels/index.js";
+import { choose, type Choice } from "../planning/choose.js";
+import { explanationOf } from "../planning/explanation.js";
+import { problemOf, type Problem, type Request } from "../planning/problem.js";
+import { shippedProfiles } from "../planning/profile.js";
+import type { EngineMemory } from "../runtime/memory.js";
+import type {
+  Build, ConvolveOptions, Engine, EngineOptions, Explanation, Filter, HardwareProfile, Layout, PrepareOptions, Raster, ResultRaster, Samples,
+} from "../types.js";
+import { PreparedFilter } from "./filter.js";
+import { loadCore, type Core } from "./loading.js";
+import { checkedEngineOptions, profileForBuild } from "./validate/engineOptions.js";
+import { checkedRaster } from "./validate/raster.js";
+import { checkedLayout, checkedRequest } from "./validate/request.js";
+
+class ConvolutionEngine implements Engine {
+  readonly #core: Core;
+  readonly #profile: HardwareProfile;
+  readonly #filters = new Set<PreparedFilter>();
+  #disposed = false;
+
+  constructor(core: Core, profile: HardwareProfile) {
+    this.#core = core;
+    this.#profile = profile;
+  }
+
+  get build(): Build {
+    return this.#core.build;
+  }
+
+  convolve<S extends Samples>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions): ResultRaster {
+    return this.#once("convolve", image, kernel, options, false);
+  }
+
+  correlate<S extends Samples>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions): ResultRaster {
+    return this.#once("correlate", image, kernel, options, true);
+  }
+
+  prepare(kernel: Kernel, layout: Layout, options?: PrepareOptions): Filter {
+    this.#usable("prepare");
+    return this.#prepared(checkedRequest("prepare", kernel, checkedLayout("prepare", layout), options), false);
+  }
+
+  explain(kernel: Kernel, layout: Layout, options?: PrepareOptions): Explanation {
+    this.#usable("explain");
+    const request = checkedRequest("explain", kernel, checkedLayout("explain", layout), options);
+    const { problem, choice } = this.#chosen(request, false);
+    return explanationOf(choice, problem, this.#profile, false);
+  }
+
+  dispose(): void {
+    this.#disposed = true;
+    for (const filter of this.#filters) filter.dispose();
+  }
+
+  #usable(call: string): void {
+    if (!this.#disposed) return;
+    const message = `${call}: the engine was disposed. Create a new one.`;
+    throw new ConvolutionError("disposed", message, { expected: "an engine that is not disposed", received: "a disposed engine" });
+  }
+
+  #once(call: string, image: Raster, kernel: Kernel, options: ConvolveOptions | undefined, correlate: boolean): ResultRaster {
+    this.#usable(call);
+    const { width, height, channels, sample } = checkedRaster(`${call}: image`, image);
+    const filter = this.#prepared(checkedRequest(call, kernel, { width, height, channels, sample }, options, correlate), true);
+    try {
+      return filter.run(image);
+    } finally {
+      filter.dispose();
+    }
+  }
+
+  #chosen(request: Request, once: boolean): { problem: Problem; choice: Choice } {
+    const problem = problemOf(request, this.#core.build, this.#core.memory.largestBlock);
+    return { problem, choice: choose(problem, this.#profile, once) };
+  }
+
+  #prepared(request: Request, once: boolean): PreparedFilter {
+    const { problem, choice } = this.#chosen(request, once);
+    const explanation = explanationOf(choice, problem, this.#profile, once);
+    const filter = new PreparedFilter(problem, choice, explanation, this.#core, (gone) => this.#filters.delete(gone));
+    this.#filters.add(filter);
+    return filter;
+  }
+}
+
+const memories = new WeakMap<Engine, EngineMemory>();
+
+/** The memory of an engine, for tests and measurements of what it holds. */
+export function memoryOf(engine: Engine): EngineMemory {
+  return memories.get(engine)!;
+}
+
+/**
+ * Loads the core and makes an engine of it. Nothing is shared between engines.
+ *
+ * @throws ConvolutionError `webassembly-missing`, `webassembly-blocked`, `self-test-failed` (host); `unknown-option`, `unknown-value`,
+ * `invalid-number`, `invalid-profile`, `not-supported` (caller)
+ * @example
+ * const engine = await createEngine();
+ * const blurred = engine.convolve({ data: photo, width: 640, height: 480 }, gaussian({ sigma: 2 }));
+ */
+export async function createEngine(options?: EngineOptions): Promise<Engine> {
+  const checked = checkedEngineOptions(options);
+  const core = await loadCore(checked);
+  const shipped = shippedProfiles.find(({ build }) => build === core.build)!;
+  const engine = new ConvolutionEngine(core, checked.profile ? profileForBuild(checked.profile, core.build) : shipped);
+  memories.set(engine, core.memory);
+  return engine;
+}

@@ -1,0 +1,67 @@
+import { ConvolutionError } from "../errors.js";
+import type { Choice } from "../planning/choose.js";
+import type { Problem } from "../planning/problem.js";
+import { execute, install, type Installed } from "../runtime/execute.js";
+import type { Explanation, Filter, Raster, ResultRaster, Samples, SampleType } from "../types.js";
+import type { Core } from "./loading.js";
+import type { CheckedRaster } from "./validate/raster.js";
+import { checkedSource, checkedTarget } from "./validate/target.js";
+
+/** An array for results: the source's own kind where the sample type is the same, else what `ImageData` and the like take. */
+function newSamples(sample: SampleType, source: CheckedRaster, length: number): Samples {
+  try {
+    if (sample === "f32") return new Float32Array(length);
+    if (sample === "u16") return new Uint16Array(length);
+    const plain = source.sample === "u8" && Object.prototype.toString.call(source.data) === "[object Uint8Array]";
+    return plain ? new Uint8Array(length) : new Uint8ClampedArray(length);
+  } catch (cause) {
+    const message = `The host cannot make an array of ${length} ${sample} samples for the result. Give a target, or filter by regions.`;
+    throw new ConvolutionError("memory-exhausted", message, { expected: "room for the result", received: length, cause });
+  }
+}
+
+/** A plan with its memory in the engine. */
+export class PreparedFilter implements Filter {
+  readonly explanation: Explanation;
+  readonly #problem: Problem;
+  readonly #core: Core;
+  readonly #leave: (filter: PreparedFilter) => void;
+  #installed: Installed | undefined;
+
+  constructor(problem: Problem, choice: Choice, explanation: Explanation, core: Core, leave: (filter: PreparedFilter) => void) {
+    this.explanation = explanation;
+    this.#problem = problem;
+    this.#core = core;
+    this.#leave = leave;
+    this.#installed = install(choice.plan.program(problem), core.memory, core.routines);
+  }
+
+  run<S extends Samples>(image: Raster<S>): ResultRaster;
+  run<S extends Samples, T extends Raster>(image: Raster<S>, target: T): T;
+  run(image: Raster, target?: Raster): Raster {
+    const installed = this.#installed;
+    if (!installed) {
+      const message = "run: the filter was disposed, its memory is given back. Prepare it anew.";
+      throw new ConvolutionError("disposed", message, { expected: "a filter that is not disposed", received: "a disposed filter" });
+    }
+    const { request, horizontal, vertical } = this.#problem;
+    const source = checkedSource(image, request);
+    const result = { width: horizontal.count, height: vertical.count, channels: request.channels, sample: request.output.sample };
+    if (target !== undefined) {
+      execute(installed, this.#core.memory, this.#core.routines, source, checkedTarget(target, source, result));
+      return target;
+    }
+    const { width, height, channels } = result;
+    const data = newSamples(result.sample, source, width * height * channels);
+    execute(installed, this.#core.memory, this.#core.routines, source, { data, stride: width * channels });
+    return { data, width, height, channels, ...(source.colorSpace === undefined ? {} : { colorSpace: source.colorSpace }) };
+  }
+
+  dispose(): void {
+    const installed = this.#installed;
+    if (!installed) return;
+    this.#installed = undefined;
+    this.#core.memory.release(installed.address, installed.program.byteLength);
+    this.#leave(this);
+  }
+}

@@ -1,0 +1,78 @@
+import { ConvolutionError } from "../errors.js";
+import { code as simdCode } from "../generated/simd.js";
+import { EngineMemory } from "../runtime/memory.js";
+import { link, type Routines } from "../runtime/routines.js";
+import type { Build } from "../types.js";
+import { failedAnswer } from "./selfTest.js";
+import type { CheckedEngineOptions } from "./validate/engineOptions.js";
+
+/** A core that is ready: linked with its memory, its answers checked. */
+export interface Core {
+  build: Build;
+  memory: EngineMemory;
+  routines: Routines;
+}
+
+function decoded(base64: string): Uint8Array<ArrayBuffer> {
+  return Uint8Array.from(atob(base64), (character) => character.charCodeAt(0));
+}
+
+/** The default page loads the SIMD binary with the package; the scalar one comes only when it is needed. */
+async function codeOf(build: Build): Promise<string> {
+  return build === "simd" ? simdCode : (await import("../generated/scalar.js")).code;
+}
+
+/** An eight-byte header and the smallest function that uses a vector: what a host without SIMD refuses. */
+const simdProbe = Uint8Array.of(0, 97, 115, 109, 1, 0, 0, 0, 1, 5, 1, 96, 0, 1, 123, 3, 2, 1, 0, 10, 10, 1, 8, 0, 65, 0, 253, 15, 253, 98, 11);
+
+function hostError(code: "webassembly-missing" | "webassembly-blocked", message: string, cause?: unknown): ConvolutionError {
+  const expected = code === "webassembly-blocked" ? "script-src 'self' 'wasm-unsafe-eval'" : "WebAssembly";
+  return new ConvolutionError(code, message, { expected, received: cause instanceof Error ? cause.message : "none", cause });
+}
+
+async function compile(build: Build): Promise<WebAssembly.Module> {
+  const bytes = decoded(await codeOf(build));
+  try {
+    return await WebAssembly.compile(bytes);
+  } catch (cause) {
+    if (/content security policy|unsafe-eval|\bcsp\b/i.test(String(cause))) {
+      const message =
+        "The page's content security policy forbids WebAssembly: its script-src lacks 'wasm-unsafe-eval'. Send script-src 'self' 'wasm-unsafe-eval' (which allows WebAssembly and no eval of text).";
+      throw hostError("webassembly-blocked", message, cause);
+    }
+    throw cause;
+  }
+}
+
+/** @throws ConvolutionError `self-test-failed` with the answer that was wrong */
+async function start(wanted: Build | "auto", module: WebAssembly.Module, limit: number): Promise<Core> {
+  const memory = new EngineMemory(limit);
+  const linked = await link(module, memory.memory);
+  const build: Build = "missing" in linked || linked.vectorFloats() === 4 ? "simd" : "scalar";
+  const failure = "missing" in linked ? linked.missing : wanted !== "auto" && wanted !== build ? `it is a ${build} core` : failedAnswer(linked, memory, build);
+  if (failure === undefined) return { build, memory, routines: linked as Routines };
+  const message = `The ${wanted} core fails its known-answer test: ${failure}. Try another build; if you passed a module, compile it from this package's own core.`;
+  throw new ConvolutionError("self-test-failed", message, { expected: "the known answers", received: failure });
+}
+
+/**
+ * Loads, links and tests a core. "auto" takes SIMD where the host has it and it gives the right answers, else the scalar core.
+ *
+ * @throws ConvolutionError `webassembly-missing`, `webassembly-blocked`, `self-test-failed`, `memory-exhausted`
+ */
+export async function loadCore(options: CheckedEngineOptions): Promise<Core> {
+  if (typeof WebAssembly !== "object") {
+    throw hostError("webassembly-missing", "This host has no WebAssembly, and the package has no other core. Use a current browser or Node 20 and later.");
+  }
+  const { build, memoryLimit, module } = options;
+  if (module) return start(build, module, memoryLimit);
+  const simd = WebAssembly.validate(simdProbe);
+  if (build === "scalar" || (build === "auto" && !simd)) return start("scalar", await compile("scalar"), memoryLimit);
+  if (!simd) throw hostError("webassembly-missing", 'This host\'s WebAssembly has no SIMD. Use build "auto" or "scalar".');
+  try {
+    return await start("simd", await compile("simd"), memoryLimit);
+  } catch (cause) {
+    if (build === "simd" || !(cause instanceof ConvolutionError) || cause.code !== "self-test-failed") throw cause;
+    return start("scalar", await compile("scalar"), memoryLimit);
+  }
+}

@@ -1,0 +1,42 @@
+import { ConvolutionError } from "../../errors.js";
+import type { SampleType } from "../../types.js";
+import { checkedRaster, type CheckedRaster } from "./raster.js";
+import type { ImageShape } from "./request.js";
+
+const shapeOf = ({ width, height, channels, sample }: ImageShape): string => `${width}×${height}×${channels} ${sample}`;
+
+/**
+ * An image for a prepared filter.
+ *
+ * @throws ConvolutionError `layout-mismatch`, and those of a raster
+ */
+export function checkedSource(image: unknown, layout: ImageShape): CheckedRaster {
+  const source = checkedRaster("run: image", image);
+  const same = source.width === layout.width && source.height === layout.height && source.channels === layout.channels && source.sample === layout.sample;
+  if (same) return source;
+  const message = `run: the image is ${shapeOf(source)}, the filter was prepared for ${shapeOf(layout)}. Prepare a filter for this layout.`;
+  throw new ConvolutionError("layout-mismatch", message, { expected: shapeOf(layout), received: shapeOf(source) });
+}
+
+function overlap(a: ArrayBufferView, b: ArrayBufferView): boolean {
+  return a.buffer === b.buffer && a.byteOffset < b.byteOffset + b.byteLength && b.byteOffset < a.byteOffset + a.byteLength;
+}
+
+/**
+ * A target for results.
+ *
+ * @throws ConvolutionError `invalid-target`, `overlapping-target`, and those of a raster
+ */
+export function checkedTarget(target: unknown, source: CheckedRaster, result: { width: number; height: number; channels: 1 | 2 | 3 | 4; sample: SampleType }): CheckedRaster {
+  const checked = checkedRaster("run: target", target);
+  const same = checked.width === result.width && checked.height === result.height && checked.channels === result.channels && checked.sample === result.sample;
+  if (!same) {
+    const message = `run: the target is ${shapeOf(checked)}, the result is ${shapeOf(result)}. Give a target of that shape, or none to get a new raster.`;
+    throw new ConvolutionError("invalid-target", message, { expected: shapeOf(result), received: shapeOf(checked) });
+  }
+  if (overlap(checked.data, source.data)) {
+    const message = "run: target and image share memory, so results would be read as samples. Give a target of its own.";
+    throw new ConvolutionError("overlapping-target", message, { expected: "memory apart from the image", received: "overlapping memory" });
+  }
+  return checked;
+}

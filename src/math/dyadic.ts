@@ -1,0 +1,23 @@
+/** Most bits below the point that are looked at: taps with finer steps are not worth calling integers. */
+const mostHalvings = 40;
+
+function greatestCommonDivisor(a: number, b: number): number {
+  while (b !== 0) [a, b] = [b, a % b];
+  return a;
+}
+
+/**
+ * The smallest integers in the same proportions, where all values are multiples of one power of two; else nothing.
+ *
+ * @example
+ * integersOf(Float64Array.of(0.375, 0.25)); // 3, 2
+ */
+export function integersOf(values: Float64Array): Float64Array<ArrayBuffer> | undefined {
+  let scale = 1;
+  for (let k = 0; k < mostHalvings && !values.every((value) => Number.isInteger(value * scale)); k++) scale *= 2;
+  const integers = Float64Array.from(values, (value) => value * scale);
+  if (!integers.every((value) => Number.isSafeInteger(value))) return undefined;
+  let divisor = 0;
+  for (const value of integers) divisor = greatestCommonDivisor(divisor, Math.abs(value));
+  return divisor === 0 ? undefined : integers.map((value) => value / divisor);
+}

@@ -1,0 +1,26 @@
+/** Every block starts on a cache line; so does every filter's memory. */
+export const alignment = 64;
+
+export function alignedTo(bytes: number, multiple: number): number {
+  return Math.ceil(bytes / multiple) * multiple;
+}
+
+/**
+ * A stride of an odd number of cache lines: neighbouring rows never compete for the same few places of a cache
+ * (rows a power of two apart would).
+ */
+export function rowStride(bytes: number): number {
+  const lines = Math.ceil(bytes / alignment);
+  return (lines % 2 === 0 ? lines + 1 : lines) * alignment;
+}
+
+/** Lays blocks one after the other; what it hands out are offsets, so planning needs no memory. */
+export class Arrangement {
+  byteLength = 0;
+
+  take(bytes: number): number {
+    const offset = this.byteLength;
+    this.byteLength += alignedTo(bytes, alignment);
+    return offset;
+  }
+}

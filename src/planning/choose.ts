@@ -1,0 +1,82 @@
+import { ConvolutionError } from "../errors.js";
+import type { Candidate, HardwareProfile, Method } from "../types.js";
+import { priceOf, type Prices } from "./cost.js";
+import type { MethodPlan } from "./method.js";
+import { methods } from "./methods.js";
+import type { Problem } from "./problem.js";
+
+/** A candidate with the numbers that the choice is made by. */
+interface Priced {
+  plan: MethodPlan;
+  candidate: Candidate;
+}
+
+/** The outcome of planning: the method that wins, and how every method fared. */
+export interface Choice {
+  plan: MethodPlan;
+  chosen: Candidate;
+  candidates: Candidate[];
+}
+
+/** Two costs nearer than this are a tie: no profile predicts better. */
+const tie = 0.01;
+
+function price(plan: MethodPlan, problem: Problem, profile: HardwareProfile): Candidate {
+  const applies = plan.applicable(problem);
+  if (applies !== true) return { method: plan.name, refused: applies };
+  const { setup, run, bytes } = plan.work(problem);
+  const prices = profile.nanoseconds as Prices;
+  const candidate: Candidate = {
+    method: plan.name,
+    milliseconds: priceOf(run, prices) / 1e6,
+    setupMilliseconds: priceOf(setup, prices) / 1e6,
+    bytes,
+    errorBound: plan.errorBound(problem),
+    arithmetic: plan.arithmetic(problem),
+  };
+  if (plan.terms) candidate.terms = plan.terms(problem);
+  if (bytes <= problem.bytesAvailable) return candidate;
+  return { ...candidate, refused: `It needs ${bytes} bytes of engine memory, ${Math.floor(problem.bytesAvailable)} are to be had.` };
+}
+
+const cost = (candidate: Candidate, once: boolean): number => candidate.milliseconds! + (once ? candidate.setupMilliseconds! : 0);
+
+/** The cheaper one; of two that tie the one with the smaller error bound, then with fewer bytes. */
+function better(a: Priced, b: Priced, once: boolean): Priced {
+  const [costA, costB] = [cost(a.candidate, once), cost(b.candidate, once)];
+  if (Math.abs(costA - costB) > tie * Math.min(costA, costB)) return costA < costB ? a : b;
+  if (a.candidate.errorBound !== b.candidate.errorBound) return a.candidate.errorBound! < b.candidate.errorBound! ? a : b;
+  return a.candidate.bytes! <= b.candidate.bytes! ? a : b;
+}
+
+/**
+ * Compares the methods.
+ *
+ * @param once true where the filter will run a single time: setting up counts then
+ * @throws ConvolutionError `method-not-applicable` for a forced method, `memory-limit` where none fits
+ */
+export function choose(problem: Problem, profile: HardwareProfile, once: boolean): Choice {
+  const all: Priced[] = methods.map((plan) => ({ plan, candidate: price(plan, problem, profile) }));
+  const candidates = all.map(({ candidate }) => candidate);
+  const { method } = problem.request;
+  if (method !== "auto") return { ...forced(all, method, problem), candidates };
+  const open = all.filter(({ candidate }) => candidate.refused === undefined);
+  if (open.length === 0) throw outOfMemory(candidates, problem);
+  const winner = open.reduce((a, b) => better(a, b, once));
+  return { plan: winner.plan, chosen: winner.candidate, candidates };
+}
+
+function forced(all: Priced[], method: Method, problem: Problem): { plan: MethodPlan; chosen: Candidate } {
+  const { plan, candidate } = all.find(({ plan: { name } }) => name === method)!;
+  if (candidate.refused === undefined) return { plan, chosen: candidate };
+  if (candidate.bytes !== undefined) throw outOfMemory([candidate], problem);
+  const others = all.filter((other) => other.candidate.refused === undefined).map((other) => other.plan.name);
+  throw new ConvolutionError("method-not-applicable", candidate.refused, { expected: ["auto", ...others], received: method });
+}
+
+function outOfMemory(candidates: Candidate[], problem: Problem): ConvolutionError {
+  const least = Math.min(...candidates.map(({ bytes }) => bytes ?? Infinity));
+  const available = Math.floor(problem.bytesAvailable);
+  const message = `The filter needs at least ${least} bytes of engine memory, ${available} are to be had. Raise memoryLimit, dispose filters that are not needed, or filter by regions.`;
+  return new ConvolutionError("memory-limit", message, { expected: `at most ${available} bytes`, received: least });
+}

@@ -1,0 +1,45 @@
+/**
+ * Operations whose number a method knows exactly and whose price a profile holds, in nanoseconds each.
+ *
+ *     cost = Σ counts[operation] · nanoseconds[operation]
+ */
+export const operations = {
+  run: "one run: the call from JavaScript and back",
+  step: "one call into the core",
+  row: "one result row: its loops and pointers",
+  enter_u8: "one 8-bit sample widened and staged",
+  enter_u16: "one 16-bit sample widened and staged",
+  enter_f32: "one float staged",
+  leave_u8: "one 8-bit sample rounded and taken out",
+  leave_u16: "one 16-bit sample rounded and taken out",
+  leave_f32: "one float taken out",
+  haloPixel: "one pixel gathered outside the image",
+  convertPixel: "one pixel decoded, premultiplied, divided or encoded",
+  directTap: "one multiply–add of the direct method",
+  directLoop: "one row of taps over one block of 2 × 16 results",
+  rowTap: "one multiply–add along a row",
+  rowLoop: "one row of taps over one block of a row pass",
+  columnTap: "one multiply–add down a column",
+  columnLoop: "one block of 2 × 16 results of a column pass",
+  integerSum: "one sample of an integer running sum",
+  floatSum: "one sample of sums over blocks",
+  planeSample: "one float spread over the planes or gathered from them",
+  columnPass: "one point of a column transform: see planning/tiles for its weight",
+  rowPass: "one point of a row transform, spectrum and turning included",
+  setup: "one preparation",
+  setupTap: "one tap analysed and stored",
+  setupByte: "one byte of tables and scratch made ready",
+} as const;
+
+export type Operation = keyof typeof operations;
+export type Counts = Partial<Record<Operation, number>>;
+export type Prices = Record<Operation, number>;
+
+export const operationNames = Object.keys(operations) as Operation[];
+
+/** Predicted nanoseconds. */
+export function priceOf(counts: Counts, prices: Prices): number {
+  let nanoseconds = 0;
+  for (const name of operationNames) nanoseconds += (counts[name] ?? 0) * prices[name];
+  return nanoseconds;
+}

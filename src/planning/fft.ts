@@ -1,0 +1,267 @@
+import * as field from "../generated/record.js";
+import { transformError } from "../math/rounding.js";
+import { rootsOfUnity } from "../math/rootsOfUnity.js";
+import { radicesOf } from "../math/smoothNumbers.js";
+import type { Step, Table } from "../runtime/program.js";
+import { integerResults, outputBound } from "./accuracy.js";
+import { frameCounts, frameOf, plainStep, programOf, writing, type Frame } from "./frame.js";
+import type { MethodPlan } from "./method.js";
+import { correlationTaps, type Problem } from "./problem.js";
+import { sampleFacts } from "./samples.js";
+import { planTiles, type Tiling } from "./tiles.js";
+
+/** Overlap-save: strips of complex planes transformed, multiplied by the kernel's spectrum, transformed back. */
+interface FftFrame extends Frame {
+  tiling: Tiling;
+  taps: number;
+  columnPlan: number;
+  columnTurns: number;
+  rowPlan: number;
+  rowTurns: number;
+  planes: number;
+  spectrum: number;
+  scratch: number;
+  entered: number;
+  result: number;
+  marks: number;
+  markStride: number;
+  markCounts: number;
+  markRow: number;
+}
+
+/** Longest transform's points: one call transforms about this many weighted points. */
+const pointsPerCall = 1_500_000;
+
+const tilings = new WeakMap<Problem, Tiling>();
+
+/** The tiling for a problem. What the frame needs besides planes and spectrum is small, and set aside first. */
+function tilingOf(problem: Problem): Tiling | undefined {
+  let tiling = tilings.get(problem);
+  if (!tiling) {
+    tiling = planTiles(problem, problem.bytesAvailable - frameBytes(problem)) ?? planTiles(problem, Infinity);
+    if (tiling) tilings.set(problem, tiling);
+  }
+  return tiling;
+}
+
+/** Everything but planes and spectrum, for the largest tiling there is. */
+function frameBytes(problem: Problem): number {
+  const { horizontal, vertical, channels } = problem;
+  const marks = markRowBytes(problem) * 2 * (vertical.extended + 4096);
+  return frameOf(problem, (affordable) => affordable).arrangement.byteLength + horizontal.taps * vertical.taps * 4 + 400_000 + 8 * horizontal.extended * channels + Math.min(marks, 4_000_000);
+}
+
+/** Only floats can hold NaN or ∞. */
+const marksNeeded = (problem: Problem): boolean => !sampleFacts[problem.request.sample].integer;
+
+const markRowBytes = (problem: Problem): number => 8 * Math.ceil((problem.horizontal.extended * problem.channels) / 64);
+
+const turnsBytes = (points: number): number => {
+  let turns = 0;
+  let span = points;
+  for (const radix of radicesOf(points)!) {
+    turns += (span / radix) * (radix - 1);
+    span /= radix;
+  }
+  return turns * 8;
+};
+
+function frame(problem: Problem): FftFrame {
+  const { horizontal, vertical } = problem;
+  const tiling = tilingOf(problem)!;
+  const base = frameOf(problem, (affordable) => Math.min(affordable, tiling.rows));
+  const { arrangement } = base;
+  const markStride = markRowBytes(problem);
+  const markRows = marksNeeded(problem) ? tiling.rows * tiling.stripsPerGroup : 0;
+  return {
+    ...base,
+    tiling,
+    markStride,
+    taps: arrangement.take(horizontal.taps * vertical.taps * 4),
+    columnPlan: arrangement.take(4 + 12 * radicesOf(tiling.rows)!.length),
+    columnTurns: arrangement.take(turnsBytes(tiling.rows)),
+    rowPlan: arrangement.take(4 + 12 * radicesOf(tiling.columns)!.length),
+    rowTurns: arrangement.take(turnsBytes(tiling.columns)),
+    planes: arrangement.take(2 * tiling.pairs * tiling.planeBytes),
+    spectrum: arrangement.take(tiling.spectrumBytes),
+    scratch: arrangement.take(tiling.columns * 32),
+    entered: arrangement.take(base.extendedStride),
+    result: arrangement.take(base.resultStride),
+    marks: arrangement.take(markRows * markStride),
+    markCounts: arrangement.take(markRows * 4),
+    markRow: arrangement.take(markStride),
+  };
+}
+
+/** Plan and turns of a transform: see the core's fft/transform. */
+function transformTables(points: number, plan: number, turns: number): Table[] {
+  const { cosine, sine } = rootsOfUnity(points);
+  const radices = radicesOf(points)!;
+  const entries = [radices.length];
+  const values: number[] = [];
+  let span = points;
+  for (const radix of radices) {
+    entries.push(radix, span, turns + values.length * 4);
+    const step = points / span;
+    for (let j = 0; j < span / radix; j++) {
+      for (let k = 1; k < radix; k++) values.push(cosine[j * k * step]!, -sine[j * k * step]!);
+    }
+    span /= radix;
+  }
+  return [
+    { offset: plan, data: Int32Array.from(entries), addresses: radices.map((_, pass) => 3 * pass + 3) },
+    { offset: turns, data: Float32Array.from(values) },
+  ];
+}
+
+/** Error among working floats. Exact results that are integers lose it where it stays below ½. */
+function error(problem: Problem): number {
+  const tiling = tilingOf(problem)!;
+  return transformError(tiling.rows * tiling.columns) * problem.analysis.absoluteSum * problem.workingFull;
+}
+
+const roundable = (problem: Problem): boolean => integerResults(problem) && error(problem) < 0.5;
+
+/** Calls of `units` units, as many at a time as last a few milliseconds, in multiples of `grain`. */
+function chunks(routine: Step["routine"], units: number, costPerUnit: number, grain: number): Step[] {
+  const many = Math.max(grain, grain * Math.floor(pointsPerCall / costPerUnit / grain));
+  const steps: Step[] = [];
+  for (let from = 0; from < units; from += many) steps.push(plainStep(routine, from, Math.min(units, from + many)));
+  return steps;
+}
+
+const vectorFloats = (problem: Problem): number => (problem.build === "simd" ? 4 : 1);
+const roundedToFour = (count: number): number => 4 * Math.ceil(count / 4);
+
+function enterSteps(problem: Problem, layout: FftFrame, strip: number): Step[] {
+  const { tiling, stagedRows } = layout;
+  const steps: Step[] = [];
+  const top = strip * tiling.stripRows;
+  for (let from = 0; from < tiling.rows; from += stagedRows) {
+    const to = Math.min(tiling.rows, from + stagedRows);
+    const count = Math.max(0, Math.min(problem.vertical.extended - top - from, to - from));
+    steps.push({ ...plainStep("enterStrip", from, to, strip), read: { first: top + from, count } });
+  }
+  return steps;
+}
+
+function leaveSteps(problem: Problem, layout: FftFrame, strip: number): Step[] {
+  const { tiling, stagedRows } = layout;
+  const steps: Step[] = [];
+  const top = strip * tiling.stripRows;
+  const rows = Math.min(tiling.stripRows, problem.vertical.count - top);
+  for (let from = 0; from < rows; from += stagedRows) {
+    const to = Math.min(rows, from + stagedRows);
+    steps.push(writing(problem, plainStep("leaveStrip", from, to, strip), { first: top + from, count: to - from }));
+  }
+  return steps;
+}
+
+/** Enter, columns, rows, columns back, leave: group after group of strips. */
+function runSteps(problem: Problem, layout: FftFrame): Step[] {
+  const { tiling } = layout;
+  const { horizontal } = problem;
+  const columnCost = 5 * tiling.rows * tiling.pairs;
+  const rowCost = 12 * vectorFloats(problem) * tiling.tiles * tiling.columns * tiling.pairs;
+  const steps: Step[] = [];
+  for (let group = 0; group < tiling.groups; group++) {
+    const strips = Array.from({ length: tiling.stripsPerGroup }, (_, k) => group * tiling.stripsPerGroup + k);
+    steps.push(...strips.flatMap((strip) => enterSteps(problem, layout, strip)));
+    steps.push(...chunks("forwardColumns", roundedToFour(horizontal.extended), columnCost, 16));
+    steps.push(...chunks("filterRows", tiling.rows / vectorFloats(problem), rowCost, 1));
+    steps.push(...chunks("inverseColumns", roundedToFour(horizontal.count), columnCost, 16));
+    steps.push(...strips.flatMap((strip) => leaveSteps(problem, layout, strip)));
+  }
+  return steps;
+}
+
+function setupSteps(problem: Problem, tiling: Tiling): Step[] {
+  const lanes = vectorFloats(problem);
+  return [
+    plainStep("placeTaps", 0, 0),
+    ...chunks("forwardColumns", roundedToFour(problem.horizontal.taps), 5 * tiling.rows * tiling.pairs, 16),
+    ...chunks("takeSpectrum", tiling.rows / lanes, 8 * lanes * tiling.columns, 1),
+  ];
+}
+
+export const fft: MethodPlan = {
+  name: "fft",
+
+  applicable: (problem) =>
+    tilingOf(problem) !== undefined || `A kernel of ${problem.horizontal.taps}×${problem.vertical.taps} taps is longer than the longest transform, 4096 points.`,
+
+  work(problem) {
+    const { horizontal, vertical, channels } = problem;
+    const layout = frame(problem);
+    const { tiling } = layout;
+    const entered = tiling.strips * tiling.rows;
+    const setupRows = tiling.rows * tiling.columns;
+    return {
+      setup: {
+        setup: 1,
+        setupTap: horizontal.taps * vertical.taps,
+        setupByte: layout.arrangement.byteLength,
+        columnPass: 5 * tiling.rows * roundedToFour(horizontal.taps) * tiling.pairs,
+        rowPass: 7 * setupRows,
+      },
+      run: {
+        ...frameCounts(problem, Math.min(entered, vertical.extended + (tiling.strips - 1) * (vertical.taps - 1)), runSteps(problem, layout).length),
+        planeSample: (entered * horizontal.extended + vertical.count * horizontal.count) * channels,
+        columnPass: tiling.columnPasses,
+        rowPass: tiling.rowPasses,
+      },
+      bytes: layout.arrangement.byteLength,
+    };
+  },
+
+  errorBound: (problem) => outputBound(problem, error(problem)),
+
+  arithmetic(problem) {
+    const { rows, columns } = tilingOf(problem)!;
+    return `float32 FFT, tiles of ${columns}×${rows}${roundable(problem) ? ", rounded to the exact integers" : ""}`;
+  },
+
+  program(problem) {
+    const { horizontal, vertical } = problem;
+    const layout = frame(problem);
+    const { tiling } = layout;
+    return programOf(problem, layout, {
+      fields(job) {
+        job
+          .pointer(field.TAPS, layout.taps)
+          .integer(field.KERNEL_COLUMNS, horizontal.taps)
+          .integer(field.KERNEL_ROWS, vertical.taps)
+          .pointer(field.ENTERED, layout.entered)
+          .pointer(field.RESULT, layout.result)
+          .pointer(field.COLUMN_PLAN, layout.columnPlan)
+          .pointer(field.ROW_PLAN, layout.rowPlan)
+          .pointer(field.PLANES, layout.planes)
+          .integer(field.PLANE_STRIDE, tiling.planeStride)
+          .integer(field.PLANE_BYTES, tiling.planeBytes)
+          .integer(field.PAIRS, tiling.pairs)
+          .integer(field.TILE_ROWS, tiling.rows)
+          .integer(field.TILE_COLUMNS, tiling.columns)
+          .integer(field.TILE_STEP, tiling.tileStep)
+          .pointer(field.SPECTRUM, layout.spectrum)
+          .pointer(field.ROW_SCRATCH, layout.scratch)
+          .integer(field.STRIP_ROWS, tiling.stripRows)
+          .float(field.SCALE, 1 / (tiling.rows * tiling.columns));
+        if (!marksNeeded(problem)) return;
+        job
+          .pointer(field.MARKS, layout.marks)
+          .integer(field.MARK_STRIDE, layout.markStride)
+          .pointer(field.MARK_COUNTS, layout.markCounts)
+          .pointer(field.MARK_ROW, layout.markRow);
+      },
+      tables: [
+        { offset: layout.taps, data: Float32Array.from(correlationTaps(problem)) },
+        ...transformTables(tiling.rows, layout.columnPlan, layout.columnTurns),
+        ...transformTables(tiling.columns, layout.rowPlan, layout.rowTurns),
+      ],
+      setup: setupSteps(problem, tiling),
+      steps: runSteps(problem, layout),
+      error: error(problem),
+      round: roundable(problem),
+    });
+  },
+};

@@ -1,0 +1,28 @@
+import type { Program } from "../runtime/program.js";
+import type { Method } from "../types.js";
+import type { Counts } from "./cost.js";
+import type { Problem } from "./problem.js";
+
+/** Exact operation counts, and the memory that the filter owns. */
+export interface Work {
+  /** Once, while preparing. */
+  setup: Counts;
+  /** Each run. */
+  run: Counts;
+  bytes: number;
+}
+
+/** The cast of every method, in this order; planning/methods is the table of them. */
+export interface MethodPlan {
+  readonly name: Method;
+  /** True, or the sentence that `explain` prints. */
+  applicable(problem: Problem): true | string;
+  work(problem: Problem): Work;
+  /** Largest difference from the exact result before rounding, in output units; see planning/accuracy. */
+  errorBound(problem: Problem): number;
+  /** What decides the bytes of the result, in words. */
+  arithmetic(problem: Problem): string;
+  /** Separable terms that are summed, where the method has any. */
+  terms?(problem: Problem): number;
+  program(problem: Problem): Program;
+}

@@ -1,0 +1,119 @@
+import { readTaps, type Kernel } from "../kernels/kernel.js";
+import { indexMap, type IndexRule } from "../math/borders.js";
+import type { Alpha, BorderRule, Build, Channels, Extent, Light, Method, Region, SampleType } from "../types.js";
+import { analyse, type KernelAnalysis } from "./analysis.js";
+import { sampleFacts } from "./samples.js";
+
+/** A caller's wish, checked and complete: every default filled in. */
+export interface Request {
+  kernel: Kernel;
+  correlate: boolean;
+  width: number;
+  height: number;
+  channels: Channels;
+  sample: SampleType;
+  rows: BorderRule;
+  columns: BorderRule;
+  extent: Extent;
+  /** The part of the output that is wanted, inside it. */
+  region: Region;
+  method: Method | "auto";
+  tolerance: number;
+  alpha: Alpha;
+  light: Light;
+  output: { sample: SampleType; gain: number; offset: number };
+}
+
+/** One axis: which samples the results read. */
+export interface Axis {
+  rule: BorderRule;
+  /** Results. */
+  count: number;
+  /** Taps. */
+  taps: number;
+  /** Image index of the first sample that is read. */
+  first: number;
+  /** Samples that are read, in and outside the image: count + taps − 1. */
+  extended: number;
+  /** Where tap 0 lies relative to the result, in correlation order: result k reads extended samples k … k + taps − 1, itself at k + anchor. */
+  anchor: number;
+  /** Source index of each extended sample, −1 where a constant stands. */
+  map: Int32Array<ArrayBuffer>;
+}
+
+/**
+ * The one form of every question: results are correlations of an extended image with taps in correlation order,
+ *
+ *     result[r, c] = Σⱼ Σᵢ taps[j, i] · extended[r + j, c + i]
+ *
+ * so that convolution, origins, extents, regions and borders are settled before any method sees them.
+ */
+export interface Problem {
+  request: Request;
+  analysis: KernelAnalysis;
+  /** Taps in correlation order: reversed for a convolution. */
+  reversed: boolean;
+  horizontal: Axis;
+  vertical: Axis;
+  channels: number;
+  /** Channels that are colours; the others are alpha. */
+  colours: number;
+  /** The full value among working floats: 1 for linear light, else the sample type's. */
+  workingFull: number;
+  renormalised: boolean;
+  build: Build;
+  /** Bytes that a filter may still take from the engine. */
+  bytesAvailable: number;
+}
+
+const indexRule = (rule: BorderRule): IndexRule =>
+  typeof rule === "object" || rule === "zero" || rule === "renormalised" ? "outside" : rule;
+
+/** Position of result 0 in image coordinates, and results, before a region is cut out. */
+export function extentOf(extent: Extent, samples: number, taps: number, anchor: number): { start: number; count: number } {
+  if (extent === "same") return { start: 0, count: samples };
+  if (extent === "full") return { start: anchor - taps + 1, count: samples + taps - 1 };
+  return { start: anchor, count: samples - taps + 1 };
+}
+
+/** Position of tap 0's sample: the origin as seen from the first tap in correlation order. */
+export function anchorOf(taps: number, origin: number, reversed: boolean): number {
+  return reversed ? taps - 1 - origin : origin;
+}
+
+function axis(request: Request, rule: BorderRule, samples: number, taps: number, origin: number, cut: { start: number; count: number }): Axis {
+  const anchor = anchorOf(taps, origin, !request.correlate);
+  const first = extentOf(request.extent, samples, taps, anchor).start + cut.start - anchor;
+  const extended = cut.count + taps - 1;
+  return { rule, count: cut.count, taps, first, extended, anchor, map: indexMap(indexRule(rule), first, extended, samples) };
+}
+
+export function problemOf(request: Request, build: Build, bytesAvailable: number): Problem {
+  const { kernel, region } = request;
+  const vertical = axis(request, request.rows, request.height, kernel.height, kernel.origin.y, { start: region.y, count: region.height });
+  const horizontal = axis(request, request.columns, request.width, kernel.width, kernel.origin.x, { start: region.x, count: region.width });
+  return {
+    request,
+    analysis: analyse(kernel),
+    reversed: !request.correlate,
+    horizontal,
+    vertical,
+    channels: request.channels,
+    colours: request.alpha === "none" ? request.channels : request.channels - 1,
+    workingFull: request.light === "linear" ? 1 : sampleFacts[request.sample].full,
+    renormalised: request.rows === "renormalised" || request.columns === "renormalised",
+    build,
+    bytesAvailable,
+  };
+}
+
+/** The taps in correlation order. */
+export function correlationTaps(problem: Problem): Float64Array<ArrayBuffer> {
+  const taps = readTaps(problem.request.kernel).slice();
+  return problem.reversed ? taps.reverse() : taps;
+}
+
+/** A vector of a separable term in correlation order. */
+export function inCorrelationOrder(problem: Problem, vector: Float64Array<ArrayBuffer>): Float64Array<ArrayBuffer> {
+  return problem.reversed ? vector.slice().reverse() : vector;
+}

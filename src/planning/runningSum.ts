@@ -1,0 +1,103 @@
+import * as field from "../generated/record.js";
+import { gamma } from "../math/rounding.js";
+import { outputBound, sumError } from "./accuracy.js";
+import { frameCounts, frameOf, programOf, type Frame } from "./frame.js";
+import type { MethodPlan } from "./method.js";
+import { correlationTaps, type Problem } from "./problem.js";
+import { sampleFacts } from "./samples.js";
+import { ringTable, sweepCalls, sweepStagedRows, sweepSteps } from "./sweeps.js";
+
+/** Sums of n rows in a ring and one row of sums: a cost that does not depend on the kernel's size. */
+interface RunningSumFrame extends Frame {
+  tap: number;
+  ring: number;
+  table: number;
+  entered: number;
+  sums: number;
+  results: number;
+}
+
+/** Integer sums stay below 2³² and need no rounding; what is not an integer is summed in blocks of floats. */
+function integerSums(problem: Problem): boolean {
+  const { request, horizontal, vertical } = problem;
+  const facts = sampleFacts[request.sample];
+  const integers = facts.integer && request.light === "encoded" && request.alpha !== "straight";
+  return integers && horizontal.taps * vertical.taps * facts.full < 4294967296;
+}
+
+function frame(problem: Problem): RunningSumFrame {
+  const base = frameOf(problem, sweepStagedRows(problem, 8 * problem.horizontal.count * problem.channels));
+  const { arrangement } = base;
+  const { taps } = problem.vertical;
+  return {
+    ...base,
+    tap: arrangement.take(4),
+    ring: arrangement.take(taps * base.resultStride),
+    table: arrangement.take(2 * taps * 4),
+    entered: arrangement.take(2 * base.extendedStride),
+    sums: arrangement.take(base.resultStride),
+    results: arrangement.take(2 * base.resultStride),
+  };
+}
+
+function error(problem: Problem): number {
+  const { horizontal, vertical, analysis, workingFull } = problem;
+  if (integerSums(problem)) return gamma(3) * analysis.absoluteSum * workingFull;
+  return sumError(problem, horizontal.taps + vertical.taps + 3, analysis.absoluteSum);
+}
+
+/** Position inside its block of the first sample that is read, blocks being counted from image sample 0. */
+const phase = (first: number, taps: number): number => ((first % taps) + taps) % taps;
+
+export const runningSum: MethodPlan = {
+  name: "running-sum",
+
+  applicable: (problem) => problem.analysis.constant || "The taps are not all the same number.",
+
+  work(problem) {
+    const { vertical, horizontal, channels } = problem;
+    const layout = frame(problem);
+    const samples = (vertical.extended * horizontal.extended + vertical.count * horizontal.count) * channels;
+    return {
+      setup: { setup: 1, setupTap: horizontal.taps * vertical.taps, setupByte: layout.arrangement.byteLength },
+      run: { ...frameCounts(problem, vertical.extended, sweepCalls(problem, layout)), [integerSums(problem) ? "integerSum" : "floatSum"]: samples },
+      bytes: layout.arrangement.byteLength,
+    };
+  },
+
+  errorBound: (problem) => outputBound(problem, error(problem)),
+
+  arithmetic: (problem) =>
+    integerSums(problem) ? "32-bit integer running sums, scaled once in float32" : "float32 sums over blocks as long as the window, scaled once",
+
+  program(problem) {
+    const { horizontal, vertical } = problem;
+    const layout = frame(problem);
+    return programOf(problem, layout, {
+      fields: (job) =>
+        job
+          .pointer(field.TAPS, layout.tap)
+          .integer(field.KERNEL_COLUMNS, horizontal.taps)
+          .integer(field.KERNEL_ROWS, vertical.taps)
+          .pointer(field.ROW_TABLE, layout.table)
+          .integer(field.RING_ROWS, vertical.taps)
+          .pointer(field.ENTERED, layout.entered)
+          .integer(field.ENTERED_STRIDE, layout.extendedStride)
+          .pointer(field.RESULT, layout.results)
+          .integer(field.RESULT_STRIDE, layout.resultStride)
+          .integer(field.RESULT_FLOATS, layout.paddedFloats)
+          .integer(field.COLUMN_PHASE, phase(horizontal.first, horizontal.taps))
+          .integer(field.ROW_PHASE, phase(vertical.first, vertical.taps))
+          .pointer(field.SUMS, layout.sums)
+          .integer(field.INTEGER_SUMS, integerSums(problem) ? 1 : 0),
+      tables: [
+        { offset: layout.tap, data: Float32Array.of(correlationTaps(problem)[0]!) },
+        { offset: layout.table, data: ringTable(layout.ring, vertical.taps, layout.resultStride), addresses: "all" },
+      ],
+      setup: [],
+      steps: sweepSteps(problem, layout, "sweepRunningSum"),
+      error: error(problem),
+      round: false,
+    });
+  },
+};

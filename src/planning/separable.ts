@@ -1,0 +1,150 @@
+import * as field from "../generated/record.js";
+import { absoluteSum, type SeparableTerm } from "../math/separation.js";
+import { outputBound, sumError } from "./accuracy.js";
+import { mostTerms } from "./analysis.js";
+import { frameCounts, frameOf, programOf, type Frame } from "./frame.js";
+import type { MethodPlan } from "./method.js";
+import { inCorrelationOrder, type Problem } from "./problem.js";
+import { sampleFacts } from "./samples.js";
+import { blocksOf, ringTable, sweepCalls, sweepStagedRows, sweepSteps } from "./sweeps.js";
+
+/** Row results in one ring a term, then columns: r·(m + n) multiply–adds a sample for a sum of r separable terms. */
+interface SeparableFrame extends Frame {
+  terms: number;
+  rowTaps: number;
+  columnTaps: number;
+  rings: number;
+  ringRows: number;
+  table: number;
+  entered: number;
+  results: number;
+}
+
+/** Σ|taps left out| that the caller's tolerance allows, and that double precision leaves anyway (0). */
+function allowedResidual(problem: Problem): number {
+  const { output, tolerance, sample } = problem.request;
+  return tolerance / Math.max(Number.MIN_VALUE, Math.abs(output.gain) * sampleFacts[sample].full);
+}
+
+/** The fewest terms whose residual is allowed, or nothing. An all-zero kernel takes one term of zeros. */
+function termsNeeded(problem: Problem): number | undefined {
+  const { residuals } = problem.analysis.separation();
+  const allowed = allowedResidual(problem);
+  const count = residuals.findIndex((residual, r) => r > 0 && residual <= allowed);
+  return count > 0 ? count : residuals[0] === 0 ? 0 : undefined;
+}
+
+function termsOf(problem: Problem): SeparableTerm[] {
+  const { terms } = problem.analysis.separation();
+  const count = termsNeeded(problem)!;
+  if (count > 0) return terms.slice(0, count);
+  return [{ column: new Float64Array(problem.vertical.taps), row: new Float64Array(problem.horizontal.taps) }];
+}
+
+function frame(problem: Problem): SeparableFrame {
+  const { horizontal, vertical, channels } = problem;
+  const terms = termsOf(problem).length;
+  const base = frameOf(problem, sweepStagedRows(problem, terms * (horizontal.taps + vertical.taps) * horizontal.count * channels));
+  const { arrangement } = base;
+  const ringRows = vertical.taps + 2;
+  return {
+    ...base,
+    terms,
+    ringRows,
+    rowTaps: arrangement.take(terms * horizontal.taps * 4),
+    columnTaps: arrangement.take(terms * vertical.taps * 4),
+    rings: arrangement.take(terms * ringRows * base.resultStride),
+    table: arrangement.take(terms * 2 * ringRows * 4),
+    entered: arrangement.take(2 * base.extendedStride + 8),
+    results: arrangement.take(2 * base.resultStride),
+  };
+}
+
+/** Each vector's taps are rounded once, and a result passes through the sums of a row, of a column and of the terms. */
+function error(problem: Problem): number {
+  const terms = termsOf(problem);
+  const weight = terms.reduce((sum, { column, row }) => sum + absoluteSum(column) * absoluteSum(row), 0);
+  const roundings = problem.horizontal.taps + terms.length * problem.vertical.taps + 3;
+  const dropped = problem.analysis.separation().residuals[termsNeeded(problem)!]!;
+  return sumError(problem, roundings, weight) + dropped * problem.workingFull;
+}
+
+/** Vectors of all terms, one after the other, in correlation order. */
+function stacked(problem: Problem, part: "row" | "column"): Float32Array<ArrayBuffer> {
+  return Float32Array.from(termsOf(problem).flatMap((term) => Array.from(inCorrelationOrder(problem, term[part]))));
+}
+
+export const separable: MethodPlan = {
+  name: "separable",
+
+  applicable(problem) {
+    if (termsNeeded(problem) !== undefined) return true;
+    const { residuals } = problem.analysis.separation();
+    const left = (residuals.at(-1)! * Math.abs(problem.request.output.gain) * sampleFacts[problem.request.sample].full).toPrecision(2);
+    return `The taps are no sum of at most ${Math.min(mostTerms, residuals.length - 1)} separable terms: ${left} levels would be left out, the tolerance is ${problem.request.tolerance}.`;
+  },
+
+  work(problem) {
+    const { horizontal, vertical } = problem;
+    const layout = frame(problem);
+    const blocks = blocksOf(problem, layout);
+    const rowBlocks = Math.ceil(vertical.extended / 2) * Math.ceil(layout.paddedFloats / 16);
+    return {
+      setup: { setup: 1, setupTap: horizontal.taps * vertical.taps, setupByte: layout.arrangement.byteLength },
+      run: {
+        ...frameCounts(problem, vertical.extended, sweepCalls(problem, layout)),
+        rowTap: layout.terms * rowBlocks * 32 * horizontal.taps,
+        rowLoop: layout.terms * rowBlocks,
+        columnTap: layout.terms * blocks * 32 * vertical.taps,
+        columnLoop: layout.terms * blocks,
+      },
+      bytes: layout.arrangement.byteLength,
+    };
+  },
+
+  errorBound: (problem) => outputBound(problem, error(problem)),
+
+  arithmetic(problem) {
+    const terms = termsOf(problem).length;
+    return `float32 sums along rows, then down columns, ${terms} ${terms === 1 ? "term" : "terms"}`;
+  },
+
+  terms: (problem) => termsOf(problem).length,
+
+  program(problem) {
+    const { horizontal, vertical } = problem;
+    const layout = frame(problem);
+    const tables = Array.from({ length: layout.terms }, (_, term) => ({
+      offset: layout.table + term * 2 * layout.ringRows * 4,
+      data: ringTable(layout.rings + term * layout.ringRows * layout.resultStride, layout.ringRows, layout.resultStride),
+      addresses: "all" as const,
+    }));
+    const enteredRows = Int32Array.of(layout.entered, layout.entered + layout.extendedStride);
+    return programOf(problem, layout, {
+      fields: (job) =>
+        job
+          .pointer(field.TAPS, layout.rowTaps)
+          .pointer(field.COLUMN_TAPS, layout.columnTaps)
+          .integer(field.KERNEL_COLUMNS, horizontal.taps)
+          .integer(field.KERNEL_ROWS, vertical.taps)
+          .integer(field.TERMS, layout.terms)
+          .pointer(field.ROW_TABLE, layout.table)
+          .integer(field.RING_ROWS, layout.ringRows)
+          .pointer(field.ENTERED, layout.entered)
+          .integer(field.ENTERED_STRIDE, layout.extendedStride)
+          .pointer(field.RESULT, layout.results)
+          .integer(field.RESULT_STRIDE, layout.resultStride)
+          .integer(field.RESULT_FLOATS, layout.paddedFloats),
+      tables: [
+        { offset: layout.rowTaps, data: stacked(problem, "row") },
+        { offset: layout.columnTaps, data: stacked(problem, "column") },
+        { offset: layout.entered + 2 * layout.extendedStride, data: enteredRows, addresses: "all" },
+        ...tables,
+      ],
+      setup: [],
+      steps: sweepSteps(problem, layout, "sweepSeparable"),
+      error: error(problem),
+      round: false,
+    });
+  },
+};

@@ -1,0 +1,101 @@
+import { radicesOf, smoothMultiplesOfFour, type Radix } from "../math/smoothNumbers.js";
+import { rowStride } from "./arrangement.js";
+import type { Problem } from "./problem.js";
+
+/** How an image is cut for the FFT: see the core's fft/tiles. */
+export interface Tiling {
+  /** Points of a column transform, and of a row transform. */
+  rows: number;
+  columns: number;
+  /** Results that one strip, and one tile of a row, give. */
+  stripRows: number;
+  tileStep: number;
+  strips: number;
+  tiles: number;
+  /** Complex planes worked on together, and how often they are filled. */
+  pairs: number;
+  groups: number;
+  /** Strips in a group: two where a plane holds one channel of two strips. */
+  stripsPerGroup: number;
+  planeStride: number;
+  planeBytes: number;
+  spectrumBytes: number;
+  /** Weighted points of all column and row passes of a run: the fixed measure that tilings are compared by. */
+  columnPasses: number;
+  rowPasses: number;
+}
+
+/**
+ * Loads, stores and arithmetic of one point in one pass, counted in vector instructions and divided by those of radix 4 (50 ÷ 4):
+ * radix 2: 18 ÷ 2, radix 3: 40 ÷ 3, radix 5: 92 ÷ 5.
+ */
+const passWeight: Record<Radix, number> = { 2: 0.72, 3: 1.07, 4: 1, 5: 1.47 };
+
+/** Turning, storing and multiplying by the spectrum cost a row's point about two and a half passes. */
+const rowOverhead = 2.5;
+
+/** Points of the longest transforms that are considered. */
+const mostPoints = 4096;
+
+const sizes = smoothMultiplesOfFour(mostPoints).map((points) => ({
+  points,
+  weight: radicesOf(points)!.reduce((sum, radix) => sum + passWeight[radix], 0),
+}));
+
+type Size = (typeof sizes)[number];
+
+function tilingOf(problem: Problem, rows: Size, columns: Size): Tiling {
+  const { horizontal, vertical, channels } = problem;
+  const stripRows = Math.min(vertical.count, rows.points - vertical.taps + 1);
+  const tileStep = 4 * Math.floor((columns.points - horizontal.taps + 1) / 4);
+  const strips = Math.ceil(vertical.count / stripRows);
+  const tiles = Math.ceil(horizontal.count / tileStep);
+  const stripsPerGroup = channels % 2 === 0 ? 1 : 2;
+  const pairs = channels % 2 === 0 ? channels / 2 : channels;
+  const groups = Math.ceil(strips / stripsPerGroup);
+  const planeStride = rowStride(Math.max(horizontal.extended + 3, columns.points) * 4);
+  const touched = 16 * (Math.ceil(horizontal.extended / 16) + Math.ceil(horizontal.count / 16));
+  return {
+    rows: rows.points,
+    columns: columns.points,
+    stripRows,
+    tileStep,
+    strips,
+    tiles,
+    pairs,
+    groups,
+    stripsPerGroup,
+    planeStride,
+    planeBytes: rows.points * planeStride,
+    spectrumBytes: rows.points * columns.points * 8,
+    columnPasses: groups * pairs * rows.points * touched * rows.weight,
+    rowPasses: groups * pairs * rows.points * tiles * columns.points * (2 * columns.weight + rowOverhead),
+  };
+}
+
+const bytesOf = (tiling: Tiling): number => 2 * tiling.pairs * tiling.planeBytes + tiling.spectrumBytes;
+
+/** Setting up costs the kernel's own transform; a run that fills its strips only once should not pay for a far larger tile. */
+const costOf = (tiling: Tiling): number => tiling.columnPasses + tiling.rowPasses;
+
+/**
+ * The tiling with the fewest weighted points whose planes and spectrum fit into `bytes`, the smaller one of equals.
+ * It depends on the problem alone, never on a profile, so that a forced FFT gives the same bytes everywhere.
+ */
+export function planTiles(problem: Problem, bytes: number): Tiling | undefined {
+  const { horizontal, vertical } = problem;
+  let best: Tiling | undefined;
+  const tallest = vertical.extended + 3;
+  const widest = horizontal.extended + 3;
+  for (const rows of sizes) {
+    if (rows.points < vertical.taps) continue;
+    for (const columns of sizes) {
+      if (columns.points < horizontal.taps + 3) continue;
+      const tiling = tilingOf(problem, rows, columns);
+      if (bytesOf(tiling) <= bytes && (!best || costOf(tiling) < costOf(best))) best = tiling;
+      if (columns.points >= widest) break;
+    }
+    if (rows.points >= tallest) break;
+  }
+  return best;
+}

@@ -1,0 +1,166 @@
+import { ConvolutionError } from "../errors.js";
+import type { Samples } from "../types.js";
+import type { Table } from "./program.js";
+
+export const pageBytes = 65536;
+
+/** What 32-bit addresses reach, less a page that stays out of reach so that sums of addresses cannot wrap. */
+export const mostBytes = 65536 * pageBytes - pageBytes;
+
+/** The first bytes stay empty: 0 stands for "no table" in the core. */
+const firstAddress = 64;
+
+interface Block {
+  address: number;
+  byteLength: number;
+}
+
+/**
+ * The engine's memory: the only place that touches its buffer.
+ *
+ * Policy. One block a filter, taken while planning and given back by `dispose`; the first free block that is large enough is
+ * cut, neighbours that are free become one again, and only then does the memory grow, by whole pages. It never shrinks. Blocks of mixed sizes leave gaps of at
+ * most what was given back; a block that fits no gap goes to the end.
+ */
+export class EngineMemory {
+  readonly memory: WebAssembly.Memory;
+  readonly limit: number;
+  #free: Block[] = [];
+  #end = firstAddress;
+  #buffer: ArrayBufferLike;
+  #bytes: Uint8Array;
+  #words: Uint16Array;
+  #floats: Float32Array;
+
+  constructor(limit: number) {
+    this.limit = limit;
+    this.memory = new WebAssembly.Memory({ initial: 1 });
+    this.#buffer = this.memory.buffer;
+    this.#bytes = new Uint8Array(this.#buffer);
+    this.#words = new Uint16Array(this.#buffer);
+    this.#floats = new Float32Array(this.#buffer);
+  }
+
+  /** Bytes of the memory as the host sees it. */
+  get byteLength(): number {
+    return this.memory.buffer.byteLength;
+  }
+
+  /** The largest block that can be taken now. */
+  get largestBlock(): number {
+    const last = this.#free.at(-1);
+    const tail = last && last.address + last.byteLength === this.#end ? last.byteLength : 0;
+    return Math.max(0, this.limit - this.#end + tail, ...this.#free.map((block) => block.byteLength));
+  }
+
+  /**
+   * Takes a block, cleared.
+   *
+   * @throws ConvolutionError `memory-limit` (the engine's own limit), `memory-exhausted` (the host gives no more)
+   */
+  take(byteLength: number): number {
+    const index = this.#free.findIndex((block) => block.byteLength >= byteLength);
+    if (index < 0) return this.#extend(byteLength);
+    const block = this.#free[index]!;
+    const { address } = block;
+    block.address += byteLength;
+    block.byteLength -= byteLength;
+    if (block.byteLength === 0) this.#free.splice(index, 1);
+    this.#clear(address, byteLength);
+    return address;
+  }
+
+  #extend(byteLength: number): number {
+    const last = this.#free.at(-1);
+    const adjoining = last && last.address + last.byteLength === this.#end;
+    const address = adjoining ? last.address : this.#end;
+    const end = address + byteLength;
+    if (end > this.limit) throw memoryError("memory-limit", byteLength, this.largestBlock);
+    const missing = Math.ceil((end - this.byteLength) / pageBytes);
+    if (missing > 0) this.#grow(missing, byteLength);
+    if (adjoining) this.#free.pop();
+    this.#end = end;
+    this.#clear(address, byteLength);
+    return address;
+  }
+
+  #grow(pages: number, byteLength: number): void {
+    try {
+      this.memory.grow(pages);
+    } catch (cause) {
+      throw memoryError("memory-exhausted", byteLength, this.byteLength - this.#end, cause);
+    }
+  }
+
+  /** Gives a block back. */
+  release(address: number, byteLength: number): void {
+    const next = this.#free.findIndex((block) => block.address > address);
+    const index = next < 0 ? this.#free.length : next;
+    this.#free.splice(index, 0, { address, byteLength });
+    this.#join(index);
+    this.#join(index - 1);
+  }
+
+  /** Makes one block of two that touch. */
+  #join(index: number): void {
+    const block = this.#free[index];
+    const after = this.#free[index + 1];
+    if (!block || !after || block.address + block.byteLength !== after.address) return;
+    block.byteLength += after.byteLength;
+    this.#free.splice(index + 1, 1);
+  }
+
+  /** Views are made anew only when the memory has grown. */
+  #refresh(): void {
+    if (this.#buffer === this.memory.buffer) return;
+    this.#buffer = this.memory.buffer;
+    this.#bytes = new Uint8Array(this.#buffer);
+    this.#words = new Uint16Array(this.#buffer);
+    this.#floats = new Float32Array(this.#buffer);
+  }
+
+  #clear(address: number, byteLength: number): void {
+    this.#refresh();
+    this.#bytes.fill(0, address, address + byteLength);
+  }
+
+  #viewFor(samples: Samples): Samples {
+    this.#refresh();
+    return samples.BYTES_PER_ELEMENT === 1 ? this.#bytes : samples.BYTES_PER_ELEMENT === 2 ? this.#words : this.#floats;
+  }
+
+  /** Copies samples first … first + count − 1 into the memory. */
+  stage(samples: Samples, first: number, count: number, address: number): void {
+    const whole = first === 0 && count === samples.length;
+    this.#viewFor(samples).set(whole ? samples : samples.subarray(first, first + count), address / samples.BYTES_PER_ELEMENT);
+  }
+
+  /** Copies `count` samples out of the memory, to samples[first] and on. */
+  takeOut(samples: Samples, first: number, count: number, address: number): void {
+    const start = address / samples.BYTES_PER_ELEMENT;
+    samples.set(this.#viewFor(samples).subarray(start, start + count), first);
+  }
+
+  /** Writes a program's tables for a filter whose block starts at `base`. */
+  writeTables(tables: readonly Table[], base: number): void {
+    this.#refresh();
+    for (const { offset, data, addresses } of tables) {
+      this.#bytes.set(new Uint8Array(data.buffer, data.byteOffset, data.byteLength), base + offset);
+      if (!addresses) continue;
+      const integers = new Int32Array(this.#buffer, base + offset, data.length);
+      if (addresses === "all") for (let k = 0; k < integers.length; k++) integers[k]! += base;
+      else for (const k of addresses) integers[k]! += base;
+    }
+  }
+}
+
+function memoryError(code: "memory-limit" | "memory-exhausted", needed: number, available: number, cause?: unknown): ConvolutionError {
+  const mebibytes = (bytes: number): string => `${(bytes / 1048576).toFixed(2)} MiB`;
+  const who = code === "memory-limit" ? "The engine's memoryLimit leaves" : "The host gives";
+  const advice = code === "memory-limit" ? "Raise memoryLimit, dispose filters that are not needed, or filter by regions." : "Dispose filters that are not needed, or filter by regions.";
+  return new ConvolutionError(code, `The filter needs ${mebibytes(needed)} (${needed} bytes) in one piece. ${who} ${mebibytes(available)} (${available} bytes). ${advice}`, {
+    expected: `at most ${available} bytes`,
+    received: needed,
+    cause,
+  });
+}
