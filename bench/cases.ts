@@ -1,5 +1,5 @@
 import { box, gaussian, kernel, sharpen, type Kernel } from "../src/index.js";
-import type { Layout, PrepareOptions } from "../src/types.js";
+import type { Layout, PrepareOptions } from "../src/index.js";
 import { noise } from "../test/support/noise.js";
 
 /** One piece of work that benchmarks speak of by name. */

@@ -1,4 +1,4 @@
-import type { Raster } from "../src/types.js";
+import type { Raster } from "../src/index.js";
 import { define } from "../test/reference/definition.js";
 import type { Case } from "./cases.js";
 

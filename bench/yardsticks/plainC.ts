@@ -1,6 +1,6 @@
 import { spawnSync } from "node:child_process";
 import { fileURLToPath } from "node:url";
-import type { Kernel } from "../../src/kernels/kernel.js";
+import type { Kernel } from "../../src/index.js";
 import { firstLineOf } from "../host.js";
 import { YardstickProcess } from "./process.js";
 import { freshPath, writeFloats } from "./workFolder.js";

@@ -1,5 +1,5 @@
 import { fileURLToPath } from "node:url";
-import type { Kernel } from "../../src/kernels/kernel.js";
+import type { Kernel } from "../../src/index.js";
 import { firstLineOf } from "../host.js";
 import { YardstickProcess } from "./process.js";
 import { freshPath, writeFloats } from "./workFolder.js";
