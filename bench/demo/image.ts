@@ -17,7 +17,7 @@ export interface DemoImage {
 }
 
 /** Of the drawn sheet: teeth, veins and a tape; the net of veins of the lobed leaf; the label. */
-const drawnPlaces: Region[] = [
+export const drawnPlaces: Region[] = [
   { x: 345, y: 520, width: 320, height: 240 },
   { x: 820, y: 350, width: 320, height: 240 },
   { x: 1080, y: 868, width: 320, height: 240 },

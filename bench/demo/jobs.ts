@@ -13,7 +13,22 @@ export interface Job {
   options: ConvolveOptions;
   /** The method that the job is made for; printed beside the choice and never passed to the engine. */
   madeFor: Method;
+  /** The kernel's builder over its width, where it shows that the choice follows the width. */
+  family?: Family;
 }
+
+/** Kernels of one kind. */
+export interface Family {
+  /** "Gaussian" */
+  name: string;
+  /** The letter and unit of what is varied. */
+  symbol: string;
+  values: readonly number[];
+  kernelOf(value: number): Kernel;
+}
+
+/** Standard deviation of the second job's Gaussian, in pixels. */
+export const gaussianSigma = 3;
 
 /** The three jobs: few taps, many taps that are an outer product, many taps that are not. */
 export function threeJobs(): Job[] {
@@ -29,12 +44,13 @@ export function threeJobs(): Job[] {
     },
     {
       file: "softened",
-      title: "Estimate the lamp",
-      purpose: "A wide Gaussian keeps how the lamp falls off over the sheet and takes the detail away.",
-      kernelName: "Gaussian, σ = 12",
-      kernel: gaussian({ sigma: 12 }),
+      title: "Calm the paper",
+      purpose: "A Gaussian three pixels wide takes the paper's grain away before the area of the leaves is counted.",
+      kernelName: `Gaussian, σ = ${gaussianSigma}`,
+      kernel: gaussian(gaussianSigma),
       options: {},
       madeFor: "separable",
+      family: { name: "Gaussian", symbol: "σ", values: Array.from({ length: 24 }, (_, index) => (index + 1) / 2), kernelOf: (sigma) => gaussian(sigma) },
     },
     {
       file: "old-lens",

@@ -50,7 +50,8 @@ export function perform(engine: Engine, job: Job, image: Raster, layout: Require
   const chosen = engine.prepare(job.kernel, layout, job.options);
   const result = chosen.run(image);
   chosen.dispose();
-  const entrants = explanation.candidates.filter((candidate) => candidate.refused === undefined).map((candidate) => enter(engine, job, candidate, layout, image));
+  const applicable = explanation.candidates.filter((candidate) => candidate.refused === undefined);
+  const entrants = applicable.map((candidate) => enter(engine, job, candidate, image, layout));
   race(entrants, image);
   for (const entrant of entrants) entrant.filter.dispose();
   return {
@@ -66,14 +67,26 @@ export function perform(engine: Engine, job: Job, image: Raster, layout: Require
   };
 }
 
-function enter(engine: Engine, job: Job, candidate: Candidate, layout: Required<Layout>, image: Raster): Entrant {
-  const predicted = candidate.milliseconds ?? 0;
-  const rows = predicted <= longestRunMilliseconds ? layout.height : Math.max(1, Math.floor((layout.height * longestRunMilliseconds) / (2 * predicted)));
+/** Prepares a method for as many rows as it filters in the time of a run, and runs it once. */
+function enter(
+  engine: Engine,
+  job: Job,
+  candidate: Candidate,
+  image: Raster,
+  layout: Required<Layout>,
+  expected: number = candidate.milliseconds ?? 0,
+): Entrant {
+  const rows = expected <= longestRunMilliseconds ? layout.height : Math.max(1, Math.floor((layout.height * longestRunMilliseconds) / (2 * expected)));
   const region = rows === layout.height ? {} : { region: { x: 0, y: 0, width: layout.width, height: rows } };
   const filter = engine.prepare(job.kernel, layout, { ...job.options, ...region, method: candidate.method });
   const begun = performance.now();
   const target = filter.run(image);
   const first = performance.now() - begun;
+  const whole = (first * layout.height) / rows;
+  if (first > 2 * longestRunMilliseconds && rows > 1 && whole > 2 * expected) {
+    filter.dispose();
+    return enter(engine, job, candidate, image, layout, whole);
+  }
   return { candidate, filter, rows, target, times: first > warmedMilliseconds ? [first] : [] };
 }
 

@@ -3,7 +3,7 @@ import { duration, percent, small } from "./figures.js";
 import { verdictOf, type Outcome } from "./measure.js";
 
 /** One job as lines for the terminal. */
-export function narrate(outcome: Outcome, agreements: readonly Agreement[]): string {
+export function narrate(outcome: Outcome, agreements: readonly Agreement[], aside?: string): string {
   const { job, explanation } = outcome;
   const surprise = explanation.method === job.madeFor ? "" : `\n  The job is made for ${job.madeFor}; here the engine saw it otherwise.`;
   return [
@@ -12,6 +12,7 @@ export function narrate(outcome: Outcome, agreements: readonly Agreement[]): str
     ...outcome.methods.map(methodLine(explanation.method)),
     `  The choice was ${verdictOf(outcome)}.`,
     ...agreements.map(agreementLine),
+    ...(aside === undefined ? [] : [`  ${aside}`]),
     "",
   ].join("\n");
 }

@@ -4,6 +4,7 @@ import { writeOutput } from "../../src/cli/files.js";
 import type { Engine } from "../../src/index.js";
 import { agreementsOf } from "./agreement.js";
 import type { DemoImage } from "./image.js";
+import { crossingSentence } from "./crossing.js";
 import { threeJobs } from "./jobs.js";
 import { thisMachine } from "./machine.js";
 import { perform } from "./measure.js";
@@ -24,8 +25,9 @@ export async function show(engine: Engine, image: DemoImage, folder: string, tel
   for (const job of threeJobs()) {
     const outcome = perform(engine, job, raster, layout);
     const agreements = agreementsOf(engine, outcome, raster);
-    tell(narrate(outcome, agreements));
-    outcomes.push({ outcome, agreements });
+    const aside = job.family === undefined ? undefined : crossingSentence(engine, job.family, layout);
+    tell(narrate(outcome, agreements, aside));
+    outcomes.push({ outcome, agreements, ...(aside !== undefined && { aside }) });
   }
   const page = reportPage(engine, { image: raster, imageName: name, outcomes, machine: thisMachine(), ...(image.places && { places: image.places }) });
   const files: [string, Uint8Array][] = [

@@ -16,8 +16,14 @@ interface Bar {
 /** The chart, drawn twice: as wide as a page and as wide as a phone; the style shows the one that fits. */
 export function timeChart(outcomes: readonly Outcome[]): string {
   const bars = outcomes.flatMap(barsOf);
-  const words = escaped(bars.filter(({ measured }) => measured > 0).map((bar) => `${bar.job}, ${bar.method}: predicted ${duration(bar.predicted)}, measured ${duration(bar.measured)}`).join("; "));
-  const drawn = (kind: "wide" | "narrow", width: number): string => `<div class="chart ${kind}" role="img" aria-label="${words}.">${drawChart(bars, outcomes, width)}</div>`;
+  const words = escaped(
+    bars
+      .filter(({ measured }) => measured > 0)
+      .map((bar) => `${bar.job}, ${bar.method}: predicted ${duration(bar.predicted)}, measured ${duration(bar.measured)}`)
+      .join("; "),
+  );
+  const drawn = (kind: "wide" | "narrow", width: number): string =>
+    `<div class="chart ${kind}" role="img" aria-label="${words}.">${drawChart(bars, outcomes, width)}</div>`;
   return drawn("wide", 1040) + drawn("narrow", 328);
 }
 
@@ -54,11 +60,32 @@ function drawChart(bars: readonly Bar[], outcomes: readonly Outcome[], width: nu
     marks: [
       gridX(decades, { stroke: "currentColor", strokeOpacity: 0.16 }),
       axisX(decades, { anchor: "bottom", tickFormat: name, label: null, tickSize: 0 }),
-      text(outcomes, { fy: (outcome: Outcome) => outcome.job.title, text: (outcome: Outcome) => outcome.job.title, frameAnchor: "top-left", dx: -88, dy: -20, fontWeight: 650, textAnchor: "start" }),
+      text(outcomes, {
+        fy: (outcome: Outcome) => outcome.job.title,
+        text: (outcome: Outcome) => outcome.job.title,
+        frameAnchor: "top-left",
+        dx: -88,
+        dy: -20,
+        fontWeight: 650,
+        textAnchor: "start",
+      }),
       link(timed, { ...place, x1: "predicted", x2: "measured", y1: "method", y2: "method", stroke: "var(--rule)", strokeWidth: 3 }),
-      dot(timed, { ...place, x: "measured", r: 5.5, fill: (bar: Bar) => (bar.chosen ? "var(--chosen)" : "var(--other)"), stroke: "var(--paper)", strokeWidth: 1.5 }),
+      dot(timed, {
+        ...place,
+        x: "measured",
+        r: 5.5,
+        fill: (bar: Bar) => (bar.chosen ? "var(--chosen)" : "var(--other)"),
+        stroke: "var(--paper)",
+        strokeWidth: 1.5,
+      }),
       tickX(timed, { ...place, x: "predicted", stroke: "var(--predicted)", strokeWidth: 2.5, insetTop: -2, insetBottom: -2 }),
-      text(timed, { ...place, x: (bar: Bar) => Math.max(bar.predicted, bar.measured), text: (bar: Bar) => duration(bar.measured), dx: 12, textAnchor: "start" }),
+      text(timed, {
+        ...place,
+        x: (bar: Bar) => Math.max(bar.predicted, bar.measured),
+        text: (bar: Bar) => duration(bar.measured),
+        dx: 12,
+        textAnchor: "start",
+      }),
       text(refused, { ...place, text: () => "does not apply", frameAnchor: "left", dx: 6, textAnchor: "start", fillOpacity: 0.6, fontStyle: "italic" }),
     ],
   });

@@ -13,7 +13,8 @@ export function cropPlaces(image: Raster & { channels: number }): Region[] {
   const height = Math.min(cropHeight, image.height);
   const places: (Region & { detail: number })[] = [];
   for (let y = 0; y + height <= image.height; y += Math.max(1, height >> 1)) {
-    for (let x = 0; x + width <= image.width; x += Math.max(1, width >> 1)) places.push({ x, y, width, height, detail: detailIn(image, { x, y, width, height }) });
+    for (let x = 0; x + width <= image.width; x += Math.max(1, width >> 1))
+      places.push({ x, y, width, height, detail: detailIn(image, { x, y, width, height }) });
   }
   places.sort((a, b) => b.detail - a.detail);
   const first = places[0];

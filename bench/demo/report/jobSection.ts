@@ -5,7 +5,7 @@ import { kernelFigure } from "./kernelPicture.js";
 import { escaped, table, type Cell } from "./markup.js";
 
 /** One job: why that method, the kernel, crops before and after, times of every method, how far the methods differ. */
-export function jobSection(outcome: Outcome, agreements: readonly Agreement[], pairs: string): string {
+export function jobSection(outcome: Outcome, agreements: readonly Agreement[], pairs: string, aside?: string): string {
   const { job, explanation } = outcome;
   const terms = explanation.terms === undefined ? "" : `, ${explanation.terms} ${explanation.terms === 1 ? "term" : "terms"}`;
   return `<section id="${job.file}">
@@ -13,6 +13,7 @@ export function jobSection(outcome: Outcome, agreements: readonly Agreement[], p
 <h2>${escaped(job.title)}</h2>
 <p>${escaped(job.purpose)}</p>
 <p class="because">Chosen: <b>${explanation.method}</b>${terms} (${escaped(explanation.arithmetic)}). ${escaped(explanation.because)}</p>
+${aside === undefined ? "" : `<p>${escaped(aside)}</p>`}
 ${timeTable(outcome)}
 ${agreementTable(job.file, agreements)}
 </div>${kernelFigure(job.kernel, job.kernelName)}</div>
@@ -37,9 +38,18 @@ function timeTable({ job, explanation, methods }: Outcome): string {
       ],
     ];
   });
-  const refused = methods.flatMap(({ candidate, timing }) => (timing === undefined ? [`<li><b>${candidate.method}</b>: ${escaped(candidate.refused ?? "")}</li>`] : []));
+  const refused = methods.flatMap(({ candidate, timing }) =>
+    timing === undefined ? [`<li><b>${candidate.method}</b>: ${escaped(candidate.refused ?? "")}</li>`] : [],
+  );
   const refusals = refused.length === 0 ? "" : `<p class="title">What does not apply, and why</p><ul class="refused">${refused.join("")}</ul>`;
-  return table(`${job.file}-times`, "One run over the whole image, by every method that applies", ["Method", "Predicted", "Measured", "Off by", "Shortest – longest", "Memory"], rows) + refusals;
+  return (
+    table(
+      `${job.file}-times`,
+      "One run over the whole image, by every method that applies",
+      ["Method", "Predicted", "Measured", "Off by", "Shortest – longest", "Memory"],
+      rows,
+    ) + refusals
+  );
 }
 
 function agreementTable(file: string, agreements: readonly Agreement[]): string {
@@ -50,5 +60,10 @@ function agreementTable(file: string, agreements: readonly Agreement[]): string 
     { figure: `${small(unrounded.largest)} of ${small(unrounded.allowed)}` },
     { figure: holds ? "kept" : "<strong>broken</strong>" },
   ]);
-  return table(`${file}-agreement`, "Largest difference between two methods, in levels, of what their error bounds allow", ["Methods", "As written", "Before rounding", "Bounds"], rows);
+  return table(
+    `${file}-agreement`,
+    "Largest difference between two methods, in levels, of what their error bounds allow",
+    ["Methods", "As written", "Before rounding", "Bounds"],
+    rows,
+  );
 }

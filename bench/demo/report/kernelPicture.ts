@@ -21,7 +21,10 @@ function tapTable(kernel: Kernel, name: string): string {
     const strength = Math.round((62 * Math.abs(tap)) / largest);
     return `<td style="background:color-mix(in srgb,var(--${tap < 0 ? "negative" : "positive"}) ${strength}%,var(--paper))">${String(Number(tap.toPrecision(4))).replace("-", "−")}</td>`;
   };
-  const rows = Array.from({ length: kernel.height }, (_, row) => `<tr>${[...taps.subarray(row * kernel.width, (row + 1) * kernel.width)].map(cell).join("")}</tr>`);
+  const rows = Array.from(
+    { length: kernel.height },
+    (_, row) => `<tr>${[...taps.subarray(row * kernel.width, (row + 1) * kernel.width)].map(cell).join("")}</tr>`,
+  );
   return `<table class="taps" aria-label="Taps of ${escaped(name)}"><tbody>${rows.join("")}</tbody></table>${scale("diverging", `−${small(largest)}`, "0", small(largest))}`;
 }
 

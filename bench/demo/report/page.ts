@@ -15,7 +15,7 @@ export interface Findings {
   image: ResultRaster;
   /** What the image is, in words. */
   imageName: string;
-  outcomes: { outcome: Outcome; agreements: Agreement[] }[];
+  outcomes: { outcome: Outcome; agreements: Agreement[]; aside?: string }[];
   machine: Machine;
   /** Rectangles to look at closely; the most detailed ones where absent. */
   places?: Region[];
@@ -25,7 +25,9 @@ export interface Findings {
 export function reportPage(engine: Engine, findings: Findings): string {
   const places = findings.places ?? cropPlaces(findings.image);
   const outcomes = findings.outcomes.map(({ outcome }) => outcome);
-  const sections = findings.outcomes.map(({ outcome, agreements }) => jobSection(outcome, agreements, cropPairs(findings.image, outcome, places)));
+  const sections = findings.outcomes.map(({ outcome, agreements, aside }) =>
+    jobSection(outcome, agreements, cropPairs(findings.image, outcome, places), aside),
+  );
   return `<!doctype html>
 <html lang="en">
 <head>

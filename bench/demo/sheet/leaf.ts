@@ -54,7 +54,9 @@ export function leafPiece(leaf: Leaf): Piece {
   const cosine = Math.cos(leaf.angle);
   const sine = Math.sin(leaf.angle);
   const reach = leaf.breadth * 1.15 + Math.abs(leaf.bend) * leaf.length;
-  const corners = [-1, 1].flatMap((side) => [0, leaf.length].map((u) => ({ x: leaf.x + u * cosine - side * reach * sine, y: leaf.y + u * sine + side * reach * cosine })));
+  const corners = [-1, 1].flatMap((side) =>
+    [0, leaf.length].map((u) => ({ x: leaf.x + u * cosine - side * reach * sine, y: leaf.y + u * sine + side * reach * cosine })),
+  );
   return {
     left: Math.min(...corners.map((corner) => corner.x)),
     right: Math.max(...corners.map((corner) => corner.x)),
@@ -112,7 +114,10 @@ function uncutHalfWidth(leaf: Leaf, along: number): number {
 function halfWidth(leaf: Leaf, veins: Veins, u: number, across: number, side: number, smooth: number): number {
   const along = u / leaf.length;
   const phase = veins.phase(u, Math.min(across, smooth), side);
-  const lobe = leaf.lobeDepth === 0 ? 0 : leaf.lobeDepth * (0.5 - 0.5 * Math.cos(2 * Math.PI * (phase + 0.5))) ** 2.2 * smoothStep(0.08, 0.42, along) * smoothStep(1, 0.86, along);
+  const lobe =
+    leaf.lobeDepth === 0
+      ? 0
+      : leaf.lobeDepth * (0.5 - 0.5 * Math.cos(2 * Math.PI * (phase + 0.5))) ** 2.2 * smoothStep(0.08, 0.42, along) * smoothStep(1, 0.86, along);
   const saw = leaf.teeth === 0 ? 0 : leaf.toothDepth * (1 - ((phase * leaf.teeth) % 1)) ** 0.9;
   return smooth * (1 - lobe) * (1 - saw) * (1 + 0.03 * side);
 }

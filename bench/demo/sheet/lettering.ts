@@ -52,10 +52,13 @@ function glyphOf(letter: string): readonly [number, string] {
 
 function penStroke(text: string, place: (point: Point) => Point, line: Lettering, position: number): ReturnType<typeof strokePiece> {
   const smooth = text.startsWith("~");
-  const points = text.replace("~", "").split(" ").map((pair) => {
-    const [x, y] = pair.split(",").map(Number);
-    return place({ x, y });
-  });
+  const points = text
+    .replace("~", "")
+    .split(" ")
+    .map((pair) => {
+      const [x, y] = pair.split(",").map(Number);
+      return place({ x, y });
+    });
   const pressure = (along: number): number => ((line.slant ?? 0) === 0 ? 1 : 0.8 + 0.45 * valueNoise(along * 2 + position, line.y, 8));
   return strokePiece({
     points: smooth ? smoothLine(points, 5) : points,

@@ -37,7 +37,11 @@ export function drawSheet(width: number = sheetWidth): Sheet {
   layLabel(plate);
   layScaleBar(plate, 590, 1030);
   layStamp(plate, 1490, 90);
-  const marks: [string, number, number][] = [["a", 330, 1098], ["b", 905, 806], ["c", 1140, 800]];
+  const marks: [string, number, number][] = [
+    ["a", 330, 1098],
+    ["b", 905, 806],
+    ["c", 1140, 800],
+  ];
   for (const [text, x, y] of marks) write(plate, { text, x, y, height: 26, pen: 2.2, ink: pencil, slant: 0.15 });
   return { data: photographed(plate), width, height, channels: 3 };
 }

@@ -11,13 +11,20 @@ const barkDark = colour(0x3f2b1c);
 
 /** A woody line: bark along it, darker at the edges. */
 function layTwig(plate: Plate, points: readonly Point[], from: number, to: number): void {
-  lay(plate, strokePiece({
-    points,
-    halfWidth: (along) => from + (to - from) * along + 0.5 * valueNoise(along * 60, 2, 13) * from * 0.3,
-    colour: (along, across, x, y) => dimmed(blend(bark, barkDark, 0.75 * across * across + 0.5 * (layeredNoise(x / 3, y / 9, 3, 17) - 0.3)), 0.85 + 0.3 * valueNoise(along * 140, across, 19)),
-    relief: from * 0.9,
-    shadow: { right: 2.5, down: 3.5, softness: 2.2, strength: 0.45 },
-  }));
+  lay(
+    plate,
+    strokePiece({
+      points,
+      halfWidth: (along) => from + (to - from) * along + 0.5 * valueNoise(along * 60, 2, 13) * from * 0.3,
+      colour: (along, across, x, y) =>
+        dimmed(
+          blend(bark, barkDark, 0.75 * across * across + 0.5 * (layeredNoise(x / 3, y / 9, 3, 17) - 0.3)),
+          0.85 + 0.3 * valueNoise(along * 140, across, 19),
+        ),
+      relief: from * 0.9,
+      shadow: { right: 2.5, down: 3.5, softness: 2.2, strength: 0.45 },
+    }),
+  );
 }
 
 /** Where a line is at a share of its points, and which way it runs there. */
@@ -47,7 +54,16 @@ function serrateLeaf(random: Random, place: Point & { angle: number }, length: n
 /** Specimen a: a twig with alternate serrate leaves. */
 export function layLeafyTwig(plate: Plate): void {
   const random = randomFrom(318);
-  const stem = smoothLine([{ x: 372, y: 1118 }, { x: 398, y: 900 }, { x: 372, y: 650 }, { x: 402, y: 420 }, { x: 386, y: 268 }], 24);
+  const stem = smoothLine(
+    [
+      { x: 372, y: 1118 },
+      { x: 398, y: 900 },
+      { x: 372, y: 650 },
+      { x: 402, y: 420 },
+      { x: 386, y: 268 },
+    ],
+    24,
+  );
   layTwig(plate, stem, 7.5, 3);
   const shares = [0.16, 0.27, 0.4, 0.52, 0.65, 0.77, 0.89];
   shares.forEach((share, index) => {
@@ -72,11 +88,38 @@ function layStalkedLeaf(plate: Plate, random: Random, node: Point, angle: number
 /** Specimen b: one lobed leaf that shows its lower side. */
 export function layLobedLeaf(plate: Plate): void {
   const tip = -Math.PI / 2 + 0.1;
-  layTwig(plate, smoothLine([{ x: 866, y: 826 }, { x: 858, y: 780 }, { x: 864, y: 728 }], 10), 4.6, 3.6);
-  lay(plate, leafPiece({
-    x: 864, y: 736, angle: tip, length: 590, breadth: 188, bend: 0.03, widestAt: 0.55, veinPairs: 6, teeth: 0, toothDepth: 0,
-    lobeDepth: 0.4, browning: 0.5, underside: true, startValue: 771,
-  }));
+  layTwig(
+    plate,
+    smoothLine(
+      [
+        { x: 866, y: 826 },
+        { x: 858, y: 780 },
+        { x: 864, y: 728 },
+      ],
+      10,
+    ),
+    4.6,
+    3.6,
+  );
+  lay(
+    plate,
+    leafPiece({
+      x: 864,
+      y: 736,
+      angle: tip,
+      length: 590,
+      breadth: 188,
+      bend: 0.03,
+      widestAt: 0.55,
+      veinPairs: 6,
+      teeth: 0,
+      toothDepth: 0,
+      lobeDepth: 0.4,
+      browning: 0.5,
+      underside: true,
+      startValue: 771,
+    }),
+  );
   lay(plate, tapePiece({ x: 862, y: 778, length: 66, width: 15, angle: -0.12, startValue: 8 }));
   lay(plate, tapePiece({ x: 922, y: 172, length: 60, width: 15, angle: 0.25, startValue: 9 }));
 }
@@ -84,7 +127,16 @@ export function layLobedLeaf(plate: Plate): void {
 /** Specimen c: a frond with paired leaflets. */
 export function layFrond(plate: Plate): void {
   const random = randomFrom(2718);
-  const rachis = smoothLine([{ x: 1180, y: 792 }, { x: 1236, y: 640 }, { x: 1300, y: 450 }, { x: 1336, y: 270 }, { x: 1332, y: 148 }], 24);
+  const rachis = smoothLine(
+    [
+      { x: 1180, y: 792 },
+      { x: 1236, y: 640 },
+      { x: 1300, y: 450 },
+      { x: 1336, y: 270 },
+      { x: 1332, y: 148 },
+    ],
+    24,
+  );
   const pairs = 17;
   for (let pair = 0; pair < pairs; pair += 1) {
     for (const side of [-1, 1]) {
@@ -93,7 +145,19 @@ export function layFrond(plate: Plate): void {
       const length = 168 * Math.sin(Math.PI * (0.16 + 0.8 * (1 - share) ** 0.8)) ** 1.1 * random.between(0.93, 1.05) + 8;
       const angle = node.angle + side * (1.22 - 0.45 * share + random.between(-0.05, 0.05));
       const leaflet = serrateLeaf(random, { x: node.x, y: node.y, angle }, length);
-      lay(plate, leafPiece({ ...leaflet, breadth: length * 0.1 + 2.5, widestAt: 0.3, veinPairs: 9, teeth: 2, toothDepth: 0.12, bend: -0.05 * side, browning: random.between(0.1, 0.4) }));
+      lay(
+        plate,
+        leafPiece({
+          ...leaflet,
+          breadth: length * 0.1 + 2.5,
+          widestAt: 0.3,
+          veinPairs: 9,
+          teeth: 2,
+          toothDepth: 0.12,
+          bend: -0.05 * side,
+          browning: random.between(0.1, 0.4),
+        }),
+      );
     }
   }
   const end = onLine(rachis, 1);
