@@ -4,17 +4,28 @@ import { sampleFacts } from "./samples.js";
 import { smallestWeight } from "./weights.js";
 
 /**
+ * Output units per working unit: |gain| · full ÷ workingFull for colours. Alpha is not touched by gain: where it is filtered, its own scale
+ * (the output's full value for an opaque image) counts if it is larger.
+ */
+export function outputScale(problem: Problem): number {
+  const { request, analysis, workingFull } = problem;
+  const colour = (Math.abs(request.output.gain) * sampleFacts[request.sample].full) / workingFull;
+  const opaque = sampleFacts[request.output.sample].full / workingFull;
+  if (request.alpha === "straight") return Math.max(colour, opaque / Math.abs(analysis.sum));
+  return request.alpha === "premultiplied" ? Math.max(colour, opaque) : colour;
+}
+
+/**
  * From the error of a method among working floats to the contract's bound in output units:
  *
- *     bound = (|gain| · full ÷ workingFull) · error ÷ (smallest inside weight ÷ Σh)  +  roundings on the way in and out
+ *     bound = outputScale · error ÷ (smallest inside weight ÷ Σh)  +  roundings on the way in and out
  *
  * @param error largest error of h∗x among working floats, for |x| ≤ workingFull
  */
 export function outputBound(problem: Problem, error: number): number {
-  const { request, analysis, workingFull } = problem;
-  const scale = (Math.abs(request.output.gain) * sampleFacts[request.sample].full) / workingFull;
-  const largest = analysis.absoluteSum * workingFull;
-  return scale * weighted(problem, error + conversionRoundings(problem) * unitRoundoff * largest) + Math.abs(request.output.offset) * unitRoundoff;
+  const largest = problem.analysis.absoluteSum * problem.workingFull;
+  const all = weighted(problem, error + conversionRoundings(problem) * unitRoundoff * largest);
+  return outputScale(problem) * all + Math.abs(problem.request.output.offset) * unitRoundoff;
 }
 
 /** Error that the alpha of an opaque image may show: where h∗a is that close to Σh, it is Σh. In working units. */

@@ -1,11 +1,10 @@
 import * as field from "../generated/record.js";
 import { absoluteSum, type SeparableTerm } from "../math/separation.js";
-import { outputBound, sumError } from "./accuracy.js";
+import { integerResults, outputBound, outputScale, sumError } from "./accuracy.js";
 import { mostTerms } from "./analysis.js";
 import { frameCounts, frameOf, programOf, type Frame } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { inCorrelationOrder, type Problem } from "./problem.js";
-import { sampleFacts } from "./samples.js";
 import { blocksOf, ringTable, sweepCalls, sweepStagedRows, sweepSteps } from "./sweeps.js";
 
 /** Row results in one ring a term, then columns: r·(m + n) multiply–adds a sample for a sum of r separable terms. */
@@ -22,8 +21,7 @@ interface SeparableFrame extends Frame {
 
 /** Σ|taps left out| that the caller's tolerance allows, and that double precision leaves anyway (0). */
 function allowedResidual(problem: Problem): number {
-  const { output, tolerance, sample } = problem.request;
-  return tolerance / Math.max(Number.MIN_VALUE, Math.abs(output.gain) * sampleFacts[sample].full);
+  return problem.request.tolerance / Math.max(1e-300, outputScale(problem) * problem.workingFull);
 }
 
 /** The fewest terms whose residual is allowed, or nothing. An all-zero kernel takes one term of zeros. */
@@ -69,6 +67,9 @@ function error(problem: Problem): number {
   return sumError(problem, roundings, weight) + dropped * problem.workingFull;
 }
 
+/** Several terms seldom consist of integers: where the results must, what the terms added is taken away again. */
+const roundable = (problem: Problem): boolean => termsOf(problem).length > 1 && integerResults(problem) && error(problem) < 0.5;
+
 /** Vectors of all terms, one after the other, in correlation order. */
 function stacked(problem: Problem, part: "row" | "column"): Float32Array<ArrayBuffer> {
   return Float32Array.from(termsOf(problem).flatMap((term) => Array.from(inCorrelationOrder(problem, term[part]))));
@@ -80,7 +81,7 @@ export const separable: MethodPlan = {
   applicable(problem) {
     if (termsNeeded(problem) !== undefined) return true;
     const { residuals } = problem.analysis.separation();
-    const left = (residuals.at(-1)! * Math.abs(problem.request.output.gain) * sampleFacts[problem.request.sample].full).toPrecision(2);
+    const left = (residuals.at(-1)! * outputScale(problem) * problem.workingFull).toPrecision(2);
     return `The taps are no sum of at most ${Math.min(mostTerms, residuals.length - 1)} separable terms: ${left} levels would be left out, the tolerance is ${problem.request.tolerance}.`;
   },
 
@@ -106,7 +107,7 @@ export const separable: MethodPlan = {
 
   arithmetic(problem) {
     const terms = termsOf(problem).length;
-    return `float32 sums along rows, then down columns, ${terms} ${terms === 1 ? "term" : "terms"}`;
+    return `float32 sums along rows, then down columns, ${terms} ${terms === 1 ? "term" : "terms"}${roundable(problem) ? ", rounded to the exact integers" : ""}`;
   },
 
   terms: (problem) => termsOf(problem).length,
@@ -144,7 +145,7 @@ export const separable: MethodPlan = {
       setup: [],
       steps: sweepSteps(problem, layout, "sweepSeparable"),
       error: error(problem),
-      round: false,
+      round: roundable(problem),
     });
   },
 };
