@@ -21,10 +21,10 @@ describe("results", () => {
   });
 
   test.each<[SampleType, object]>([
-    ["u8", Uint8Array],
+    ["u8", Uint8ClampedArray],
     ["u16", Uint16Array],
     ["f32", Float32Array],
-  ])("are of the type that output asks for: %s", (sample, array) => {
+  ])("are of the type that output asks for, bytes of the one that ImageData takes: %s", (sample, array) => {
     expect(engine.convolve(noiseImage("u16", 5, 4), smoothing, { output: { sample } }).data.constructor).toBe(array);
   });
 

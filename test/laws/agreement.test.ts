@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import type { ConvolveOptions, SampleType } from "../../src/index.js";
 import { kernelsOfEveryKind } from "../support/kernels.js";
-import { largestDifference, ways } from "../support/methods.js";
+import { firstDifference, largestDifference, ways } from "../support/methods.js";
 import { noiseImage } from "../support/noise.js";
 import type { Question } from "../support/questions.js";
 
@@ -34,7 +34,7 @@ describe.each(samples)("%s", (sample) => {
       const all = ways(question);
       for (const simd of all.filter(({ build }) => build === "simd")) {
         const scalar = all.find(({ build, method }) => build === "scalar" && method === simd.method);
-        expect(scalar?.answer(question), simd.method).toEqual(simd.answer(question));
+        expect(firstDifference(scalar!.answer(question), simd.answer(question)), simd.method).toBeUndefined();
         expect(scalar?.errorBound, simd.method).toBe(simd.errorBound);
       }
     }

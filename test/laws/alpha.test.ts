@@ -2,7 +2,7 @@ import { describe, expect, test } from "vitest";
 import { binomial, kernel } from "../../src/kernels/index.js";
 import type { Channels, Raster, SampleType, Samples } from "../../src/index.js";
 import { kernelsOfEveryKind } from "../support/kernels.js";
-import { promiseOf, ways } from "../support/methods.js";
+import { firstDifference, promiseOf, ways } from "../support/methods.js";
 import { noise, noiseImage } from "../support/noise.js";
 import type { Question } from "../support/questions.js";
 
@@ -36,8 +36,9 @@ describe.each(types)("%s", (sample, full) => {
         });
         for (const way of ways(ask(() => 0))) {
           const black = way.answer(ask(() => 0));
-          expect(way.answer(ask((value) => value)), `${way.build} ${way.method}`).toEqual(black);
-          expect(way.answer(ask(() => full)), `${way.build} ${way.method}`).toEqual(black);
+          for (const hidden of [(value: number) => value, () => full]) {
+            expect(firstDifference(way.answer(ask(hidden)), black), `${way.build} ${way.method}`).toBeUndefined();
+          }
         }
       }
     }

@@ -2,7 +2,7 @@ import { describe, expect, test } from "vitest";
 import type { Border, Raster } from "../../src/index.js";
 import { kernel, outer, reversed } from "../../src/kernels/index.js";
 import { noiseKernel, kernelsOfEveryKind } from "../support/kernels.js";
-import { absoluteSum, promiseOf, largestDifference, ways, type Way } from "../support/methods.js";
+import { absoluteSum, firstDifference, promiseOf, largestDifference, ways, type Way } from "../support/methods.js";
 import { noiseImage } from "../support/noise.js";
 import type { Question } from "../support/questions.js";
 
@@ -52,7 +52,7 @@ test.each(kernelsOfEveryKind)("correlation is convolution with the kernel turned
     const correlated: Question = { image, kernel: taps, options: { border }, correlate: true };
     const convolved: Question = { image, kernel: reversed(taps), options: { border } };
     for (const way of ways(correlated)) {
-      expect(way.answer(correlated), `${way.build} ${way.method}`).toEqual(way.answer(convolved));
+      expect(firstDifference(way.answer(correlated), way.answer(convolved)), `${way.build} ${way.method}`).toBeUndefined();
     }
   }
 });

@@ -1,12 +1,12 @@
 import { expect, test } from "vitest";
 import { delta, kernel } from "../../src/kernels/index.js";
-import { ways } from "../support/methods.js";
+import { firstDifference, ways } from "../support/methods.js";
 import type { Question } from "../support/questions.js";
 
 test("all 256 codes survive linear light", () => {
   const image = { data: Uint8Array.from({ length: 256 }, (_, code) => code), width: 16, height: 16, channels: 1 as const };
   const question: Question = { image, kernel: delta(), options: { light: "linear" } };
-  for (const way of ways(question)) expect(way.answer(question), `${way.build} ${way.method}`).toEqual(image.data);
+  for (const way of ways(question)) expect(firstDifference(way.answer(question), image.data), `${way.build} ${way.method}`).toBeUndefined();
 });
 
 test("all 65,536 codes survive linear light", () => {
@@ -15,7 +15,7 @@ test("all 65,536 codes survive linear light", () => {
   for (const way of ways(question)) {
     // The transform's rounding is larger than a level where the curve is steepest (12.92 near black): its own bound says so.
     if (12.92 * way.errorBound >= 0.5) continue;
-    expect(way.answer(question), `${way.build} ${way.method}`).toEqual(image.data);
+    expect(firstDifference(way.answer(question), image.data), `${way.build} ${way.method}`).toBeUndefined();
   }
 });
 

@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import type { ConvolveOptions, Extent, Region, Samples } from "../../src/index.js";
 import { kernelsOfEveryKind } from "../support/kernels.js";
-import { largestDifference, ways } from "../support/methods.js";
+import { firstDifference, largestDifference, ways } from "../support/methods.js";
 import { noiseImage } from "../support/noise.js";
 import type { Question } from "../support/questions.js";
 
@@ -40,7 +40,7 @@ describe.each(extents)("extent %s", (extent, width, height) => {
           const part = way.answer({ ...question, options: { ...options, region } });
           const crop = cropped(whole, resultWidth, channels, region);
           const name = `${way.build} ${way.method} ${sample} ${JSON.stringify(region)}`;
-          if (way.method !== "fft") expect(Array.from(part), name).toEqual(crop);
+          if (way.method !== "fft") expect(firstDifference(part, crop), name).toBeUndefined();
           else if (channels !== 4) expect(largestDifference(part, crop), name).toBeLessThanOrEqual(2 * way.errorBound + (sample === "f32" ? 0 : 1));
         }
       }

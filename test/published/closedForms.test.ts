@@ -190,7 +190,9 @@ describe("Laplacian stencils on polynomials", () => {
     expect(mask.sum).toBe(0);
     const flat = { data: new Uint8Array(15 * 12).fill(255), width: 15, height: 12, channels: 1 as const };
     for (const answer of engineAnswers({ image: flat, kernel: mask, options: { output: { sample: "f32" } } })) {
-      expect(difference({ ...answer, errorBound: 0 }, new Float64Array(15 * 12))).toBeUndefined();
+      // Several separable terms sum to 0 only within their bound.
+      const errorBound = answer.terms === 1 ? 0 : answer.errorBound;
+      expect(difference({ ...answer, errorBound }, new Float64Array(15 * 12))).toBeUndefined();
     }
   });
 });

@@ -59,7 +59,7 @@ function allowedRange(setting: Setting, defined: Defined, index: number, errorBo
   const full = fullValue[setting.input];
   const exact = defined.exact[index]!;
   // Contributions below 2⁻¹⁰⁰ of full value may be left out.
-  const leftOut = kernel.width * kernel.height * 2 ** -100 * full;
+  const leftOut = kernel.width * kernel.height * 2 ** -100 * full * Math.max(1, defined.shares[index]!);
   const bound = errorBound * defined.magnitude + leftOut * Math.abs(gain);
   const plain = alpha === "none" || alpha === "keep";
   if (alpha === "keep" && channel === channels - 1) {

@@ -18,6 +18,8 @@ export interface Defined {
   exact: Float64Array;
   /** Results as they are written. */
   written: Float64Array;
+  /** By what each result's sum was multiplied, as a part of the kernel's weight lay outside: Σh / the weight inside, 1 elsewhere. */
+  shares: Float64Array;
   /** 1 where the result depends on a sample that is not finite: such a result may be anything. */
   touched: Uint8Array;
   /** Largest magnitude of the values that are filtered, over the input's full value, at least 1. */
@@ -196,6 +198,7 @@ export function define(image: Raster, kernel: Taps, options: ConvolveOptions = {
     exact: new Float64Array(count),
     written: new Float64Array(count),
     touched: new Uint8Array(count),
+    shares: new Float64Array(count).fill(1),
     magnitude: magnitudeOf(around, fullValue[setting.input]),
   };
   for (let r = 0; r < result.height; r++) {
@@ -239,6 +242,7 @@ function definePixel(setting: Setting, around: Surroundings, defined: Defined, r
     defined.exact[index] = exact[channel]!;
     defined.written[index] = written(exact[channel]!, setting.output);
     defined.touched[index] = touched[channel] ? 1 : 0;
+    if (!everything) defined.shares[index] = weightInside === 0 ? 0 : setting.sum / weightInside;
   }
 }
 

@@ -10,7 +10,7 @@ const side = fc.oneof(fc.constantFrom(1, 2, 3, 4, 5, 7, 8, 9, 15, 16, 17), fc.in
 const kernelSide = fc.oneof({ weight: 4, arbitrary: fc.integer({ min: 1, max: 7 }) }, { weight: 1, arbitrary: fc.integer({ min: 8, max: 40 }) });
 const fraction = fc.integer({ min: 0, max: 16 }).map((sixteenths) => sixteenths / 16);
 
-const kernelKinds = ["signed", "positive", "integer", "separable", "two-terms", "constant", "zero", "impulse", "denormal", "sparse"] as const;
+const kernelKinds = ["signed", "positive", "integer", "separable", "two-terms", "constant", "zero", "impulse", "denormal", "tails", "sparse"] as const;
 type KernelKind = (typeof kernelKinds)[number];
 const imageKinds = ["noise", "noise", "extremes", "sparse", "opaque", "beyond", "not-finite"] as const;
 type ImageKind = (typeof imageKinds)[number];
@@ -74,7 +74,7 @@ export function posed(made: Recipe): Question {
   const alpha = alphaOf(made, taps);
   if (alpha !== undefined) options.alpha = alpha;
   if (made.light !== undefined) options.light = made.light;
-  const output = outputOf(made);
+  const output = outputOf(alpha === "none" || made.channels % 2 === 1 || made.gain !== 0 ? made : { ...made, gain: 0.001 });
   if (Object.keys(output).length > 0) options.output = output;
   if (made.tolerance !== undefined) options.tolerance = made.tolerance;
   const region = regionOf(made, extent);
@@ -111,6 +111,8 @@ function tapsOf({ kernelKind, m, n, seed }: Recipe): number[] {
       return list(m * n, () => 0).with(seed % (m * n), seed % 2 === 0 ? 1 : -0.75);
     case "denormal":
       return list(m * n, () => signed() * (next() < 0.5 ? 1e-40 : next() < 0.5 ? 1e-310 : 0.2));
+    case "tails":
+      return list(m * n, () => 10 ** (-30 * next()));
     case "sparse":
       return list(m * n, () => (next() < 0.85 ? 0 : signed()));
   }

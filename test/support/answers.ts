@@ -7,13 +7,15 @@ export interface Applicable {
   method: Method;
   errorBound: number;
   arithmetic: string;
+  /** Separable terms that are summed. */
+  terms: number;
 }
 
 /** The methods that apply to a question, with their bounds, as one build explains them. */
 export function applicable(build: Build, { image, kernel, options = {}, correlate = false }: Question): Applicable[] {
   const { candidates } = engines[build].explain(kernel, layoutOf(image), { ...options, correlate });
-  return candidates.flatMap(({ method, refused, errorBound, arithmetic }) =>
-    refused === undefined ? [{ method, errorBound: errorBound!, arithmetic: arithmetic! }] : [],
+  return candidates.flatMap(({ method, refused, errorBound, arithmetic, terms = 1 }) =>
+    refused === undefined ? [{ method, errorBound: errorBound!, arithmetic: arithmetic!, terms }] : [],
   );
 }
 
@@ -27,7 +29,7 @@ export function run(build: Build, question: Question, method: Method | "auto" = 
 /** The answers of every applicable method of every build. */
 export function engineAnswers(question: Question): Answer[] {
   return builds.flatMap((build) =>
-    applicable(build, question).map(({ method, errorBound }) => ({ from: `${build} ${method}`, ...run(build, question, method), errorBound })),
+    applicable(build, question).map(({ method, errorBound, terms }) => ({ from: `${build} ${method}`, ...run(build, question, method), errorBound, terms })),
   );
 }
 

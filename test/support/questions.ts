@@ -20,6 +20,8 @@ export interface Answer {
   channels: number;
   /** What the answer may be off, before rounding, in units of the output. */
   errorBound: number;
+  /** Separable terms that were summed; 1 for every other method. */
+  terms?: number;
 }
 
 /** The definition's answer, floats in double precision. */
