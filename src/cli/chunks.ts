@@ -13,7 +13,7 @@ export interface Chunk {
 }
 
 /** Source: PNG (Third Edition), §5.2. */
-export const signature = Uint8Array.of(137, 80, 78, 71, 13, 10, 26, 10);
+const signature = Uint8Array.of(137, 80, 78, 71, 13, 10, 26, 10);
 
 /** Bytes around the data of a chunk: length, type and checksum. */
 const frameByteLength = 12;

@@ -19,7 +19,7 @@ export async function explainPlan(input: string | undefined, options: ExplainArg
     const explanation = engine.explain(kernel, layout, prepareOptionsOf(options));
     const { width, height, origin, sum } = kernel;
     const heading = `Kernel ${width}×${height}, origin (${origin.x}, ${origin.y}), sum ${Number(sum.toPrecision(12))}, on ${layout.width}×${layout.height} ${formName(layout)}`;
-    return { text: `${heading}\n\n${String(explanation).trimEnd()}\n`, notes: [], data: { kernel: { width, height, origin, sum }, layout, explanation } };
+    return { text: `${heading}\n\n${String(explanation).trimEnd()}\n`, notes: [], data: { ...explanation, kernel: { width, height, origin, sum }, layout } };
   } finally {
     engine.dispose();
   }

@@ -25,7 +25,7 @@ export async function filterFile(input: string, output: string, options: FilterA
   return {
     text: lineOf(output, `${width}×${height} ${formName({ channels, sample })}`, explanation, measured),
     notes,
-    data: { input, output, width, height, channels, sample, build, milliseconds: measured, explanation, notes },
+    data: { input, output, width, height, channels, sample, build, method: explanation.method, milliseconds: measured, explanation, notes },
   };
 }
 

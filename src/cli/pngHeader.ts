@@ -20,7 +20,7 @@ const depthsOfColorType: Readonly<Record<number, readonly number[]>> = {
 export const pixelLimit = 2 ** 27;
 
 /** The decoder counts the bits of a row in 32-bit integers; a row of this many pixels stays below 2³¹ bits at 64 bits a pixel. */
-export const columnLimit = 2 ** 24;
+const columnLimit = 2 ** 24;
 
 /** Deflate shrinks by 1032 at most: a block of 258 equal bytes takes two bits (Deutsch, RFC 1951, §3.2.5). */
 const largestCompression = 1032;

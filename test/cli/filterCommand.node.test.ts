@@ -174,6 +174,7 @@ describe("what filter says", () => {
       notes: [expect.stringContaining("gAMA")],
     });
     expect(report.explanation.candidates.map(({ method }: { method: string }) => method)).toContain(report.explanation.method);
+    expect(report.method).toBe(report.explanation.method);
     expect(report.milliseconds.run).toBeGreaterThan(0);
   });
 });
