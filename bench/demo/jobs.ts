@@ -27,8 +27,8 @@ export interface Family {
   kernelOf(value: number): Kernel;
 }
 
-/** Standard deviation of the second job's Gaussian, in pixels. */
-export const gaussianSigma = 3;
+/** Standard deviation of the second job's Gaussian in pixels: 21 × 21 taps, wide for direct and not yet wide enough for the FFT. */
+export const gaussianSigma = 2.5;
 
 /** The three jobs: few taps, many taps that are an outer product, many taps that are not. */
 export function threeJobs(): Job[] {
@@ -45,7 +45,7 @@ export function threeJobs(): Job[] {
     {
       file: "softened",
       title: "Calm the paper",
-      purpose: "A Gaussian three pixels wide takes the paper's grain away before the area of the leaves is counted.",
+      purpose: "A Gaussian takes the paper's grain away before the area of the leaves is counted.",
       kernelName: `Gaussian, σ = ${gaussianSigma}`,
       kernel: gaussian(gaussianSigma),
       options: {},

@@ -8,7 +8,7 @@ export function narrate(outcome: Outcome, agreements: readonly Agreement[], asid
   const surprise = explanation.method === job.madeFor ? "" : `\n  The job is made for ${job.madeFor}; here the engine saw it otherwise.`;
   return [
     `${job.title}: ${job.kernelName}, ${job.kernel.width} × ${job.kernel.height} taps`,
-    `  Chosen: ${explanation.method}. ${explanation.because}${surprise}`,
+    `  Chosen: ${explanation.because}${surprise}`,
     ...outcome.methods.map(methodLine(explanation.method)),
     `  The choice was ${verdictOf(outcome)}.`,
     ...agreements.map(agreementLine),

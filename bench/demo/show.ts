@@ -29,7 +29,9 @@ export async function show(engine: Engine, image: DemoImage, folder: string, tel
     tell(narrate(outcome, agreements, aside));
     outcomes.push({ outcome, agreements, ...(aside !== undefined && { aside }) });
   }
-  const page = reportPage(engine, { image: raster, imageName: name, outcomes, machine: thisMachine(), ...(image.places && { places: image.places }) });
+  const machine = thisMachine();
+  if (machine.busy !== undefined) tell(`${machine.busy}\n`);
+  const page = reportPage(engine, { image: raster, imageName: name, outcomes, machine, ...(image.places && { places: image.places }) });
   const files: [string, Uint8Array][] = [
     ["before.png", encodePng(raster, [])],
     ...outcomes.map(({ outcome }): [string, Uint8Array] => [`${outcome.job.file}.png`, encodePng(outcome.result, [])]),

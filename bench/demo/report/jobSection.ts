@@ -7,12 +7,11 @@ import { escaped, table, type Cell } from "./markup.js";
 /** One job: why that method, the kernel, crops before and after, times of every method, how far the methods differ. */
 export function jobSection(outcome: Outcome, agreements: readonly Agreement[], pairs: string, aside?: string): string {
   const { job, explanation } = outcome;
-  const terms = explanation.terms === undefined ? "" : `, ${explanation.terms} ${explanation.terms === 1 ? "term" : "terms"}`;
   return `<section id="${job.file}">
 <div class="job"><div>
 <h2>${escaped(job.title)}</h2>
 <p>${escaped(job.purpose)}</p>
-<p class="because">Chosen: <b>${explanation.method}</b>${terms} (${escaped(explanation.arithmetic)}). ${escaped(explanation.because)}</p>
+<p class="because">${chosenAndWhy(explanation)} <small>In ${escaped(explanation.arithmetic)}.</small></p>
 ${aside === undefined ? "" : `<p>${escaped(aside)}</p>`}
 ${timeTable(outcome)}
 ${agreementTable(job.file, agreements)}
@@ -22,22 +21,32 @@ ${agreementTable(job.file, agreements)}
 </section>`;
 }
 
+/** The engine's reason, with the method's name in bold where the sentence begins with it, else before it. */
+function chosenAndWhy({ method, because }: Outcome["explanation"]): string {
+  const reason = because.startsWith(method) ? because.slice(method.length) : `: ${because}`;
+  return `Chosen: <b>${method}</b>${escaped(reason)}`;
+}
+
 function timeTable({ job, explanation, methods }: Outcome): string {
   const rows = methods.flatMap(({ candidate, timing }): Cell[][] => {
     if (timing === undefined) return [];
     const predicted = candidate.milliseconds ?? NaN;
-    const band = timing.rowsMeasured === undefined ? "" : `, in proportion from ${timing.rowsMeasured} rows`;
     return [
       [
         { heading: candidate.method === explanation.method ? `<b class="chosen">${candidate.method}</b>` : candidate.method },
         { figure: duration(predicted) },
         { figure: duration(timing.median) },
         { figure: percent(timing.median / predicted - 1) },
-        { figure: `${duration(timing.shortest)} – ${duration(timing.longest)}, ${timing.runs} runs${band}` },
+        { figure: `${duration(timing.shortest)} – ${duration(timing.longest)}, ${timing.runs} runs` },
         { figure: byteCount(candidate.bytes ?? 0) },
       ],
     ];
   });
+  const bands = methods.flatMap(({ timing }) =>
+    timing?.rowsMeasured === undefined
+      ? []
+      : [`<p class="title">${timing.method} was timed over the first ${timing.rowsMeasured} rows; its times are for all rows, in proportion.</p>`],
+  );
   const refused = methods.flatMap(({ candidate, timing }) =>
     timing === undefined ? [`<li><b>${candidate.method}</b>: ${escaped(candidate.refused ?? "")}</li>`] : [],
   );

@@ -10,7 +10,7 @@ const widestInNumbers = 7;
 export function kernelFigure(kernel: Kernel, name: string): string {
   const shown = kernel.width <= widestInNumbers ? tapTable(kernel, name) : greyMap(kernel, name);
   const scaleNote = kernel.width <= widestInNumbers ? "" : " Grey is the square root of the tap, so that faint taps show.";
-  return `<figure class="kernel">${shown}<figcaption>${escaped(name)}: ${kernel.width} × ${kernel.height} taps, sum ${small(kernel.sum)}.${scaleNote}</figcaption></figure>`;
+  return `<figure class="kernel">${shown}<figcaption>${escaped(name.charAt(0).toUpperCase() + name.slice(1))}: ${kernel.width} × ${kernel.height} taps, sum ${small(kernel.sum)}.${scaleNote}</figcaption></figure>`;
 }
 
 /** Positive taps in one colour, negative ones in the other, stronger for larger ones; the numbers say it too. */

@@ -111,5 +111,5 @@ function machineList({ machine, outcomes, image }: Findings): string {
     ["Image", `${image.width} × ${image.height}, ${layout.channels} channels of ${layout.sample}`],
     ["Date", machine.date],
   ];
-  return `<dl>${facts.map(([term, text]) => `<dt>${term}</dt><dd>${escaped(text)}</dd>`).join("")}</dl>`;
+  return `<dl>${facts.map(([term, text]) => `<dt>${term}</dt><dd>${escaped(text)}</dd>`).join("")}</dl>${machine.busy === undefined ? "" : `<p>${escaped(machine.busy)}</p>`}`;
 }

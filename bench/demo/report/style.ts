@@ -19,6 +19,7 @@ p { margin: 0.5rem 0; max-width: 44rem; }
 .lead { font-size: 1.1rem; color: var(--soft); }
 section { border-top: 1px solid var(--rule); padding-block: 1.8rem 1rem; }
 .because { background: var(--wash); border-left: 4px solid var(--accent); padding: 0.7rem 0.9rem; border-radius: 0 6px 6px 0; max-width: 44rem; }
+.because small { display: block; color: var(--soft); font-size: 0.88rem; margin-top: 0.2rem; }
 .because b, b.chosen { color: var(--accent); }
 figure { margin: 1rem 0; }
 figcaption { color: var(--soft); font-size: 0.9rem; margin-top: 0.4rem; max-width: 44rem; }
