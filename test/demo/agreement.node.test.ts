@@ -13,7 +13,7 @@ describe("a job of the demo", () => {
   beforeAll(async () => {
     engine = await createEngine();
     outcome = perform(engine, threeJobs()[0], image, layout);
-  });
+  }, 60_000);
   afterAll(() => engine.dispose());
 
   it("times every method that applies and none that is refused", () => {

@@ -38,7 +38,7 @@ describe("the demo's report", () => {
     told = lines.join("\n");
     html = await readFile(join(folder, "report.html"), "utf8");
     document = parseHTML(html).document as unknown as Document;
-  });
+  }, 60_000);
 
   it("needs nothing from outside: no address but data and places on the page", () => {
     const addresses = [...document.querySelectorAll("[src], [href]")].map((element) => element.getAttribute("src") ?? element.getAttribute("href") ?? "");

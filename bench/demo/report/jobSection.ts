@@ -57,7 +57,9 @@ function timeTable({ job, explanation, methods }: Outcome): string {
       "One run over the whole image, by every method that applies",
       ["Method", "Predicted", "Measured", "Off by", "Shortest – longest", "Memory"],
       rows,
-    ) + refusals
+    ) +
+    bands.join("") +
+    refusals
   );
 }
 

@@ -78,7 +78,7 @@ footer { border-top: 1px solid var(--rule); padding-block: 1rem 2.5rem; color: v
   section { break-inside: auto; } figure, tr, .pair, .because, .chart { break-inside: avoid; } h2, h3, .title { break-after: avoid; }
   .scroll { overflow: visible; } .pairs { grid-template-columns: repeat(3, minmax(0, 1fr)); gap: 3mm; } .pair figure { width: auto; } img.crop { max-width: 100%; }
   h1 { font-size: 20pt; } h2 { font-size: 14pt; } .glance { grid-template-columns: 92mm minmax(0, 1fr); } .short { margin: 0 0 4mm; } section { padding-block: 5mm 2mm; }
-  .kernel { width: 40mm; } .job { grid-template-columns: minmax(0, 1fr) 40mm; gap: 0 5mm; } th, td { padding-right: 0.4rem; } .job > .kernel { grid-column: 2; grid-row: 1; } table, .title, .refused, figcaption, dl { font-size: 8.5pt; } .chart svg { width: 100%; max-height: 100mm; } table.taps td { height: 11mm; }
+  .kernel { width: 40mm; } .job { grid-template-columns: minmax(0, 1fr) 40mm; gap: 0 5mm; } th, td { padding-right: 0.4rem; } .job > .kernel { grid-column: 2; grid-row: 1; } table, .title, .refused, figcaption, dl, .scale, .because small, footer { font-size: 8.5pt; } .chart svg { width: 100%; max-height: 100mm; } table.taps td { height: 11mm; }
   .chart.wide { display: block; } .chart.narrow { display: none; }
 }
 `;
