@@ -53,8 +53,8 @@ async function filterImage(source: SourceImage, kernel: Awaited<ReturnType<typeo
 function lineOf(output: string, form: string, explanation: Explanation, measured: { prepare: number; run: number; total: number }): string {
   const { method, terms, milliseconds } = explanation;
   const how = terms !== undefined && terms > 1 ? `${method} with ${terms} terms` : method;
-  const times = `${asMilliseconds(measured.run)} (predicted ${asMilliseconds(milliseconds)}), ${asMilliseconds(measured.total)} with preparing, reading and writing`;
-  return `${output}: ${form}, filtered by ${how} in ${times}.\n`;
+  const times = `${asMilliseconds(measured.run)} for this first run (${asMilliseconds(milliseconds)} predicted once warm), ${asMilliseconds(measured.total)} in all`;
+  return `${output}: ${form}, filtered by ${how}; ${times}.\n`;
 }
 
 /** A change of depth leaves the numbers as they are, which is seldom what a newcomer expects. */
