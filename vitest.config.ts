@@ -8,7 +8,7 @@ const nodeOnly = "test/**/*.node.test.ts";
 const browserOnly = "test/**/*.browser.test.ts";
 
 const node = {
-  test: { name: "node", include: ["test/**/*.test.ts"], exclude: [browserOnly, "test/pages/**", "test/package/**"], testTimeout: 60_000 },
+  test: { name: "node", include: ["test/**/*.test.ts"], exclude: [browserOnly, "test/pages/**", "test/package/**"], testTimeout: 300_000 },
 };
 
 /** The tarball, checked and used from an empty folder: part of `npm run check`. */
@@ -23,7 +23,7 @@ function browserProjects(executablePath: string) {
       name: "browser",
       include: [...shared, browserOnly],
       exclude: [nodeOnly],
-      testTimeout: 120_000,
+      testTimeout: 300_000,
       browser: {
         enabled: true,
         headless: true,

@@ -8,7 +8,7 @@ import type { Snippet } from "./snippets.js";
 const context: Record<string, string> = {
   engine: "const engine = await createEngine();",
   image: "const image = { data: Uint8ClampedArray.from({ length: 64 * 48 * 4 }, (_, k) => (k * 37) % 256), width: 64, height: 48 };",
-  photo: "const photo = { data: Uint8ClampedArray.from({ length: 64 * 48 * 4 }, (_, k) => (k * 29) % 256), width: 64, height: 48 };",
+  photo: "const photo = Uint8ClampedArray.from({ length: 640 * 480 * 4 }, (_, k) => (k * 29) % 256);",
   report: "const report = (...values: unknown[]): unknown[] => values;",
 };
 
