@@ -93,8 +93,8 @@ export const images: Pick<Record<ErrorCode, ErrorCase[]>, "invalid-raster" | "un
     ...[-6, 6.5, Number.NaN].map((stride): ErrorCase => ({ title: `stride ${stride}`, act: filterImage({ stride }), says: ["stride", String(stride)] })),
     { title: "a target with too few samples", act: target({ data: new Uint8Array(20) }), says: ["20", "30"] },
     { title: "no target but a number", act: ({ filter, image }) => filter().run(image, untyped<Raster>(5)) },
-    { title: "no image at all", act: ({ engine, kernel: taps }) => engine.convolve(untyped(undefined), taps) },
-    { title: "a number in place of an image", act: ({ engine, kernel: taps }) => engine.convolve(untyped(5), taps) },
+    { title: "no image at all", act: ({ engine, kernel: taps }) => engine.convolve(untyped<Raster>(undefined), taps) },
+    { title: "a number in place of an image", act: ({ engine, kernel: taps }) => engine.convolve(untyped<Raster>(5), taps) },
   ],
   "unsupported-samples": [
     { title: "doubles", act: filterImage({ data: new Float64Array(30) }), says: ["Float64Array"] },

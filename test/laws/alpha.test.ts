@@ -45,6 +45,11 @@ describe.each(types)("%s", (sample, full) => {
   });
 });
 
+/** Pixels of four channels. */
+function pixels(data: Samples): number[][] {
+  return Array.from({ length: data.length / 4 }, (_, pixel) => Array.from(data.subarray(4 * pixel, 4 * pixel + 4)));
+}
+
 /** By construction from W3C Compositing and Blending Level 1, simple alpha compositing: colour is co / αo. */
 test("an opaque red half-plane beside transparent pixels of any colour stays red", () => {
   const image: Raster<Uint8Array> = { data: new Uint8Array(24 * 10 * 4), width: 24, height: 10, channels: 4 };
@@ -52,10 +57,8 @@ test("an opaque red half-plane beside transparent pixels of any colour stays red
   const question: Question = { image, kernel: binomial(6), options: { alpha: "straight" } };
   for (const way of ways(question)) {
     const result = way.answer(question);
-    for (let pixel = 0; pixel < 240; pixel++) {
-      const [red, green, blue, alpha] = result.subarray(4 * pixel, 4 * pixel + 4);
-      expect([red, green, blue], `${way.build} ${way.method} pixel ${pixel}`).toEqual(alpha! > 0 ? [255, 0, 0] : [0, 0, 0]);
-    }
+    const wrong = pixels(result).filter(([red, green, blue, alpha]) => (alpha! > 0 ? red !== 255 || green !== 0 || blue !== 0 : red! + green! + blue! !== 0));
+    expect(wrong, `${way.build} ${way.method}`).toEqual([]);
   }
 });
 
@@ -101,11 +104,10 @@ test("premultiplied colours are held within alpha after an overshoot", () => {
   for (let index = 0; index < image.data.length; index++) if (index % 4 < 3) image.data[index] = image.data[index]! * image.data[index - (index % 4) + 3]!;
   const question: Question = { image, kernel: sharpen, options: { alpha: "premultiplied" } };
   for (const way of ways(question)) {
-    const result = way.answer(question);
-    for (let index = 0; index < result.length; index++) {
-      if (index % 4 === 3) continue;
-      expect(result[index]!, `${way.build} ${way.method}`).toBeGreaterThanOrEqual(0);
-      expect(result[index]!, `${way.build} ${way.method}`).toBeLessThanOrEqual(Math.max(0, result[index - (index % 4) + 3]!));
-    }
+    const outside = pixels(way.answer(question)).filter(([red, green, blue, alpha]) => {
+      const most = Math.max(0, alpha!);
+      return [red!, green!, blue!].some((colour) => !(colour >= 0 && colour <= most));
+    });
+    expect(outside, `${way.build} ${way.method}`).toEqual([]);
   }
 });
