@@ -5,6 +5,7 @@ import { laneBytes, loadLanes, multiplyAdd, splat, splatFrom, storeLanes } from 
  *
  *     out_k[x] = base_k[x] + Σ_j taps[j] · rows[k + j][x],   0 ≤ j < n, k = 0, 1
  *
+ * with base_k = out_k where `accumulate` (a further term of a sum), else 0.
  * Shapes, units and promises as correlateRows with m = 1.
  */
 export function correlateColumns<V>(out0: usize, out1: usize, rows: usize, taps: usize, n: i32, count: i32, accumulate: bool): void {
@@ -15,8 +16,10 @@ export function correlateColumns<V>(out0: usize, out1: usize, rows: usize, taps:
   for (; x < bytes; x += laneBytes<V>()) columnsVector<V>(out0 + x, out1 + x, rows, x, taps, n, accumulate);
 }
 
+/** Two rows × four vectors of sums: see direct.ts for why the rows between meet two taps each. */
 function columnsBlock<V>(out0: usize, out1: usize, rows: usize, x: usize, taps: usize, n: i32, accumulate: bool): void {
   const vector = laneBytes<V>();
+  const last = rows + (<usize>n << 2);
   let a0 = splat<V>(0), a1 = a0, a2 = a0, a3 = a0;
   let b0 = a0, b1 = a0, b2 = a0, b3 = a0;
   if (accumulate) {
@@ -30,34 +33,35 @@ function columnsBlock<V>(out0: usize, out1: usize, rows: usize, x: usize, taps: 
     b3 = loadLanes<V>(out1 + 3 * vector);
   }
   let p = load<usize>(rows) + x;
-  let x0 = loadLanes<V>(p), x1 = loadLanes<V>(p + vector), x2 = loadLanes<V>(p + 2 * vector), x3 = loadLanes<V>(p + 3 * vector);
-  const end = taps + (<usize>n << 2);
-  while (taps < end) {
-    const h = splatFrom<V>(taps);
+  let h = splatFrom<V>(taps);
+  a0 = multiplyAdd<V>(a0, h, loadLanes<V>(p));
+  a1 = multiplyAdd<V>(a1, h, loadLanes<V>(p + vector));
+  a2 = multiplyAdd<V>(a2, h, loadLanes<V>(p + 2 * vector));
+  a3 = multiplyAdd<V>(a3, h, loadLanes<V>(p + 3 * vector));
+  for (rows += 4, taps += 4; rows < last; rows += 4, taps += 4) {
+    p = load<usize>(rows) + x;
+    const x0 = loadLanes<V>(p), x1 = loadLanes<V>(p + vector), x2 = loadLanes<V>(p + 2 * vector), x3 = loadLanes<V>(p + 3 * vector);
+    h = splatFrom<V>(taps);
     a0 = multiplyAdd<V>(a0, h, x0);
     a1 = multiplyAdd<V>(a1, h, x1);
     a2 = multiplyAdd<V>(a2, h, x2);
     a3 = multiplyAdd<V>(a3, h, x3);
-    rows += 4;
-    taps += 4;
-    p = load<usize>(rows) + x;
-    x0 = loadLanes<V>(p);
-    x1 = loadLanes<V>(p + vector);
-    x2 = loadLanes<V>(p + 2 * vector);
-    x3 = loadLanes<V>(p + 3 * vector);
+    h = splatFrom<V>(taps - 4);
     b0 = multiplyAdd<V>(b0, h, x0);
     b1 = multiplyAdd<V>(b1, h, x1);
     b2 = multiplyAdd<V>(b2, h, x2);
     b3 = multiplyAdd<V>(b3, h, x3);
   }
+  p = load<usize>(last) + x;
+  h = splatFrom<V>(taps - 4);
   storeLanes<V>(out0, a0);
   storeLanes<V>(out0 + vector, a1);
   storeLanes<V>(out0 + 2 * vector, a2);
   storeLanes<V>(out0 + 3 * vector, a3);
-  storeLanes<V>(out1, b0);
-  storeLanes<V>(out1 + vector, b1);
-  storeLanes<V>(out1 + 2 * vector, b2);
-  storeLanes<V>(out1 + 3 * vector, b3);
+  storeLanes<V>(out1, multiplyAdd<V>(b0, h, loadLanes<V>(p)));
+  storeLanes<V>(out1 + vector, multiplyAdd<V>(b1, h, loadLanes<V>(p + vector)));
+  storeLanes<V>(out1 + 2 * vector, multiplyAdd<V>(b2, h, loadLanes<V>(p + 2 * vector)));
+  storeLanes<V>(out1 + 3 * vector, multiplyAdd<V>(b3, h, loadLanes<V>(p + 3 * vector)));
 }
 
 function columnsVector<V>(out0: usize, out1: usize, rows: usize, x: usize, taps: usize, n: i32, accumulate: bool): void {

@@ -1,5 +1,5 @@
 import { correlateColumns } from "./columns";
-import { correlateRows } from "./correlate";
+import { correlateRows } from "./direct";
 import { enterRow } from "./enter";
 import { leaveRow } from "./leave";
 import {
@@ -63,7 +63,7 @@ export function sweepDirect<V>(job: usize, from: i32, to: i32): void {
     for (; next < last; next++) enterRow<V>(job, load<usize>(ringFrom(job, 0, next)), next, stagedRow(job, next, first));
     correlateRows<V>(
       result, result + load<usize>(job, RESULT_STRIDE), ringFrom(job, 0, row), load<usize>(job, TAPS), n,
-      load<i32>(job, KERNEL_COLUMNS), step, load<i32>(job, RESULT_FLOATS), false,
+      load<i32>(job, KERNEL_COLUMNS), step, load<i32>(job, RESULT_FLOATS),
     );
     leavePair<V>(job, row, from, to);
   }
@@ -77,7 +77,7 @@ function rowPasses<V>(job: usize, next: i32): void {
     const taps = load<usize>(job, TAPS) + (<usize>(term * m) << 2);
     const ring = ringFrom(job, term, next);
     correlateRows<V>(
-      load<usize>(ring), load<usize>(ring, 4), table, taps, 1, m, <usize>load<i32>(job, CHANNELS) << 2, load<i32>(job, RESULT_FLOATS), false,
+      load<usize>(ring), load<usize>(ring, 4), table, taps, 1, m, <usize>load<i32>(job, CHANNELS) << 2, load<i32>(job, RESULT_FLOATS),
     );
   }
 }

@@ -8,8 +8,8 @@ import { JobRecord } from "./record.js";
 import { sampleFacts } from "./samples.js";
 import { weightsOf } from "./weights.js";
 
-/** Bytes of source samples and of result samples that are staged at a time: they stay in the second cache. */
-const stagedBytes = 262144;
+/** Bytes of source samples and of result samples that are staged at a time: they stay in the second cache. Less where memory is short. */
+const mostStagedBytes = 262144;
 
 /** The longest stretch of extended columns that are neighbours in the source. */
 interface Stretch {
@@ -98,6 +98,7 @@ export function frameOf(problem: Problem, mostRows: (affordable: number) => numb
   const extendedStride = rowStride((paddedFloats + (horizontal.taps - 1) * channels + 16) * 4);
   const resultStride = rowStride(paddedFloats * 4 + 64);
   const outputRowBytes = resultFloats << sampleFacts[request.output.sample].code;
+  const stagedBytes = Math.min(mostStagedBytes, problem.bytesAvailable / 8);
   const affordable = Math.max(2, Math.floor(stagedBytes / Math.max(1, rowBytes, outputRowBytes)));
   const stagedRows = mostRows(affordable);
   const weights = problem.renormalised ? weightsOf(problem) : undefined;

@@ -41,41 +41,61 @@ function patternsOf(axis: Axis): { of: Int32Array<ArrayBuffer>; patterns: Patter
   return { of, patterns };
 }
 
-/** Sums down the columns of taps: entry [j, i] is the weight of taps 0 … j − 1 of column i. Empty stretches differ by exactly 0. */
-function columnSums(taps: Float64Array, rows: number, columns: number): Float64Array<ArrayBuffer> {
-  const sums = new Float64Array((rows + 1) * columns);
-  for (let k = 0; k < rows * columns; k++) sums[k + columns] = sums[k]! + taps[k]!;
-  return sums;
+/** Sums of stretches of a list, never as differences: small weights beside large ones would drown. */
+class StretchSums {
+  readonly #values: ArrayLike<number>;
+  readonly #upTo: Float64Array;
+  readonly #from: Float64Array;
+
+  constructor(values: ArrayLike<number>) {
+    const count = values.length;
+    this.#values = values;
+    this.#upTo = new Float64Array(count + 1);
+    this.#from = new Float64Array(count + 1);
+    for (let k = 0; k < count; k++) this.#upTo[k + 1] = this.#upTo[k]! + values[k]!;
+    for (let k = count - 1; k >= 0; k--) this.#from[k] = this.#from[k + 1]! + values[k]!;
+  }
+
+  /** Σ values[before] … values[after − 1]. */
+  inside({ before, after }: Pattern): number {
+    if (before === 0) return this.#upTo[after]!;
+    if (after === this.#values.length) return this.#from[before]!;
+    let sum = 0;
+    for (let k = before; k < after; k++) sum += this.#values[k]!;
+    return sum;
+  }
+
+  /** Σ of all others. */
+  outside({ before, after }: Pattern): number {
+    return this.#upTo[before]! + this.#from[after]!;
+  }
 }
 
-/** For one row pattern: entry i is the weight inside of tap columns 0 … i − 1; `whole` is the weight of outside rows that count all the same. */
-function rowSums(problem: Problem, sums: Float64Array, { before, after }: Pattern): { inside: Float64Array; whole: number } {
-  const columns = problem.horizontal.taps;
-  const inside = new Float64Array(columns + 1);
-  let whole = 0;
-  for (let i = 0; i < columns; i++) {
-    const part = sums[after * columns + i]! - sums[before * columns + i]!;
-    inside[i + 1] = inside[i]! + part;
-    if (problem.vertical.rule !== "renormalised") whole += sums[problem.vertical.taps * columns + i]! - part;
-  }
-  return { inside, whole };
+/** For one row pattern: the weight inside of each column of taps, and the weight of outside rows that count all the same. */
+function rowSums(problem: Problem, columns: StretchSums[], rows: Pattern): { inside: StretchSums; whole: number } {
+  const inside = new StretchSums(columns.map((column) => column.inside(rows)));
+  const counted = problem.vertical.rule === "renormalised" ? 0 : columns.reduce((sum, column) => sum + column.outside(rows), 0);
+  return { inside, whole: counted };
 }
 
 function tabulate(problem: Problem): Weights {
   const { horizontal, vertical, analysis } = problem;
-  const sums = columnSums(correlationTaps(problem), vertical.taps, horizontal.taps);
+  const taps = correlationTaps(problem);
+  const columnOf = (i: number): Float64Array => Float64Array.from({ length: vertical.taps }, (_, j) => taps[j * horizontal.taps + i]!);
+  const tapColumns = Array.from({ length: horizontal.taps }, (_, i) => new StretchSums(columnOf(i)));
   const rows = patternsOf(vertical);
   const columns = patternsOf(horizontal);
+  const everyColumn = { before: 0, after: horizontal.taps };
   const stride = columns.patterns.length;
   const factors = new Float32Array(rows.patterns.length * stride);
   let smallest = Infinity;
   rows.patterns.forEach((row, r) => {
-    const { inside, whole } = rowSums(problem, sums, row);
-    columns.patterns.forEach(({ before, after }, c) => {
-      const all = horizontal.rule !== "renormalised";
-      const weight = whole + (all ? inside[horizontal.taps]! : inside[after]! - inside[before]!);
+    const { inside, whole } = rowSums(problem, tapColumns, row);
+    columns.patterns.forEach((column, c) => {
+      const complete = row.after - row.before === vertical.taps && column.after - column.before === horizontal.taps;
+      const weight = whole + inside.inside(horizontal.rule === "renormalised" ? column : everyColumn);
       if (weight > 0) smallest = Math.min(smallest, weight);
-      factors[r * stride + c] = weight > 0 ? (after - before === horizontal.taps && row.after - row.before === vertical.taps ? 1 : analysis.sum / weight) : 0;
+      factors[r * stride + c] = complete ? 1 : weight > 0 ? analysis.sum / weight : 0;
     });
   });
   return { rows: rows.of, columns: columns.of, stride, factors, smallest };

@@ -20,7 +20,7 @@ const notYet: Record<string, string> = {
 function refuseNotYet(options: Record<string, unknown>): void {
   for (const [name, advice] of Object.entries(notYet)) {
     if (options[name] === undefined) continue;
-    throw new ConvolutionError("not-supported", `createEngine: option ${name} is not supported. ${advice}`, { expected: "no such option", received: options[name] });
+    throw new ConvolutionError("not-supported", `createEngine: option ${name} (${String(options[name])}) is not supported. ${advice}`, { expected: "no such option", received: options[name] });
   }
   if (options["build"] !== "relaxed-simd") return;
   const message = 'createEngine: build "relaxed-simd" is not supported. Use "auto", "simd" or "scalar".';

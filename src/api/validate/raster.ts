@@ -23,7 +23,8 @@ function fail(what: string, found: string, needed: string, advice: string): neve
 
 /** The array's own name, also for arrays of another realm: a page's frames, a test's sandbox. */
 function arrayName(data: unknown): string {
-  if (!ArrayBuffer.isView(data)) return Array.isArray(data) ? "a plain array" : data === null ? "null" : typeof data;
+  if (Array.isArray(data)) return "a plain array";
+  if (typeof data !== "object" || data === null) return data === null ? "null" : typeof data;
   return Object.prototype.toString.call(data).slice(8, -1);
 }
 
@@ -44,7 +45,7 @@ function isDetached(data: ArrayBufferView): boolean {
  */
 function checkedSamples(what: string, data: unknown): { data: Samples; sample: SampleType } {
   const name = arrayName(data);
-  const sample = Object.hasOwn(sampleOfArray, name) ? sampleOfArray[name] : undefined;
+  const sample = ArrayBuffer.isView(data) && Object.hasOwn(sampleOfArray, name) ? sampleOfArray[name] : undefined;
   if (sample === undefined) {
     const expected = Object.keys(sampleOfArray);
     const advice =

@@ -1,5 +1,5 @@
 import { ConvolutionError } from "../../errors.js";
-import { asKernel, type Kernel } from "../../kernels/kernel.js";
+import { asKernel, readTaps, type Kernel } from "../../kernels/kernel.js";
 import { checkedNumber, checkOptionNames, chosenWord } from "../../kernels/options.js";
 import { analyse } from "../../planning/analysis.js";
 import { anchorOf, extentOf, type Request } from "../../planning/problem.js";
@@ -61,7 +61,7 @@ function refuseRenormalised(where: string, rules: BorderRule[], kernel: Kernel):
   if (!rules.includes("renormalised")) return;
   const { negative, sum } = analyse(kernel);
   if (!negative && sum > 0) return;
-  const found = negative ? "a negative tap" : `taps that sum to ${sum}`;
+  const found = negative ? `a negative tap (${readTaps(kernel).reduce((least, tap) => Math.min(least, tap))})` : `taps that sum to ${sum}`;
   const message = `${where}: border "renormalised" divides by the weight that falls inside, and the kernel has ${found}. Use "replicate" or a symmetric border.`;
   throw new ConvolutionError("border-not-applicable", message, { expected: "no negative tap, a positive sum", received: found });
 }
