@@ -28,7 +28,7 @@ function methodLine(chosen: string): (entry: Outcome["methods"][number]) => stri
   };
 }
 
-function agreementLine({ methods, written, unrounded, holds }: Agreement): string {
+function agreementLine({ methods, written, unrounded, premultiplied, holds }: Agreement): string {
   const verdict = holds ? "agree within their bounds" : "DIFFER BEYOND THEIR BOUNDS";
-  return `  ${methods.join(" and ")} ${verdict}: at most ${small(written.largest)} of ${small(written.allowed)} levels as written, ${small(unrounded.largest)} of ${small(unrounded.allowed)} before rounding.`;
+  return `  ${methods.join(" and ")} ${verdict}: at most ${small(written.largest)} of ${small(written.allowed)} levels as written, ${small(unrounded.largest)} of ${small(unrounded.allowed)} before rounding${premultiplied ? ", colours times alpha" : ""}.`;
 }

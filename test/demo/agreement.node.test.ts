@@ -68,3 +68,24 @@ describe("a job of the demo", () => {
     expect(verdictOf(made(10.05, 10))).toBe("within 1 % of the fastest");
   });
 });
+
+describe("methods on an image with alpha", () => {
+  it("agree where alpha runs from nothing to opaque, and a wrong alpha is found", async () => {
+    const [width, height] = [96, 64];
+    const data = Uint16Array.from({ length: width * height * 4 }, (_, index) =>
+      index % 4 === 3 ? (((index >> 2) % width) * 65535) / (width - 1) : (index * 7919) % 65536,
+    );
+    const image = { data, width, height, channels: 4 } as const;
+    const engine = await createEngine();
+    const outcome = perform(engine, threeJobs()[1], image, { width, height, channels: 4, sample: "u16" });
+    const agreements = agreementsOf(engine, outcome, image);
+    expect(agreements.length).toBeGreaterThan(0);
+    for (const agreement of agreements) expect(agreement, agreement.methods.join(" – ")).toMatchObject({ holds: true, premultiplied: true });
+    const [first, ...others] = outcome.results;
+    const changed = first.raster.data.slice();
+    changed[4 * 50 + 3] -= 64;
+    const broken = agreementsOf(engine, { ...outcome, results: [{ ...first, raster: { ...first.raster, data: changed } }, ...others] }, image);
+    expect(broken.filter(({ holds }) => !holds)).toHaveLength(others.length);
+    engine.dispose();
+  });
+});

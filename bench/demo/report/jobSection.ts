@@ -65,6 +65,7 @@ function timeTable({ job, explanation, methods }: Outcome): string {
 
 function agreementTable(file: string, agreements: readonly Agreement[]): string {
   if (agreements.length === 0) return "<p>One method applies, so there is nothing to compare it with.</p>";
+  const colours = agreements[0].premultiplied ? "; colours times their alpha" : "";
   const rows = agreements.map(({ methods, written, unrounded, holds }): Cell[] => [
     { heading: methods.join(" – ") },
     { figure: `${small(written.largest)} of ${small(written.allowed)}` },
@@ -73,7 +74,7 @@ function agreementTable(file: string, agreements: readonly Agreement[]): string 
   ]);
   return table(
     `${file}-agreement`,
-    "Largest difference between two methods, in levels, of what their error bounds allow",
+    `Largest difference between two methods, in levels, of what their error bounds allow${colours}`,
     ["Methods", "As written", "Before rounding", "Bounds"],
     rows,
   );
