@@ -17,7 +17,7 @@ const script = `
 import { createEngine, kernel } from "tapwise";
 const engine = await createEngine();
 const taps = kernel([[0, 1, 0], [2, 3, 4], [0, 5, 0]]);
-const image = { data: Float32Array.of(1, 2, 3, 4), width: 2, height: 2 };
+const image = { data: Uint8Array.of(1, 2, 3, 4), width: 2, height: 2 };
 console.log(JSON.stringify([...engine.convolve(image, taps, { border: "zero" }).data]));
 engine.dispose();
 `;
