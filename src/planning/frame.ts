@@ -51,7 +51,7 @@ function stagedColumns(map: Int32Array): { first: number; count: number } {
 }
 
 /** The two constant pixels in source samples: what stands outside by row, and by column. */
-function constantPixels(problem: Problem): Uint8Array | Uint16Array | Float32Array {
+export function constantPixels(problem: Problem): Uint8Array | Uint16Array | Float32Array {
   const { channels } = problem;
   const values = [problem.vertical.rule, problem.horizontal.rule].flatMap((rule) => {
     const constant = typeof rule === "object" ? rule.constant : 0;
@@ -255,7 +255,9 @@ export function frameCounts(problem: Problem, entered: number, steps: number): C
   const { horizontal, vertical, channels, request } = problem;
   const stretch = stretchOf(horizontal);
   const results = horizontal.count * vertical.count;
-  const converts = (request.light === "linear" ? 1 : 0) + (request.alpha === "none" ? 0 : 1);
+  const read = entered * horizontal.extended;
+  const linear = request.light === "linear";
+  const byTable = linear && sampleFacts[request.sample].integer;
   return {
     run: 1,
     step: steps,
@@ -263,6 +265,8 @@ export function frameCounts(problem: Problem, entered: number, steps: number): C
     [`enter_${request.sample}`]: entered * horizontal.extended * channels,
     [`leave_${request.output.sample}`]: results * channels,
     haloPixel: entered * (horizontal.extended - stretch.count),
-    convertPixel: converts * (entered * horizontal.extended + results),
+    alphaPixel: request.alpha === "none" ? 0 : read + results,
+    tableSample: byTable ? read * problem.colours : 0,
+    curveSample: linear ? (results + (byTable ? 0 : read)) * problem.colours : 0,
   };
 }
