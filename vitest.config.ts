@@ -33,7 +33,7 @@ function browserProjects(executablePath: string) {
       },
     },
   };
-  const pages = { test: { name: "pages", include: ["test/pages/**/*.test.ts"], testTimeout: 60_000 } };
+  const pages = { test: { name: "pages", include: ["test/pages/**/*.test.ts"], testTimeout: 300_000 } };
   return [browser, pages];
 }
 

@@ -10,7 +10,7 @@ beforeAll(async () => {
   const executablePath = findChromium();
   if (executablePath === undefined) throw new Error("No Chromium found.");
   [browser, server] = await Promise.all([chromium.launch(chromiumLaunchOptions(executablePath)), startServer()]);
-}, 60_000);
+}, 120_000);
 afterAll(async () => {
   await browser?.close();
   await server?.stop();
@@ -23,8 +23,9 @@ async function visitPage(path: string): Promise<{ shown: Record<string, unknown>
   const complaints: string[] = [];
   page.on("pageerror", (error) => complaints.push(error.message));
   page.on("console", (message) => complaints.push(message.text()));
+  page.setDefaultTimeout(120_000);
   await page.goto(server.address + path);
-  await page.waitForFunction(() => document.querySelector("output")?.textContent !== "", undefined, { timeout: 20_000 });
+  await page.waitForFunction(() => document.querySelector("output")?.textContent !== "", undefined);
   const shown = JSON.parse((await page.textContent("output")) ?? "");
   await page.close();
   return { shown, complaints, requests: server.requests.slice(before) };
