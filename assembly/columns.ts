@@ -1,4 +1,5 @@
 import { laneBytes, loadLanes, multiplyAdd, splat, splatFrom, storeLanes } from "./lanes";
+import { assertCorrelation } from "./promises";
 
 /**
  * Correlates down the columns, two result rows at a time; each row is read once for both.
@@ -9,6 +10,7 @@ import { laneBytes, loadLanes, multiplyAdd, splat, splatFrom, storeLanes } from 
  * Shapes, units and promises as correlateRows with m = 1.
  */
 export function correlateColumns<V>(out0: usize, out1: usize, rows: usize, taps: usize, n: i32, count: i32, accumulate: bool): void {
+  assertCorrelation(out0, out1, rows, taps, n, 1, 0, count);
   const bytes = <usize>count << 2;
   const block: usize = 4 * laneBytes<V>();
   let x: usize = 0;

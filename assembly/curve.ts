@@ -41,5 +41,6 @@ export function encode(linear: f32): f32 {
 
 /** Writes decode(code ÷ full) for code = 0 … full. */
 export function decodeTable(out: usize, full: i32): void {
+  assert(out != 0 && (out & 3) == 0 && full > 0);
   for (let code = 0; code <= full; code++) store<f32>(out + (<usize>code << 2), decode(<f32>(<f64>code / <f64>full)));
 }

@@ -1,4 +1,5 @@
 import { laneBytes, loadLanes, multiplyAdd, splat, splatFrom, storeLanes } from "./lanes";
+import { assertCorrelation } from "./promises";
 
 /**
  * Correlates rows of floats with taps, two result rows at a time.
@@ -15,6 +16,7 @@ import { laneBytes, loadLanes, multiplyAdd, splat, splatFrom, storeLanes } from 
  * Source    Higham, Accuracy and Stability of Numerical Algorithms, §3.1 (bound)
  */
 export function correlateRows<V>(out0: usize, out1: usize, rows: usize, taps: usize, n: i32, m: i32, step: usize, count: i32): void {
+  assertCorrelation(out0, out1, rows, taps, n, m, step, count);
   const bytes = <usize>count << 2;
   const block: usize = 4 * laneBytes<V>();
   let x: usize = 0;

@@ -1,5 +1,6 @@
 import { decode } from "./curve";
 import { widen16_u8, widen8_u16 } from "./lanes";
+import { assertEnterRow, assertSource } from "./promises";
 import {
   CHANNELS, COLOURS, CONSTANT_COLUMN, CONSTANT_PIXELS, CONSTANT_ROW, CURVE, DECODE, EXTENDED_COLUMNS, HALO, HALO_COUNT, PREMULTIPLY, ROW_MAP,
   RUN_COLUMN, RUN_COUNT, RUN_SOURCE, SOURCE_FULL, SOURCE_KIND, WORKING_FULL,
@@ -54,6 +55,7 @@ function premultiplyPixels(job: usize, out: usize, pixels: i32): void {
 
 /** Brings neighbouring pixels in: widened, decoded, premultiplied. */
 export function enterPixels<V>(job: usize, out: usize, source: usize, pixels: i32): void {
+  assert(pixels >= 0 && (out & 3) == 0);
   widen<V>(load<i32>(job, SOURCE_KIND), out, source, pixels * load<i32>(job, CHANNELS));
   if (load<i32>(job, DECODE)) decodePixels(job, out, pixels);
   if (load<i32>(job, PREMULTIPLY)) premultiplyPixels(job, out, pixels);
@@ -73,6 +75,7 @@ function copyPixel(out: usize, source: usize, channels: i32): void {
  * @param source its staged samples; not read where the row map says "outside"
  */
 export function enterRow<V>(job: usize, out: usize, row: i32, source: usize): void {
+  assertEnterRow(job, out, row, source);
   const channels = load<i32>(job, CHANNELS);
   const pixelBytes = <usize>channels << 2;
   if (load<i32>(load<usize>(job, ROW_MAP) + (<usize>row << 2)) < 0) {
@@ -94,6 +97,7 @@ export function enterRow<V>(job: usize, out: usize, row: i32, source: usize): vo
 
 /** Set-up: the constant pixels, entered like any other samples: one all along an extended row, one for the halo of columns. */
 export function enterConstants<V>(job: usize): void {
+  assertSource(job);
   const channels = load<i32>(job, CHANNELS);
   const pixelBytes = <usize>channels << 2;
   const row = load<usize>(job, CONSTANT_ROW);

@@ -7,7 +7,7 @@
  * every sum is taken in the same order in both.
  *
  *     set-up    enterConstants · decodeCurve · placeTaps, forwardColumns, takeSpectrum (FFT)
- *     sweeps    sweepDirect · sweepSeparable · sweepRunningSum                          units: result rows
+ *     sweeps    sweepDirect · sweepSeparable · sweepIntegerSums · sweepRunningSum                          units: result rows
  *     FFT       enterStrip (rows) → forwardColumns (floats) → filterRows (groups of rows) → inverseColumns (floats) → leaveStrip (rows)
  */
 import { decodeTable } from "./curve";
@@ -17,6 +17,7 @@ import {
   filterRows as filterRowsOf, forwardColumns as forwardColumnsOf, inverseColumns as inverseColumnsOf, placeTaps as placeTapsOf,
   takeSpectrum as takeSpectrumOf,
 } from "./fft/tiles";
+import { sweepIntegerSums as sweepIntegerSumsOf } from "./integerSums";
 import { CURVE } from "./record";
 import { sweepRunningSum as sweepRunningSumOf } from "./runningSum";
 import { sweepDirect as sweepDirectOf, sweepSeparable as sweepSeparableOf } from "./sweep";
@@ -34,6 +35,11 @@ export function sweepDirect(job: usize, from: i32, to: i32): void {
 export function sweepSeparable(job: usize, from: i32, to: i32): void {
   if (ASC_FEATURE_SIMD) sweepSeparableOf<v128>(job, from, to);
   else sweepSeparableOf<f32>(job, from, to);
+}
+
+export function sweepIntegerSums(job: usize, from: i32, to: i32): void {
+  if (ASC_FEATURE_SIMD) sweepIntegerSumsOf<v128>(job, from, to);
+  else sweepIntegerSumsOf<f32>(job, from, to);
 }
 
 export function sweepRunningSum(job: usize, from: i32, to: i32): void {

@@ -219,14 +219,7 @@ export function deinterleave4<V>(plane0: usize, plane1: usize, plane2: usize, pl
   }
 }
 
-/** Whole floats → 32-bit integers in the same lanes, and back (unsigned). */
-// @ts-ignore: decorator
-@inline
-export function toIntegers<V>(x: V): V {
-  if (isVector<V>()) return changetype<V>(i32x4.trunc_sat_f32x4_s(changetype<v128>(x)));
-  return <V>reinterpret<f32>(<i32>(<f32>x));
-}
-
+/** 32-bit unsigned integers → floats in the same lanes. */
 // @ts-ignore: decorator
 @inline
 export function integersToFloats<V>(x: V): V {
@@ -246,4 +239,44 @@ export function integerAdd<V>(a: V, b: V): V {
 export function integerSubtract<V>(a: V, b: V): V {
   if (isVector<V>()) return changetype<V>(i32x4.sub(changetype<v128>(a), changetype<v128>(b)));
   return <V>reinterpret<f32>(reinterpret<i32>(<f32>a) - reinterpret<i32>(<f32>b));
+}
+
+/** sums[k] += incoming[k] − outgoing[k] for 16 bytes; sums are 32-bit integers. */
+// @ts-ignore: decorator
+@inline
+export function addDifference16_u8<V>(sums: usize, incoming: usize, outgoing: usize): void {
+  if (isVector<V>()) {
+    const a = v128.load(incoming);
+    const b = v128.load(outgoing);
+    const low = i16x8.sub(i16x8.extend_low_i8x16_u(a), i16x8.extend_low_i8x16_u(b));
+    const high = i16x8.sub(i16x8.extend_high_i8x16_u(a), i16x8.extend_high_i8x16_u(b));
+    v128.store(sums, i32x4.add(v128.load(sums), i32x4.extend_low_i16x8_s(low)));
+    v128.store(sums, i32x4.add(v128.load(sums, 16), i32x4.extend_high_i16x8_s(low)), 16);
+    v128.store(sums, i32x4.add(v128.load(sums, 32), i32x4.extend_low_i16x8_s(high)), 32);
+    v128.store(sums, i32x4.add(v128.load(sums, 48), i32x4.extend_high_i16x8_s(high)), 48);
+  } else {
+    for (let k: usize = 0; k < 16; k++) {
+      const at = sums + (k << 2);
+      store<i32>(at, load<i32>(at) + <i32>load<u8>(incoming + k) - <i32>load<u8>(outgoing + k));
+    }
+  }
+}
+
+/** The same for eight 16-bit samples. */
+// @ts-ignore: decorator
+@inline
+export function addDifference8_u16<V>(sums: usize, incoming: usize, outgoing: usize): void {
+  if (isVector<V>()) {
+    const a = v128.load(incoming);
+    const b = v128.load(outgoing);
+    const low = i32x4.sub(i32x4.extend_low_i16x8_u(a), i32x4.extend_low_i16x8_u(b));
+    const high = i32x4.sub(i32x4.extend_high_i16x8_u(a), i32x4.extend_high_i16x8_u(b));
+    v128.store(sums, i32x4.add(v128.load(sums), low));
+    v128.store(sums, i32x4.add(v128.load(sums, 16), high), 16);
+  } else {
+    for (let k: usize = 0; k < 8; k++) {
+      const at = sums + (k << 2);
+      store<i32>(at, load<i32>(at) + <i32>load<u16>(incoming + (k << 1)) - <i32>load<u16>(outgoing + (k << 1)));
+    }
+  }
 }

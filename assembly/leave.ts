@@ -1,5 +1,6 @@
 import { encode } from "./curve";
 import { add, laneBytes, loadLanes, multiply, narrow16_u8, narrow8_u16, roundHalfUpOne, splat, storeLanes } from "./lanes";
+import { assertLeaveRow } from "./promises";
 import {
   ALPHA, ALPHA_BOUND, ANCHOR_COLUMN, CHANNELS, COLOURS, DECODE, GAIN, KEEP_ROW, OPAQUE_SUM, OFFSET, OUTPUT_COLUMNS, OUTPUT_FULL, OUTPUT_KIND,
   ROUND, SOURCE_FULL, WEIGHTS, WEIGHT_COLUMNS, WEIGHT_ROWS, WEIGHT_STRIDE, WORKING_FULL,
@@ -126,6 +127,7 @@ function leaveKept(job: usize, y: usize): void {
  * @param out its place among the staged output rows
  */
 export function leaveRow<V>(job: usize, y: usize, row: i32, out: usize): void {
+  assertLeaveRow(job, y, row, out);
   const count = load<i32>(job, OUTPUT_COLUMNS) * load<i32>(job, CHANNELS);
   const alpha = load<i32>(job, ALPHA);
   if (load<i32>(job, ROUND)) roundAll(y, count);

@@ -63,10 +63,11 @@ export const RESULT_FLOATS = 124;
 /** Position of the first extended column and row inside a block of running sums. */
 export const COLUMN_PHASE = 128;
 export const ROW_PHASE = 132;
-/** One row of sums (columns · channels). */
+/** One row of sums: columns · channels floats, or RAW_SAMPLES integers. */
 export const SUMS = 136;
-/** 1: sums are kept in 32-bit integers. */
-export const INTEGER_SUMS = 140;
+/** Integer sums: samples of a raw row (staged columns and one pixel), rounded up to 16; the raw row that stands outside by row. */
+export const RAW_SAMPLES = 140;
+export const RAW_CONSTANT = 296;
 
 // ---- leave: result rows → samples ----
 /** 0 u8, 1 u16, 2 f32 */

@@ -1,49 +1,18 @@
 import { enterRow } from "./enter";
-import { add, integerAdd, integerSubtract, integersToFloats, laneBytes, loadLanes, multiply, splat, storeLanes, toIntegers } from "./lanes";
+import { add, laneBytes, loadLanes, multiply, splat, storeLanes } from "./lanes";
 import {
-  CHANNELS, COLUMN_PHASE, ENTERED, ENTERED_STRIDE, INTEGER_SUMS, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, RESULT, RESULT_FLOATS,
-  RESULT_STRIDE, ROW_PHASE, ROW_TABLE, SUMS, TAPS,
+  CHANNELS, COLUMN_PHASE, ENTERED, ENTERED_STRIDE, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, RESULT, RESULT_FLOATS, ROW_PHASE, ROW_TABLE, SUMS, TAPS,
 } from "./record";
+import { assertRunningSum, assertSweep } from "./promises";
 import { firstNewRow, leaveStaged, stagedRow } from "./sweep";
 
 /*
- * Sums over a window, at a cost that does not depend on its size.
+ * Sums of floats over a window, at a cost that does not depend on its size; integers have integerSums.ts.
  *
- * Integers: one sum moves along, adding what comes and subtracting what goes; exact in 32 bits (modulo 2³², the result being below).
- * Floats: blocks as long as the window. A window meets two neighbouring blocks: the tail of one (suffix sum) and the head of the next
+ * Blocks are as long as the window. A window meets two neighbouring blocks: the tail of one (suffix sum) and the head of the next
  * (prefix sum). Nothing is ever subtracted, so nothing drifts and a NaN stays where it is. Blocks are counted from image sample 0,
  * so that a region gives the same bytes as the whole.  (van Herk 1992 and Gil & Werman 1993 use the same blocks for maxima.)
  */
-
-/** out[x] = Σᵢ row[x + i], 0 ≤ i < m, in integers. `row` holds 32-bit integers, C to a pixel. */
-function slideIntegers(out: usize, row: usize, columns: i32, m: i32, channels: i32): void {
-  const pixel = <usize>channels << 2;
-  const window = <usize>m * pixel;
-  for (let c: usize = 0; c < pixel; c += 4) {
-    let sum: i32 = 0;
-    const end = out + <usize>columns * pixel;
-    for (let p = row + c; p < row + window - pixel; p += pixel) sum += load<i32>(p);
-    for (let q = out + c, p = row + c; q < end; q += pixel, p += pixel) {
-      sum += load<i32>(p + window - pixel);
-      store<i32>(q, sum);
-      sum -= load<i32>(p);
-    }
-  }
-}
-
-/** The same for four channels at once. */
-function slidePixels<V>(out: usize, row: usize, columns: i32, m: i32): void {
-  if (!isVector<V>()) return slideIntegers(out, row, columns, m, 4);
-  const window = <usize>m << 4;
-  let sum = splat<V>(0);
-  for (let p = row; p < row + window - 16; p += 16) sum = integerAdd<V>(sum, loadLanes<V>(p));
-  const end = out + (<usize>columns << 4);
-  for (let q = out, p = row; q < end; q += 16, p += 16) {
-    sum = integerAdd<V>(sum, loadLanes<V>(p + window - 16));
-    storeLanes<V>(q, sum);
-    sum = integerSubtract<V>(sum, loadLanes<V>(p));
-  }
-}
 
 /** row[k] ← Σ row[k] … row[end of its block], in floats; blocks of m pixels, the first one `phase` pixels in. */
 function suffixSums(out: usize, row: usize, columns: i32, m: i32, phase: i32, channels: i32): void {
@@ -86,30 +55,10 @@ function sumRow<V>(job: usize, out: usize, row: i32, source: usize): void {
   const m = load<i32>(job, KERNEL_COLUMNS);
   const entered = load<usize>(job, ENTERED);
   enterRow<V>(job, entered, row, source);
-  if (load<i32>(job, INTEGER_SUMS)) {
-    const end = entered + (<usize>((columns + m - 1) * channels) << 2);
-    for (let p = entered; p < end; p += laneBytes<V>()) storeLanes<V>(p, toIntegers<V>(loadLanes<V>(p)));
-    if (channels == 4) slidePixels<V>(out, entered, columns, m);
-    else slideIntegers(out, entered, columns, m, channels);
-  } else {
-    const suffix = entered + load<usize>(job, ENTERED_STRIDE);
-    const phase = load<i32>(job, COLUMN_PHASE);
-    suffixSums(suffix, entered, columns + m - 1, m, phase, channels);
-    slideFloats(out, entered, suffix, columns, m, phase, channels);
-  }
-}
-
-/** sums ← sums + incoming − outgoing (integers); the result row is tap · sums. */
-function slideDownIntegers<V>(job: usize, incoming: usize, outgoing: usize, result: usize): void {
-  const sums = load<usize>(job, SUMS);
-  const bytes = <usize>load<i32>(job, RESULT_FLOATS) << 2;
-  const tap = splat<V>(load<f32>(load<usize>(job, TAPS)));
-  for (let x: usize = 0; x < bytes; x += laneBytes<V>()) {
-    let sum = integerAdd<V>(loadLanes<V>(sums + x), loadLanes<V>(incoming + x));
-    if (outgoing) sum = integerSubtract<V>(sum, loadLanes<V>(outgoing + x));
-    storeLanes<V>(sums + x, sum);
-    storeLanes<V>(result + x, multiply<V>(tap, integersToFloats<V>(sum)));
-  }
+  const suffix = entered + load<usize>(job, ENTERED_STRIDE);
+  const phase = load<i32>(job, COLUMN_PHASE);
+  suffixSums(suffix, entered, columns + m - 1, m, phase, channels);
+  slideFloats(out, entered, suffix, columns, m, phase, channels);
 }
 
 /** sums ← incoming, or sums + incoming inside a block. */
@@ -157,23 +106,15 @@ function advanceFloats<V>(job: usize, ring: usize, row: i32, n: i32): void {
 /** Running sums: horizontal sums in a ring of n rows, vertical sums in one row. Result rows from … to − 1 as in every sweep. */
 export function sweepRunningSum<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
+  assertSweep(job, from, to, n);
+  assertRunningSum(job);
   const ring = load<usize>(job, ROW_TABLE);
   const result = load<usize>(job, RESULT);
   const first = firstNewRow(job, from);
-  const integers = load<i32>(job, INTEGER_SUMS);
-  if (first == 0 && integers) memory.fill(load<usize>(job, SUMS), 0, <usize>load<i32>(job, RESULT_FLOATS) << 2);
   for (let next = first; next < to + n - 1; next++) {
     const incoming = load<usize>(ring + (<usize>(next % n) << 2));
-    if (integers) {
-      const spare = result + load<usize>(job, RESULT_STRIDE);
-      const outgoing: usize = next >= n ? spare : 0;
-      if (outgoing) memory.copy(spare, incoming, <usize>load<i32>(job, RESULT_FLOATS) << 2);
-      sumRow<V>(job, incoming, next, stagedRow(job, next, first));
-      slideDownIntegers<V>(job, incoming, outgoing, result);
-    } else {
-      sumRow<V>(job, incoming, next, stagedRow(job, next, first));
-      advanceFloats<V>(job, ring, next, n);
-    }
+    sumRow<V>(job, incoming, next, stagedRow(job, next, first));
+    advanceFloats<V>(job, ring, next, n);
     if (next >= n - 1) leaveStaged<V>(job, result, next - n + 1, from);
   }
 }

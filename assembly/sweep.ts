@@ -2,6 +2,7 @@ import { correlateColumns } from "./columns";
 import { correlateRows } from "./direct";
 import { enterRow } from "./enter";
 import { leaveRow } from "./leave";
+import { assertSweep, assertTerms } from "./promises";
 import {
   ALPHA, ANCHOR_ROW, CHANNELS, COLUMN_TAPS, ENTERED, ENTERED_STRIDE, KEEP_ROW, KEEP_STAGING, KERNEL_COLUMNS, KERNEL_ROWS,
   OUTPUT, OUTPUT_STRIDE, RESULT, RESULT_FLOATS, RESULT_STRIDE, RING_ROWS, ROW_TABLE, STAGING, STAGING_STRIDE, TAPS, TERMS,
@@ -54,6 +55,7 @@ function leavePair<V>(job: usize, row: i32, from: i32, to: i32): void {
 /** Direct: extended rows in the ring, all taps at once. */
 export function sweepDirect<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
+  assertSweep(job, from, to, n + 1);
   const step = <usize>load<i32>(job, CHANNELS) << 2;
   const result = load<usize>(job, RESULT);
   const first = firstNewRow(job, from);
@@ -85,6 +87,8 @@ function rowPasses<V>(job: usize, next: i32): void {
 /** Separable: row results in the rings, then columns; terms are summed in order. */
 export function sweepSeparable<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
+  assertSweep(job, from, to, n + 2);
+  assertTerms(job);
   const entered = load<usize>(job, ENTERED);
   const result = load<usize>(job, RESULT);
   const first = firstNewRow(job, from);

@@ -1,5 +1,6 @@
 import { enterRow } from "../enter";
 import { anyNonFinite, deinterleave4, laneBytes, loadLanes, storeLanes } from "../lanes";
+import { assertEnterStrip, assertLeaveStrip } from "../promises";
 import {
   CHANNELS, ENTERED, EXTENDED_COLUMNS, EXTENDED_ROWS, KERNEL_COLUMNS, KERNEL_ROWS, MARKS, MARK_COUNTS, MARK_ROW, MARK_STRIDE, OUTPUT_COLUMNS,
   PAIRS, PLANES, PLANE_BYTES, PLANE_STRIDE, RESULT, STAGING, STAGING_STRIDE, STRIP_ROWS, TILE_ROWS,
@@ -86,6 +87,7 @@ function clearRow(job: usize, row: i32, half: i32): void {
  * @param strip index of the strip; its first extended row is strip · STRIP_ROWS. Staged: its rows from … to − 1
  */
 export function enterStrip<V>(job: usize, from: i32, to: i32, strip: i32): void {
+  assertEnterStrip(job, from, to, strip);
   const half = load<i32>(job, CHANNELS) & 1 ? strip & 1 : 0;
   const top = strip * load<i32>(job, STRIP_ROWS);
   const entered = load<usize>(job, ENTERED);
@@ -144,6 +146,7 @@ function patch(job: usize, y: usize): void {
 
 /** Result rows from … to − 1 of a strip leave. Staged output starts at the first of them. */
 export function leaveStrip<V>(job: usize, from: i32, to: i32, strip: i32): void {
+  assertLeaveStrip(job, from, to, strip);
   const half = load<i32>(job, CHANNELS) & 1 ? strip & 1 : 0;
   const top = strip * load<i32>(job, STRIP_ROWS);
   const y = load<usize>(job, RESULT);

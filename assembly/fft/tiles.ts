@@ -1,4 +1,5 @@
 import { add, laneBytes, lanes, loadLanes, multiply, splat, storeLanes, subtract, transpose } from "../lanes";
+import { assertFloats, assertGroups, assertTiles } from "../promises";
 import {
   COLUMN_PLAN, EXTENDED_COLUMNS, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, PAIRS, PLANES, PLANE_BYTES, PLANE_STRIDE, ROW_PLAN, ROW_SCRATCH,
   SCALE, SPECTRUM, TAPS, TILE_COLUMNS, TILE_ROWS, TILE_STEP,
@@ -32,10 +33,12 @@ function columns<V>(job: usize, from: i32, to: i32, inverse: bool): void {
 
 /** Column transforms of floats from … to − 1 of each plane row (multiples of four). */
 export function forwardColumns<V>(job: usize, from: i32, to: i32): void {
+  assertFloats(job, from, to);
   columns<V>(job, from / lanes<V>(), to / lanes<V>(), false);
 }
 
 export function inverseColumns<V>(job: usize, from: i32, to: i32): void {
+  assertFloats(job, from, to);
   columns<V>(job, from / lanes<V>(), to / lanes<V>(), true);
 }
 
@@ -62,6 +65,7 @@ function multiplySpectrum<V>(scratch: usize, apart: usize, spectrum: usize, coun
 
 /** Filters the rows of groups from … to − 1 (a group: V's lanes) of every pair, tile after tile. */
 export function filterRows<V>(job: usize, from: i32, to: i32): void {
+  assertGroups(job, from, to, lanes<V>());
   const plan = load<usize>(job, ROW_PLAN);
   const stride = load<usize>(job, PLANE_STRIDE);
   const planeBytes = load<usize>(job, PLANE_BYTES);
@@ -94,6 +98,7 @@ export function filterRows<V>(job: usize, from: i32, to: i32): void {
 
 /** Set-up, first step: the taps in the corner of an otherwise empty tile, in the first pair of planes. */
 export function placeTaps<V>(job: usize): void {
+  assertTiles(job);
   const m = load<i32>(job, KERNEL_COLUMNS);
   const stride = load<usize>(job, PLANE_STRIDE);
   const planes = load<usize>(job, PLANES);
@@ -105,6 +110,7 @@ export function placeTaps<V>(job: usize): void {
 
 /** Set-up, after the columns: spectrum of groups from … to − 1, conjugated (correlation) and scaled for the unscaled inverse. */
 export function takeSpectrum<V>(job: usize, from: i32, to: i32): void {
+  assertGroups(job, from, to, lanes<V>());
   const stride = load<usize>(job, PLANE_STRIDE);
   const planes = load<usize>(job, PLANES);
   const count = load<i32>(job, TILE_COLUMNS);

@@ -1,4 +1,5 @@
 import { laneBytes } from "../lanes";
+import { assertTransform } from "../promises";
 import { forward2, forward3, forward4, forward5, inverse2, inverse3, inverse4, inverse5 } from "./butterflies";
 
 /*
@@ -63,6 +64,7 @@ function inversePass<V>(radix: i32, base: usize, stride: usize, apart: usize, po
  * @param vectors vectors of neighbouring columns transformed together
  */
 export function forwardTransform<V>(plan: usize, base: usize, stride: usize, apart: usize, vectors: i32): void {
+  assertTransform(plan, base, stride, apart, vectors, laneBytes<V>());
   const points = load<i32>(plan, 8);
   const end = plan + 4 + 12 * <usize>load<i32>(plan);
   for (plan += 4; plan < end; plan += 12) {
@@ -72,6 +74,7 @@ export function forwardTransform<V>(plan: usize, base: usize, stride: usize, apa
 
 /** Inverse transform, unscaled: digit-reversed order in, natural order out. */
 export function inverseTransform<V>(plan: usize, base: usize, stride: usize, apart: usize, vectors: i32): void {
+  assertTransform(plan, base, stride, apart, vectors, laneBytes<V>());
   const points = load<i32>(plan, 8);
   for (let at = plan + 4 + 12 * <usize>(load<i32>(plan) - 1); at > plan; at -= 12) {
     inversePass<V>(load<i32>(at), base, stride, apart, points, load<i32>(at, 4), load<usize>(at, 8), vectors);

@@ -1,20 +1,26 @@
 import * as field from "../generated/record.js";
 import { gamma } from "../math/rounding.js";
 import { outputBound, sumError } from "./accuracy.js";
-import { frameCounts, frameOf, programOf, type Frame } from "./frame.js";
+import { rowStride } from "./arrangement.js";
+import { constantPixels, frameCounts, frameOf, programOf, type Frame } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { correlationTaps, type Problem } from "./problem.js";
 import { sampleFacts } from "./samples.js";
 import { ringTable, sweepCalls, sweepStagedRows, sweepSteps } from "./sweeps.js";
 
-/** Sums of n rows in a ring and one row of sums: a cost that does not depend on the kernel's size. */
+/** A window of rows in a ring and one row of sums: a cost that does not depend on the kernel's size. */
 interface RunningSumFrame extends Frame {
   tap: number;
+  ringRows: number;
+  ringStride: number;
   ring: number;
   table: number;
   entered: number;
   sums: number;
   results: number;
+  /** Integer sums alone: samples of a raw row, and the one that stands outside by row. */
+  rawSamples: number;
+  rawConstant: number;
 }
 
 /** Integer sums stay below 2³² and need no rounding; what is not an integer is summed in blocks of floats. */
@@ -27,17 +33,33 @@ function integerSums(problem: Problem): boolean {
 
 function frame(problem: Problem): RunningSumFrame {
   const base = frameOf(problem, sweepStagedRows(problem, 8 * problem.horizontal.count * problem.channels));
-  const { arrangement } = base;
-  const { taps } = problem.vertical;
+  const { arrangement, intake } = base;
+  const integers = integerSums(problem);
+  const rawSamples = integers ? 16 * Math.ceil(((intake.columns + 1) * problem.channels) / 16) : 0;
+  const rawBytes = rawSamples << sampleFacts[problem.request.sample].code;
+  const ringRows = integers ? problem.vertical.taps + 1 : problem.vertical.taps;
+  const ringStride = integers ? rowStride(rawBytes) : base.resultStride;
   return {
     ...base,
+    ringRows,
+    ringStride,
+    rawSamples,
     tap: arrangement.take(4),
-    ring: arrangement.take(taps * base.resultStride),
-    table: arrangement.take(2 * taps * 4),
-    entered: arrangement.take(2 * base.extendedStride),
-    sums: arrangement.take(base.resultStride),
-    results: arrangement.take(2 * base.resultStride),
+    ring: arrangement.take(ringRows * ringStride),
+    table: arrangement.take(2 * ringRows * 4),
+    entered: arrangement.take((integers ? 1 : 2) * base.extendedStride),
+    sums: arrangement.take(integers ? rawSamples * 4 : base.resultStride),
+    results: arrangement.take(base.resultStride),
+    rawConstant: arrangement.take(rawBytes),
   };
+}
+
+/** The raw row that stands outside by row: its rule's constant all along. */
+function rawConstantRow(problem: Problem, layout: RunningSumFrame): Uint8Array | Uint16Array {
+  const pixel = constantPixels(problem).subarray(0, problem.channels);
+  const samples = (layout.intake.columns + 1) * problem.channels;
+  const row = problem.request.sample === "u8" ? new Uint8Array(samples) : new Uint16Array(samples);
+  return row.map((_, k) => pixel[k % problem.channels]!);
 }
 
 function error(problem: Problem): number {
@@ -73,6 +95,7 @@ export const runningSum: MethodPlan = {
   program(problem) {
     const { horizontal, vertical } = problem;
     const layout = frame(problem);
+    const integers = integerSums(problem);
     return programOf(problem, layout, {
       fields: (job) =>
         job
@@ -80,7 +103,7 @@ export const runningSum: MethodPlan = {
           .integer(field.KERNEL_COLUMNS, horizontal.taps)
           .integer(field.KERNEL_ROWS, vertical.taps)
           .pointer(field.ROW_TABLE, layout.table)
-          .integer(field.RING_ROWS, vertical.taps)
+          .integer(field.RING_ROWS, layout.ringRows)
           .pointer(field.ENTERED, layout.entered)
           .integer(field.ENTERED_STRIDE, layout.extendedStride)
           .pointer(field.RESULT, layout.results)
@@ -89,13 +112,15 @@ export const runningSum: MethodPlan = {
           .integer(field.COLUMN_PHASE, phase(horizontal.first, horizontal.taps))
           .integer(field.ROW_PHASE, phase(vertical.first, vertical.taps))
           .pointer(field.SUMS, layout.sums)
-          .integer(field.INTEGER_SUMS, integerSums(problem) ? 1 : 0),
+          .integer(field.RAW_SAMPLES, layout.rawSamples)
+          .pointer(field.RAW_CONSTANT, layout.rawConstant),
       tables: [
         { offset: layout.tap, data: Float32Array.of(correlationTaps(problem)[0]!) },
-        { offset: layout.table, data: ringTable(layout.ring, vertical.taps, layout.resultStride), addresses: "all" },
+        { offset: layout.table, data: ringTable(layout.ring, layout.ringRows, layout.ringStride), addresses: "all" },
+        ...(integers ? [{ offset: layout.rawConstant, data: rawConstantRow(problem, layout) }] : []),
       ],
       setup: [],
-      steps: sweepSteps(problem, layout, "sweepRunningSum"),
+      steps: sweepSteps(problem, layout, integers ? "sweepIntegerSums" : "sweepRunningSum"),
       error: error(problem),
       round: false,
     });

@@ -4,6 +4,7 @@ import type { SampleType } from "../types.js";
 export type RoutineName =
   | "sweepDirect"
   | "sweepSeparable"
+  | "sweepIntegerSums"
   | "sweepRunningSum"
   | "enterConstants"
   | "decodeCurve"

@@ -8,6 +8,7 @@ export type Routines = Record<RoutineName, Routine> & { vectorFloats(): number }
 const names: readonly RoutineName[] = [
   "sweepDirect",
   "sweepSeparable",
+  "sweepIntegerSums",
   "sweepRunningSum",
   "enterConstants",
   "decodeCurve",
