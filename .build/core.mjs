@@ -13,6 +13,8 @@ const generated = join(root, "src", "generated");
 const targets = Object.keys(JSON.parse(readFileSync(join(root, "asconfig.json"), "utf8")).targets);
 /** Targets that are shipped: nothing in them but code. The others keep the names of their functions for stack traces. */
 const shipped = new Set(["simd", "scalar"]);
+/** Entries that a target has besides those of asconfig.json. */
+const furtherEntries = { debug: ["assembly/testing.ts"] };
 
 function fingerprint() {
   return fingerprintOf(root, ["assembly"], ["asconfig.json", ".build/core.mjs", ".build/sections.mjs", "node_modules/assemblyscript/package.json"]);
@@ -38,11 +40,14 @@ function writeWhole(name, text) {
 
 async function compile(asc, target) {
   let binary;
-  const { error, stdout, stderr } = await asc.main(["--config", "asconfig.json", "--target", target, "--baseDir", root, "--outFile", `${target}.wasm`], {
-    writeFile: (name, contents) => {
-      if (name.endsWith(".wasm")) binary = contents;
+  const { error, stdout, stderr } = await asc.main(
+    [...(furtherEntries[target] ?? []), "--config", "asconfig.json", "--target", target, "--baseDir", root, "--outFile", `${target}.wasm`],
+    {
+      writeFile: (name, contents) => {
+        if (name.endsWith(".wasm")) binary = contents;
+      },
     },
-  });
+  );
   const messages = `${stdout}${stderr}`.trim();
   if (messages !== "") process.stderr.write(`${messages}\n`);
   if (error !== null || binary === undefined) throw new Error(`The core does not compile for the target ${target}.`, { cause: error });
