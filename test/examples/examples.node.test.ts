@@ -20,7 +20,7 @@ async function namesExportedBy(module: string): Promise<Set<string>> {
   return new Set(Object.keys(await import(pathToFileURL(join(root, "dist", module)).href)));
 }
 
-/** A folder in which the repository is an installed package and a photograph lies. */
+/** A folder in which the repository is an installed package and two photographs lie. */
 function furnish(): void {
   mkdirSync(join(folder, "node_modules", "@types"), { recursive: true });
   symlinkSync(root, join(folder, "node_modules", "tapwise"));
@@ -28,7 +28,7 @@ function furnish(): void {
   writeFileSync(join(folder, "package.json"), '{ "type": "module" }');
   const photo = new PNG({ width: 64, height: 48 });
   photo.data.forEach((_, k) => (photo.data[k] = (k * 31) % 256));
-  writeFileSync(join(folder, "photo.png"), PNG.sync.write(photo));
+  for (const name of ["photo.png", "pinhole.png"]) writeFileSync(join(folder, name), PNG.sync.write(photo));
 }
 
 async function writeProgram(snippet: Snippet, k: number): Promise<void> {
