@@ -78,6 +78,9 @@ function rowSums(problem: Problem, columns: StretchSums[], rows: Pattern): { ins
   return { inside, whole: counted };
 }
 
+/** 2⁻¹⁰⁰: a smaller share of the weight counts as nothing inside (contributions that small may be taken as 0, and Σh ÷ weight must not overflow). */
+const leastShare = 7.888609052210118e-31;
+
 function tabulate(problem: Problem): Weights {
   const { horizontal, vertical, analysis } = problem;
   const taps = correlationTaps(problem);
@@ -93,7 +96,8 @@ function tabulate(problem: Problem): Weights {
     const { inside, whole } = rowSums(problem, tapColumns, row);
     columns.patterns.forEach((column, c) => {
       const complete = row.after - row.before === vertical.taps && column.after - column.before === horizontal.taps;
-      const weight = whole + inside.inside(horizontal.rule === "renormalised" ? column : everyColumn);
+      const found = whole + inside.inside(horizontal.rule === "renormalised" ? column : everyColumn);
+      const weight = found > leastShare * analysis.sum ? found : 0;
       if (weight > 0) smallest = Math.min(smallest, weight);
       factors[r * stride + c] = complete ? 1 : weight > 0 ? analysis.sum / weight : 0;
     });
