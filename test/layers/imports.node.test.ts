@@ -1,5 +1,5 @@
 import { describe, expect, test } from "vitest";
-import { firstCycle, unknownLayers, wrongImports } from "./rules.js";
+import { firstCycle, importsOfTheInside, unknownLayers, wrongImports } from "./rules.js";
 import { importsOf, parse, sourcesBelow } from "./sources.js";
 
 const sources = sourcesBelow("src");
@@ -22,6 +22,13 @@ describe("imports go one way", () => {
 
   test("no file imports against the direction, and the library imports no package", () => {
     expect(wrongImports(imports)).toEqual([]);
+  });
+
+  test("the demo, the benchmarks and the tests of what is computed use the public face", () => {
+    const outside = [...sourcesBelow("bench"), ...sourcesBelow("test")].flatMap(importsOf);
+    expect(outside.length).toBeGreaterThan(100);
+    expect(importsOfTheInside(outside)).toEqual([]);
+    expect(importsOfTheInside(importsIn("bench/demo/demo.ts", 'import { methods } from "../../src/planning/methods.js";'))).toHaveLength(1);
   });
 
   test("no value imports go round in a cycle", () => {

@@ -46,6 +46,21 @@ export function wrongImports(imports: readonly Import[]): string[] {
     .map(({ from, to }) => `${from} imports ${to}`);
 }
 
+/** Behind the public face: what may change without a word to users. */
+const inside = ["api", "planning", "runtime", "math", "generated"];
+
+/**
+ * Imports of the inside from where users are stood for: the demo, the yardsticks, and the tests of what is computed.
+ * The fit and the tests of a part look inside on purpose.
+ */
+export function importsOfTheInside(imports: readonly Import[]): string[] {
+  const outside =
+    /^(bench\/(demo|pictures|yardsticks)\/|bench\/(bench|floor|yardsticks|cases|contender|verify)\.ts|test\/(laws|published|reference|support)\/)/;
+  return imports
+    .filter(({ from, to }) => outside.test(from) && to.startsWith("src/") && inside.includes(layerOf(to)))
+    .map(({ from, to }) => `${from} imports ${to}`);
+}
+
 /** Layers without a rule: a new folder in src/ must say what it may import. */
 export function unknownLayers(sources: readonly Source[]): string[] {
   return [...new Set(sources.map(({ path }) => layerOf(path)).filter((layer) => mayImport[layer] === undefined))];
