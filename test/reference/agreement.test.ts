@@ -9,6 +9,11 @@ function oneRounding(exact: Float64Array, touched: Uint8Array): number {
   return exact.reduce((largest, value, index) => (touched[index] ? largest : Math.max(largest, Math.abs(value))), 2 ** -120) * 2 ** -24;
 }
 
+/** Where a tiny weight alone falls inside, the renormalised border leaves any result free. */
+function plainKind<K extends string>(kind: K): K | "positive" {
+  return kind === "denormal" || kind === "tails" ? "positive" : kind;
+}
+
 test("the judge accepts the definition's own result, written", () => {
   fc.assert(
     fc.property(problems, (problem) => {
@@ -25,7 +30,13 @@ test("the judge accepts the definition's own result, written", () => {
 test("the judge refuses a result that is further off than the bound in one sample", () => {
   fc.assert(
     fc.property(problems, fc.nat(), (problem, place) => {
-      const { image, kernel, options, correlate } = posed({ ...problem, imageKind: "noise", alpha: "none", light: "encoded" });
+      const { image, kernel, options, correlate } = posed({
+        ...problem,
+        kernelKind: plainKind(problem.kernelKind),
+        imageKind: "noise",
+        alpha: "none",
+        light: "encoded",
+      });
       const { defined, disagreement } = judge(image, kernel, options, correlate);
       const data = arrays[defined.sample].from(defined.written);
       const index = place % data.length;
