@@ -27,8 +27,8 @@ export interface Family {
   kernelOf(value: number): Kernel;
 }
 
-/** Standard deviation of the second job's Gaussian in pixels: 21 × 21 taps, wide for direct and not yet wide enough for the FFT. */
-export const gaussianSigma = 2.5;
+/** Standard deviation of the second job's Gaussian in pixels: 25 × 25 taps, wide for direct and not yet wide enough for the FFT. */
+export const gaussianSigma = 3;
 
 /** The three jobs: few taps, many taps that are an outer product, many taps that are not. */
 export function threeJobs(): Job[] {
