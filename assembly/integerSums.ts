@@ -3,6 +3,7 @@ import {
   CHANNELS, CONSTANT_PIXELS, ENTERED, HALO, HALO_COUNT, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, RAW_CONSTANT, RAW_SAMPLES, RESULT,
   RESULT_FLOATS, ROW_MAP, ROW_TABLE, RUN_COLUMN, RUN_COUNT, RUN_SOURCE, SOURCE_KIND, STAGING_STRIDE, SUMS, TAPS,
 } from "./record";
+import { assertIntegerSums, assertSweep } from "./promises";
 import { firstNewRow, leaveStaged, stagedRow } from "./sweep";
 
 /*
@@ -103,6 +104,8 @@ function resultRow<V>(job: usize, y: usize): void {
 /** Result rows from … to − 1, as in every sweep. The ring holds the window's raw rows and one to compose the next one in. */
 export function sweepIntegerSums<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
+  assertSweep(job, from, to, n + 1);
+  assertIntegerSums(job);
   const ring = load<usize>(job, ROW_TABLE);
   const rawBytes = <usize>load<i32>(job, RAW_SAMPLES) << load<i32>(job, SOURCE_KIND);
   const y = load<usize>(job, RESULT);

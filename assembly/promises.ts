@@ -3,9 +3,9 @@
  * and its calls vanish. In the debug build a broken promise traps before anything is written.
  */
 import {
-  ALPHA, ALPHA_BOUND, CHANNELS, COLOURS, COLUMN_PHASE, COLUMN_PLAN, CURVE, DECODE, ENTERED, ENTERED_STRIDE, EXTENDED_COLUMNS, EXTENDED_ROWS,
-  GAIN, HALO, HALO_COUNT, KERNEL_COLUMNS, KERNEL_ROWS, MARKS, MARK_STRIDE, OFFSET, OPAQUE_SUM, OUTPUT_COLUMNS, OUTPUT_KIND,
-  OUTPUT_ROWS, OUTPUT_STRIDE, PAIRS, PLANES, PLANE_BYTES, PLANE_STRIDE, PREMULTIPLY, RESULT, RESULT_FLOATS, RESULT_STRIDE, RING_ROWS, ROW_MAP,
+  ALPHA, ALPHA_BOUND, CHANNELS, COLOURS, COLUMN_PHASE, COLUMN_PLAN, CURVE, DECODE, ENTERED, ENTERED_STRIDE, EXTENDED_COLUMNS, EXTENDED_ROWS, GAIN,
+  HALO, HALO_COUNT, KERNEL_COLUMNS, KERNEL_ROWS, MARKS, MARK_STRIDE, OFFSET, OPAQUE_SUM, OUTPUT_COLUMNS, OUTPUT_KIND, OUTPUT_ROWS, OUTPUT_STRIDE,
+  PAIRS, PLANES, PLANE_BYTES, PLANE_STRIDE, PREMULTIPLY, RAW_CONSTANT, RAW_SAMPLES, RESULT, RESULT_FLOATS, RESULT_STRIDE, RING_ROWS, ROW_MAP,
   ROW_PHASE, ROW_PLAN, ROW_SCRATCH, ROW_TABLE, RUN_COLUMN, RUN_COUNT, RUN_SOURCE, SOURCE_FULL, SOURCE_KIND, SPECTRUM, STAGING_STRIDE, STRIP_ROWS,
   SUMS, TERMS, TILE_COLUMNS, TILE_ROWS, TILE_STEP, WEIGHTS, WEIGHT_COLUMNS, WEIGHT_ROWS, WEIGHT_STRIDE, WORKING_FULL,
 } from "./record";
@@ -145,7 +145,7 @@ export function assertSweep(job: usize, from: i32, to: i32, ringRows: i32): void
   assert(rows >= ringRows);
   for (let k: usize = 0; k < <usize>rows; k++) {
     const row = load<usize>(table + (k << 2));
-    assert(isAligned(row) && isInMemory(row, <usize>floats << 2) && load<usize>(table + ((k + rows) << 2)) == row);
+    assert(isAligned(row) && load<usize>(table + ((k + rows) << 2)) == row);
   }
 }
 
@@ -165,6 +165,19 @@ export function assertRunningSum(job: usize): void {
   assert(load<i32>(job, COLUMN_PHASE) >= 0 && load<i32>(job, COLUMN_PHASE) < m);
   assert(load<i32>(job, ROW_PHASE) >= 0 && load<i32>(job, ROW_PHASE) < n);
   assert(isAligned(load<usize>(job, ENTERED)) && (load<i32>(job, ENTERED_STRIDE) & 15) == 0);
+}
+
+/** Integer samples whose sums stay below 2³², raw rows with room for the constant pixel, one ring row more than the window has. */
+export function assertIntegerSums(job: usize): void {
+  if (ASC_NO_ASSERT) return;
+  const kind = load<i32>(job, SOURCE_KIND), taps = <f64>load<i32>(job, KERNEL_COLUMNS) * load<i32>(job, KERNEL_ROWS);
+  const samples = load<i32>(job, RAW_SAMPLES), staged = load<i32>(job, STAGING_STRIDE) >> kind;
+  assert(kind <= 1 && !load<i32>(job, DECODE) && !load<i32>(job, PREMULTIPLY));
+  assert(taps * load<f32>(job, SOURCE_FULL) < 4294967296);
+  assert(load<i32>(job, RING_ROWS) == load<i32>(job, KERNEL_ROWS) + 1);
+  assert((samples & 15) == 0 && samples >= staged + load<i32>(job, CHANNELS) && load<usize>(job, RAW_CONSTANT) != 0);
+  assert(isAligned(load<usize>(job, SUMS)) && isAligned(load<usize>(job, ENTERED)));
+  assertColumns(job);
 }
 
 /** Radices 2 … 5 that multiply to `points`, spans in descending order, turns for each pass. */
