@@ -1,7 +1,7 @@
 /** Something that does a case's work when told to, and says how long it took. */
 export interface Contender {
   readonly name: string;
-  /** Filters one of the case's planes and resolves with milliseconds. */
+  /** Filters one of the case's planes and resolves with milliseconds of processor time. */
   run(plane: number): Promise<number> | number;
 }
 

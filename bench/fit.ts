@@ -1,6 +1,6 @@
 /** `npm run bench:fit [-- passes]`: times every method on many questions in both builds, fits prices and writes src/planning/profile.ts. */
 import { createEngine, type Build, type HardwareProfile } from "../src/index.js";
-import { operationNames, operations, priceOf, type Prices } from "../src/planning/cost.js";
+import { operationNames, operations, priceOf, type Counts, type Prices } from "../src/planning/cost.js";
 import { errorOf, judge, type Judgement } from "./fit/judge.js";
 import { medianRun, medianSetup, timeQuestion, type Timed } from "./fit/measure.js";
 import { crossValidated, pricesFrom } from "./fit/prices.js";
@@ -27,19 +27,23 @@ async function time(build: Build): Promise<Timed[]> {
 
 const percent = (part: number): string => `${(100 * part).toFixed(1)} %`;
 
-function printJudgement(title: string, { regret, error }: Judgement): void {
+function printJudgement(title: string, { regret, error, setupError }: Judgement): void {
   console.log(`\n${title}`);
   console.log(
-    `  regret of the choice   mean ${percent(regret.mean)}, p90 ${percent(regret.p90)}, worst ${percent(regret.worst)} (${regret.worstAt}), ${regret.questions} questions`,
+    `  regret of the choice     mean ${percent(regret.mean)}, p90 ${percent(regret.p90)}, worst ${percent(regret.worst)} (${regret.worstAt}), ${regret.questions} questions`,
   );
-  console.log(`  error of predictions   median ${percent(error.median)}, p90 ${percent(error.p90)}, worst ${percent(error.worst)} (${error.worstAt})`);
+  for (const [what, { median, p90, worst, worstAt }] of [
+    ["error of predicted runs  ", error],
+    ["error of preparing       ", setupError],
+  ] as const)
+    console.log(`  ${what}median ${percent(median)}, p90 ${percent(p90)}, worst ${percent(worst)} (${worstAt})`);
 }
 
 function printResiduals(timings: readonly Timed[], prices: Prices): void {
   const worst = timings.toSorted((a, b) => Math.abs(errorOf(b, prices)) - Math.abs(errorOf(a, prices))).slice(0, 12);
   console.log("\nlargest residuals");
   printTable(
-    ["question", "method", "measured ms", "predicted ms", "error"],
+    ["question", "method", "processor ms", "predicted ms", "error"],
     worst.map((timed) => [
       timed.question,
       timed.method,
@@ -57,9 +61,11 @@ const recordOf = (timed: Timed, prices: Prices): Record<string, unknown> => ({
   predicted: Number(priceOf(timed.work.run, prices).toPrecision(5)),
   setupNanoseconds: medianSetup(timed),
   setupPredicted: Number(priceOf(timed.work.setup, prices).toPrecision(5)),
-  counts: timed.work.run,
-  setupCounts: timed.work.setup,
+  counts: withoutZeros(timed.work.run),
+  setupCounts: withoutZeros(timed.work.setup),
 });
+
+const withoutZeros = (counts: Counts): Counts => Object.fromEntries(Object.entries(counts).filter(([, count]) => count !== 0));
 
 const profileOf = (host: Host, build: Build, prices: Prices): HardwareProfile => ({
   version: 1,
@@ -89,5 +95,5 @@ for (const build of builds) {
   profiles.push(profileOf(host, build, prices));
   fits.push({ build, prices, fitted, validated, timings: timings.map((timed) => recordOf(timed, prices)) });
 }
-writeResult("fit", host, { seed, passes, fits });
+writeResult("fit", host, { clock: "processor time", seed, passes, fits });
 writeProfiles(profiles);

@@ -20,7 +20,7 @@ if (missing["plain C"]) console.log("plain C is skipped: there is no gcc");
 else console.log(`${versions.gcc}: gcc ${flags.join(" ")}`);
 if (missing["SciPy"]) console.log("SciPy is skipped: there is no python3 with scipy");
 else console.log(`${versions.scipy}: one thread`);
-console.log(`${host.processor}, core ${core}, node ${process.versions.node}; ${rounds} rounds of ${turns} turns\n`);
+console.log(`${host.processor}, core ${core}, node ${process.versions.node}; ${rounds} rounds of ${turns} turns, processor time\n`);
 
 const engine = await createEngine({ build: "simd" });
 const folder = makeWorkFolder();
@@ -53,5 +53,5 @@ printTable(
     verdict,
   ]),
 );
-writeResult("floor", host, { flags, turns, rounds, figures: results, skipped: figures.length - measured.length });
+writeResult("floor", host, { clock: "processor time", flags, turns, rounds, figures: results, skipped: figures.length - measured.length });
 if (results.some(({ verdict }) => verdict === "MISSED")) process.exitCode = 1;

@@ -1,6 +1,7 @@
 import type { Engine, Filter, Kernel, Method, Raster, ResultRaster } from "../../src/index.js";
 import type { Work } from "../../src/planning/method.js";
 import { planesOf } from "../inputs.js";
+import { processorMilliseconds } from "../processorTime.js";
 import { spreadOf } from "../spread.js";
 import type { Question } from "./problems.js";
 import { worksOf } from "./works.js";
@@ -70,24 +71,18 @@ function enter(engine: Engine, question: Question, kernel: Kernel, image: Raster
   return entrant;
 }
 
-/** Processor time of this process in nanoseconds: what other processes take meanwhile does not count. The engine runs on one thread. */
-function processorNanoseconds(): number {
-  const { user, system } = process.cpuUsage();
-  return (user + system) * 1000;
-}
-
 /** Nanoseconds of one run, from a batch of them. */
 function nanosecondsOf({ filter, target, batch }: Entrant, image: Raster): number {
-  const begun = processorNanoseconds();
+  const begun = processorMilliseconds();
   for (let run = 0; run < batch; run += 1) filter.run(image, target);
-  return (processorNanoseconds() - begun) / batch;
+  return ((processorMilliseconds() - begun) * 1e6) / batch;
 }
 
 function setupNanoseconds(engine: Engine, question: Question, method: Method): number {
   const kernel = question.makeKernel();
-  const begun = processorNanoseconds();
+  const begun = processorMilliseconds();
   const filter = engine.prepare(kernel, question.layout, { ...question.options, method });
-  const nanoseconds = processorNanoseconds() - begun;
+  const nanoseconds = (processorMilliseconds() - begun) * 1e6;
   filter.dispose();
   return nanoseconds;
 }
