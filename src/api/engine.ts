@@ -6,7 +6,18 @@ import { problemOf, type Problem, type Request } from "../planning/problem.js";
 import { shippedProfiles } from "../planning/profile.js";
 import type { EngineMemory } from "../runtime/memory.js";
 import type {
-  Build, ConvolveOptions, Engine, EngineOptions, Explanation, Filter, HardwareProfile, Layout, PrepareOptions, Raster, ResultRaster, Samples,
+  Build,
+  ConvolveOptions,
+  Engine,
+  EngineOptions,
+  Explanation,
+  Filter,
+  HardwareProfile,
+  Layout,
+  PrepareOptions,
+  Raster,
+  ResultRaster,
+  Samples,
 } from "../types.js";
 import { PreparedFilter } from "./filter.js";
 import { loadCore, type Core } from "./loading.js";

@@ -22,18 +22,46 @@ function answers(taps: Float64Array): Float32Array {
 
 /** One kernel that each method applies to; integers, so that every method is exact. */
 const kernels = {
-  direct: kernel([[1, 2, 3], [4, 5, 6], [7, 8, 10]]),
-  separable: kernel([[1, 2, -1], [2, 4, -2], [3, 6, -3]]),
-  "running-sum": kernel([[2, 2, 2], [2, 2, 2], [2, 2, 2]]),
-  fft: kernel([[1, 2, 3], [4, 5, 6], [7, 8, 10]]),
+  direct: kernel([
+    [1, 2, 3],
+    [4, 5, 6],
+    [7, 8, 10],
+  ]),
+  separable: kernel([
+    [1, 2, -1],
+    [2, 4, -2],
+    [3, 6, -3],
+  ]),
+  "running-sum": kernel([
+    [2, 2, 2],
+    [2, 2, 2],
+    [2, 2, 2],
+  ]),
+  fft: kernel([
+    [1, 2, 3],
+    [4, 5, 6],
+    [7, 8, 10],
+  ]),
 };
 
 /** Runs every method on a small problem with a known, exact answer; tells the first one that is wrong. */
 export function failedAnswer(routines: Routines, memory: EngineMemory, build: Build): string | undefined {
   for (const plan of methods) {
     const request: Request = {
-      kernel: kernels[plan.name], correlate: false, width, height, channels: 1, sample: "u8", rows: "zero", columns: "zero",
-      extent: "same", region: { x: 0, y: 0, width, height }, method: plan.name, tolerance: 0, alpha: "none", light: "encoded",
+      kernel: kernels[plan.name],
+      correlate: false,
+      width,
+      height,
+      channels: 1,
+      sample: "u8",
+      rows: "zero",
+      columns: "zero",
+      extent: "same",
+      region: { x: 0, y: 0, width, height },
+      method: plan.name,
+      tolerance: 0,
+      alpha: "none",
+      light: "encoded",
       output: { sample: "f32", gain: 1, offset: 0 },
     };
     const installed = install(plan.program(problemOf(request, build, Infinity)), memory, routines);

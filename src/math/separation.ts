@@ -82,7 +82,10 @@ function subtractTerm(rest: Float64Array, { column, row }: SeparableTerm): numbe
  */
 function integerTerm(taps: Float64Array, term: SeparableTerm): SeparableTerm {
   const columns = term.row.length;
-  const pivotRow = Math.max(0, term.column.findIndex((value) => value !== 0));
+  const pivotRow = Math.max(
+    0,
+    term.column.findIndex((value) => value !== 0),
+  );
   const row = integersOf(taps.subarray(pivotRow * columns, (pivotRow + 1) * columns));
   if (!row) return term;
   const pivotColumn = row.findIndex((value) => value !== 0);

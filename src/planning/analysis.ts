@@ -38,4 +38,3 @@ function analyseTaps(kernel: Kernel): KernelAnalysis {
     separation: () => (separation ??= separate(taps, kernel.height, kernel.width, limit)),
   };
 }
-

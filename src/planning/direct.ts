@@ -1,17 +1,13 @@
 import * as field from "../generated/record.js";
 import { outputBound, sumError } from "./accuracy.js";
-import { frameCounts, frameOf, programOf, type Frame } from "./frame.js";
+import { frameCounts, frameOf, programOf } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { correlationTaps, type Problem } from "./problem.js";
-import { blocksOf, ringTable, sweepCalls, sweepStagedRows, sweepSteps } from "./sweeps.js";
+import { blocksOf, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
 
 /** Extended rows in a ring; every tap meets every result: m·n multiply–adds a sample. */
-interface DirectFrame extends Frame {
+interface DirectFrame extends SweepFrame {
   taps: number;
-  ring: number;
-  ringRows: number;
-  table: number;
-  results: number;
 }
 
 function frame(problem: Problem): DirectFrame {
@@ -22,6 +18,7 @@ function frame(problem: Problem): DirectFrame {
   return {
     ...base,
     ringRows,
+    ringStride: base.extendedStride,
     taps: arrangement.take(horizontal.taps * vertical.taps * 4),
     ring: arrangement.take(ringRows * base.extendedStride),
     table: arrangement.take(2 * ringRows * 4),
@@ -59,23 +56,10 @@ export const direct: MethodPlan = {
   arithmetic: () => "float32 sums over all taps, row by row",
 
   program(problem) {
-    const { horizontal, vertical } = problem;
     const layout = frame(problem);
     return programOf(problem, layout, {
-      fields: (job) =>
-        job
-          .pointer(field.TAPS, layout.taps)
-          .integer(field.KERNEL_COLUMNS, horizontal.taps)
-          .integer(field.KERNEL_ROWS, vertical.taps)
-          .pointer(field.ROW_TABLE, layout.table)
-          .integer(field.RING_ROWS, layout.ringRows)
-          .pointer(field.RESULT, layout.results)
-          .integer(field.RESULT_STRIDE, layout.resultStride)
-          .integer(field.RESULT_FLOATS, layout.paddedFloats),
-      tables: [
-        { offset: layout.taps, data: Float32Array.from(correlationTaps(problem)) },
-        { offset: layout.table, data: ringTable(layout.ring, layout.ringRows, layout.extendedStride), addresses: "all" },
-      ],
+      fields: (job) => sweepFields(job, layout).pointer(field.TAPS, layout.taps),
+      tables: [{ offset: layout.taps, data: Float32Array.from(correlationTaps(problem)) }, ringTables(layout, 1)],
       setup: [],
       steps: sweepSteps(problem, layout, "sweepDirect"),
       error: error(problem),

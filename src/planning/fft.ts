@@ -48,7 +48,13 @@ function tilingOf(problem: Problem): Tiling | undefined {
 function frameBytes(problem: Problem): number {
   const { horizontal, vertical, channels } = problem;
   const marks = markRowBytes(problem) * 2 * (vertical.extended + 4096);
-  return frameOf(problem, (affordable) => affordable).arrangement.byteLength + horizontal.taps * vertical.taps * 4 + 400_000 + 8 * horizontal.extended * channels + Math.min(marks, 4_000_000);
+  return (
+    frameOf(problem, (affordable) => affordable).arrangement.byteLength +
+    horizontal.taps * vertical.taps * 4 +
+    400_000 +
+    8 * horizontal.extended * channels +
+    Math.min(marks, 4_000_000)
+  );
 }
 
 /** Only floats can hold NaN or ∞. */
@@ -188,7 +194,8 @@ export const fft: MethodPlan = {
   name: "fft",
 
   applicable: (problem) =>
-    tilingOf(problem) !== undefined || `A kernel of ${problem.horizontal.taps}×${problem.vertical.taps} taps is longer than the longest transform, 4096 points.`,
+    tilingOf(problem) !== undefined ||
+    `A kernel of ${problem.horizontal.taps}×${problem.vertical.taps} taps is longer than the longest transform, 4096 points.`,
 
   work(problem) {
     const { horizontal, vertical, channels } = problem;
@@ -222,15 +229,12 @@ export const fft: MethodPlan = {
   },
 
   program(problem) {
-    const { horizontal, vertical } = problem;
     const layout = frame(problem);
     const { tiling } = layout;
     return programOf(problem, layout, {
       fields(job) {
         job
           .pointer(field.TAPS, layout.taps)
-          .integer(field.KERNEL_COLUMNS, horizontal.taps)
-          .integer(field.KERNEL_ROWS, vertical.taps)
           .pointer(field.ENTERED, layout.entered)
           .pointer(field.RESULT, layout.result)
           .pointer(field.COLUMN_PLAN, layout.columnPlan)

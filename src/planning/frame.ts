@@ -78,7 +78,10 @@ export interface Frame {
   resultStride: number;
   /** Rows that may be staged at a time. */
   stagedRows: number;
-  offsets: Record<"halo" | "rowMap" | "constantPixels" | "constantRow" | "constantColumn" | "curve" | "weightRows" | "weightColumns" | "weights" | "keepRow", number>;
+  offsets: Record<
+    "halo" | "rowMap" | "constantPixels" | "constantRow" | "constantColumn" | "curve" | "weightRows" | "weightColumns" | "weights" | "keepRow",
+    number
+  >;
 }
 
 const curveBytes = (problem: Problem): number => {
@@ -154,6 +157,8 @@ function enterFields(problem: Problem, frame: Frame, job: JobRecord): void {
     .pointer(field.CONSTANT_COLUMN, offsets.constantColumn)
     .integer(field.EXTENDED_COLUMNS, horizontal.extended)
     .integer(field.EXTENDED_ROWS, vertical.extended)
+    .integer(field.KERNEL_COLUMNS, horizontal.taps)
+    .integer(field.KERNEL_ROWS, vertical.taps)
     .float(field.SOURCE_FULL, facts.full)
     .float(field.WORKING_FULL, problem.workingFull);
 }

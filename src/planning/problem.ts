@@ -66,8 +66,7 @@ export interface Problem {
   bytesAvailable: number;
 }
 
-const indexRule = (rule: BorderRule): IndexRule =>
-  typeof rule === "object" || rule === "zero" || rule === "renormalised" ? "outside" : rule;
+const indexRule = (rule: BorderRule): IndexRule => (typeof rule === "object" || rule === "zero" || rule === "renormalised" ? "outside" : rule);
 
 /** Position of result 0 in image coordinates, and results, before a region is cut out. */
 export function extentOf(extent: Extent, samples: number, taps: number, anchor: number): { start: number; count: number } {

@@ -2,22 +2,17 @@ import * as field from "../generated/record.js";
 import { gamma } from "../math/rounding.js";
 import { outputBound, sumError } from "./accuracy.js";
 import { rowStride } from "./arrangement.js";
-import { constantPixels, frameCounts, frameOf, programOf, type Frame } from "./frame.js";
+import { constantPixels, frameCounts, frameOf, programOf } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { correlationTaps, type Problem } from "./problem.js";
 import { sampleFacts } from "./samples.js";
-import { ringTable, sweepCalls, sweepStagedRows, sweepSteps } from "./sweeps.js";
+import { ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
 
 /** A window of rows in a ring and one row of sums: a cost that does not depend on the kernel's size. */
-interface RunningSumFrame extends Frame {
+interface RunningSumFrame extends SweepFrame {
   tap: number;
-  ringRows: number;
-  ringStride: number;
-  ring: number;
-  table: number;
   entered: number;
   sums: number;
-  results: number;
   /** Integer sums alone: samples of a raw row, and the one that stands outside by row. */
   rawSamples: number;
   rawConstant: number;
@@ -98,17 +93,10 @@ export const runningSum: MethodPlan = {
     const integers = integerSums(problem);
     return programOf(problem, layout, {
       fields: (job) =>
-        job
+        sweepFields(job, layout)
           .pointer(field.TAPS, layout.tap)
-          .integer(field.KERNEL_COLUMNS, horizontal.taps)
-          .integer(field.KERNEL_ROWS, vertical.taps)
-          .pointer(field.ROW_TABLE, layout.table)
-          .integer(field.RING_ROWS, layout.ringRows)
           .pointer(field.ENTERED, layout.entered)
           .integer(field.ENTERED_STRIDE, layout.extendedStride)
-          .pointer(field.RESULT, layout.results)
-          .integer(field.RESULT_STRIDE, layout.resultStride)
-          .integer(field.RESULT_FLOATS, layout.paddedFloats)
           .integer(field.COLUMN_PHASE, phase(horizontal.first, horizontal.taps))
           .integer(field.ROW_PHASE, phase(vertical.first, vertical.taps))
           .pointer(field.SUMS, layout.sums)
@@ -116,7 +104,7 @@ export const runningSum: MethodPlan = {
           .pointer(field.RAW_CONSTANT, layout.rawConstant),
       tables: [
         { offset: layout.tap, data: Float32Array.of(correlationTaps(problem)[0]!) },
-        { offset: layout.table, data: ringTable(layout.ring, layout.ringRows, layout.ringStride), addresses: "all" },
+        ringTables(layout, 1),
         ...(integers ? [{ offset: layout.rawConstant, data: rawConstantRow(problem, layout) }] : []),
       ],
       setup: [],

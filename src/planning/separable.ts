@@ -2,21 +2,17 @@ import * as field from "../generated/record.js";
 import { absoluteSum, type SeparableTerm } from "../math/separation.js";
 import { integerResults, outputBound, outputScale, sumError } from "./accuracy.js";
 import { mostTerms } from "./analysis.js";
-import { frameCounts, frameOf, programOf, type Frame } from "./frame.js";
+import { frameCounts, frameOf, programOf } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { inCorrelationOrder, type Problem } from "./problem.js";
-import { blocksOf, ringTable, sweepCalls, sweepStagedRows, sweepSteps } from "./sweeps.js";
+import { blocksOf, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
 
 /** Row results in one ring a term, then columns: r·(m + n) multiply–adds a sample for a sum of r separable terms. */
-interface SeparableFrame extends Frame {
+interface SeparableFrame extends SweepFrame {
   terms: number;
   rowTaps: number;
   columnTaps: number;
-  rings: number;
-  ringRows: number;
-  table: number;
   entered: number;
-  results: number;
 }
 
 /** Σ|taps left out| that the caller's tolerance allows, and that double precision leaves anyway (0). */
@@ -49,9 +45,10 @@ function frame(problem: Problem): SeparableFrame {
     ...base,
     terms,
     ringRows,
+    ringStride: base.resultStride,
     rowTaps: arrangement.take(terms * horizontal.taps * 4),
     columnTaps: arrangement.take(terms * vertical.taps * 4),
-    rings: arrangement.take(terms * ringRows * base.resultStride),
+    ring: arrangement.take(terms * ringRows * base.resultStride),
     table: arrangement.take(terms * 2 * ringRows * 4),
     entered: arrangement.take(2 * base.extendedStride + 8),
     results: arrangement.take(2 * base.resultStride),
@@ -113,34 +110,21 @@ export const separable: MethodPlan = {
   terms: (problem) => termsOf(problem).length,
 
   program(problem) {
-    const { horizontal, vertical } = problem;
     const layout = frame(problem);
-    const tables = Array.from({ length: layout.terms }, (_, term) => ({
-      offset: layout.table + term * 2 * layout.ringRows * 4,
-      data: ringTable(layout.rings + term * layout.ringRows * layout.resultStride, layout.ringRows, layout.resultStride),
-      addresses: "all" as const,
-    }));
     const enteredRows = Int32Array.of(layout.entered, layout.entered + layout.extendedStride);
     return programOf(problem, layout, {
       fields: (job) =>
-        job
+        sweepFields(job, layout)
           .pointer(field.TAPS, layout.rowTaps)
           .pointer(field.COLUMN_TAPS, layout.columnTaps)
-          .integer(field.KERNEL_COLUMNS, horizontal.taps)
-          .integer(field.KERNEL_ROWS, vertical.taps)
           .integer(field.TERMS, layout.terms)
-          .pointer(field.ROW_TABLE, layout.table)
-          .integer(field.RING_ROWS, layout.ringRows)
           .pointer(field.ENTERED, layout.entered)
-          .integer(field.ENTERED_STRIDE, layout.extendedStride)
-          .pointer(field.RESULT, layout.results)
-          .integer(field.RESULT_STRIDE, layout.resultStride)
-          .integer(field.RESULT_FLOATS, layout.paddedFloats),
+          .integer(field.ENTERED_STRIDE, layout.extendedStride),
       tables: [
         { offset: layout.rowTaps, data: stacked(problem, "row") },
         { offset: layout.columnTaps, data: stacked(problem, "column") },
         { offset: layout.entered + 2 * layout.extendedStride, data: enteredRows, addresses: "all" },
-        ...tables,
+        ringTables(layout, layout.terms),
       ],
       setup: [],
       steps: sweepSteps(problem, layout, "sweepSeparable"),

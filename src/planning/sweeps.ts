@@ -1,6 +1,38 @@
-import type { RoutineName, Step } from "../runtime/program.js";
+import * as field from "../generated/record.js";
+import type { RoutineName, Step, Table } from "../runtime/program.js";
 import { writing, type Frame } from "./frame.js";
 import type { Problem } from "./problem.js";
+import type { JobRecord } from "./record.js";
+
+/** What every sweep has: a ring of rows with its pointer table, and result rows. */
+export interface SweepFrame extends Frame {
+  ring: number;
+  ringRows: number;
+  ringStride: number;
+  /** Pointer tables, one a ring. */
+  table: number;
+  results: number;
+}
+
+/** The fields that every sweep reads. */
+export function sweepFields(job: JobRecord, layout: SweepFrame): JobRecord {
+  return job
+    .pointer(field.ROW_TABLE, layout.table)
+    .integer(field.RING_ROWS, layout.ringRows)
+    .pointer(field.RESULT, layout.results)
+    .integer(field.RESULT_STRIDE, layout.resultStride)
+    .integer(field.RESULT_FLOATS, layout.paddedFloats);
+}
+
+/** Pointer tables of `rings` rings that lie one after the other: the rows of each twice over, so that any stretch of them lies side by side. */
+export function ringTables(layout: SweepFrame, rings: number): Table {
+  const { ring, ringRows, ringStride, table } = layout;
+  const pointers = Array.from({ length: rings * 2 * ringRows }, (_, k) => {
+    const inRing = k % (2 * ringRows);
+    return ring + ((k - inRing) / 2 + (inRing % ringRows)) * ringStride;
+  });
+  return { offset: table, data: Int32Array.from(pointers), addresses: "all" };
+}
 
 /**
  * Multiply–adds that one call does at most, so that it lasts a few milliseconds: 2 ms at the 8 per nanosecond that SIMD builds reach
@@ -35,11 +67,6 @@ export function sweepSteps(problem: Problem, frame: Frame, routine: RoutineName)
     steps.push(writing(problem, step, { first: from, count: to - from }));
   }
   return steps;
-}
-
-/** Pointer table of a ring: its rows twice over, so that any stretch of them lies side by side. */
-export function ringTable(offset: number, rows: number, stride: number): Int32Array<ArrayBuffer> {
-  return Int32Array.from({ length: 2 * rows }, (_, k) => offset + (k % rows) * stride);
 }
 
 /** Blocks of 2 × 16 results, the tail counted as one. */

@@ -24,7 +24,7 @@ function stageRows(memory: EngineMemory, intake: Intake, source: Required<Pick<R
   if (rowSamples === 0) return;
   const rowBytes = rowSamples * data.BYTES_PER_ELEMENT;
   const left = intake.firstColumn * intake.channels;
-  for (let k = 0; k < rows.count; ) {
+  for (let k = 0; k < rows.count;) {
     const row = intake.rowMap[rows.first + k]!;
     let run = 1;
     if (stride === rowSamples) while (k + run < rows.count && row >= 0 && intake.rowMap[rows.first + k + run] === row + run) run++;

@@ -157,10 +157,17 @@ export class EngineMemory {
 function memoryError(code: "memory-limit" | "memory-exhausted", needed: number, available: number, cause?: unknown): ConvolutionError {
   const mebibytes = (bytes: number): string => `${(bytes / 1048576).toFixed(2)} MiB`;
   const who = code === "memory-limit" ? "The engine's memoryLimit leaves" : "The host gives";
-  const advice = code === "memory-limit" ? "Raise memoryLimit, dispose filters that are not needed, or filter by regions." : "Dispose filters that are not needed, or filter by regions.";
-  return new ConvolutionError(code, `The filter needs ${mebibytes(needed)} (${needed} bytes) in one piece. ${who} ${mebibytes(available)} (${available} bytes). ${advice}`, {
-    expected: `at most ${available} bytes`,
-    received: needed,
-    cause,
-  });
+  const advice =
+    code === "memory-limit"
+      ? "Raise memoryLimit, dispose filters that are not needed, or filter by regions."
+      : "Dispose filters that are not needed, or filter by regions.";
+  return new ConvolutionError(
+    code,
+    `The filter needs ${mebibytes(needed)} (${needed} bytes) in one piece. ${who} ${mebibytes(available)} (${available} bytes). ${advice}`,
+    {
+      expected: `at most ${available} bytes`,
+      received: needed,
+      cause,
+    },
+  );
 }

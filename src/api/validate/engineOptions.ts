@@ -20,7 +20,10 @@ const notYet: Record<string, string> = {
 function refuseNotYet(options: Record<string, unknown>): void {
   for (const [name, advice] of Object.entries(notYet)) {
     if (options[name] === undefined) continue;
-    throw new ConvolutionError("not-supported", `createEngine: option ${name} (${String(options[name])}) is not supported. ${advice}`, { expected: "no such option", received: options[name] });
+    throw new ConvolutionError("not-supported", `createEngine: option ${name} (${String(options[name])}) is not supported. ${advice}`, {
+      expected: "no such option",
+      received: options[name],
+    });
   }
   if (options["build"] !== "relaxed-simd") return;
   const message = 'createEngine: build "relaxed-simd" is not supported. Use "auto", "simd" or "scalar".';
@@ -62,7 +65,8 @@ function checkedProfile(given: unknown): HardwareProfile {
   const prices: Record<string, number> = {};
   for (const name of operationNames) {
     const price = Object.hasOwn(nanoseconds, name) ? (nanoseconds as Record<string, unknown>)[name] : undefined;
-    if (typeof price !== "number" || !Number.isFinite(price) || price < 0) refuseProfile(`nanoseconds.${name} is ${String(price)}`, "a finite number, 0 or more");
+    if (typeof price !== "number" || !Number.isFinite(price) || price < 0)
+      refuseProfile(`nanoseconds.${name} is ${String(price)}`, "a finite number, 0 or more");
     prices[name] = price;
   }
   return { version, host: String(host), build, date: String(date), nanoseconds: prices };

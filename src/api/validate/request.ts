@@ -74,7 +74,10 @@ function wholeOutput(where: string, extent: Extent, shape: ImageShape, kernel: K
   if (width > 0 && height > 0) return { x: 0, y: 0, width, height };
   const sizes = `Kernel ${kernel.width}×${kernel.height} does not fit into image ${shape.width}×${shape.height}`;
   const message = `${where}: ${sizes}: extent "valid" would have no samples. Use extent "same", or a kernel of at most ${shape.width}×${shape.height}.`;
-  throw new ConvolutionError("empty-result", message, { expected: `a kernel of at most ${shape.width}×${shape.height}`, received: `${kernel.width}×${kernel.height}` });
+  throw new ConvolutionError("empty-result", message, {
+    expected: `a kernel of at most ${shape.width}×${shape.height}`,
+    received: `${kernel.width}×${kernel.height}`,
+  });
 }
 
 function checkedRegion(where: string, region: unknown, whole: Region): Region {
@@ -138,7 +141,11 @@ export function checkedRequest(where: string, kernelGiven: unknown, shape: Image
     region: checkedRegion(where, options["region"], wholeOutput(where, extent, shape, kernel, reversedNot)),
     method: wordOr(where, "method", options["method"], methodNames, "auto"),
     tolerance:
-      tolerance === undefined ? (output.sample === "u8" ? 1 / 16 : 0) : checkedNumber(where, "tolerance", tolerance, { what: "a number of levels, 0 or more", least: 0 }),
+      tolerance === undefined
+        ? output.sample === "u8"
+          ? 1 / 16
+          : 0
+        : checkedNumber(where, "tolerance", tolerance, { what: "a number of levels, 0 or more", least: 0 }),
     alpha: checkedAlpha(where, options["alpha"], shape.channels, kernel),
     light: wordOr(where, "light", options["light"], lights, "encoded"),
     output,

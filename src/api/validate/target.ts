@@ -27,7 +27,11 @@ function overlap(a: ArrayBufferView, b: ArrayBufferView): boolean {
  *
  * @throws ConvolutionError `invalid-target`, `overlapping-target`, and those of a raster
  */
-export function checkedTarget(target: unknown, source: CheckedRaster, result: { width: number; height: number; channels: 1 | 2 | 3 | 4; sample: SampleType }): CheckedRaster {
+export function checkedTarget(
+  target: unknown,
+  source: CheckedRaster,
+  result: { width: number; height: number; channels: 1 | 2 | 3 | 4; sample: SampleType },
+): CheckedRaster {
   const checked = checkedRaster("run: target", target);
   const same = checked.width === result.width && checked.height === result.height && checked.channels === result.channels && checked.sample === result.sample;
   if (!same) {
