@@ -1,3 +1,4 @@
+import { code as simdCode } from "../../src/generated/simd.js";
 import { describe, expect, test } from "vitest";
 import { createEngine, delta, type Raster, type SampleType } from "../../src/index.js";
 import { applicable, run } from "../support/answers.js";
@@ -109,4 +110,23 @@ test("auto takes SIMD where the host has it; another build only by name", async 
   expect(() => Object.assign(automatic, { build: "other" })).toThrow(TypeError);
   automatic.dispose();
   scalar.dispose();
+});
+
+test("a compiled module of the caller's is used instead of the bundled one", async () => {
+  const bytes = Uint8Array.from(atob(simdCode), (character) => character.charCodeAt(0));
+  const own = await createEngine({ module: new WebAssembly.Module(bytes) });
+  const image = noiseImage("u8", 30, 20, 4, 5);
+  expect(own.convolve(image, smoothing).data).toEqual(engine.convolve(image, smoothing).data);
+  own.dispose();
+});
+
+test("an engine of another build does not disturb the first, and importing has no side effects on globals", async () => {
+  const before = Object.keys(globalThis).toSorted();
+  const image = noiseImage("u8", 30, 20, 4, 5);
+  const first = engine.convolve(image, smoothing).data;
+  const other = await createEngine({ build: "scalar" });
+  other.convolve(image, smoothing);
+  other.dispose();
+  expect(engine.convolve(image, smoothing).data).toEqual(first);
+  expect(Object.keys(globalThis).toSorted()).toEqual(before);
 });
