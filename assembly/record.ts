@@ -124,7 +124,7 @@ export const MARKS = 272;
 export const MARK_STRIDE = 276;
 export const MARK_COUNTS = 280;
 export const MARK_ROW = 284;
-/** f32: 1 ÷ (tile rows · tile columns). */
+/** f32: 1 ÷ (tile rows · tile columns), times 2²⁰ for float samples (see HEADROOM in fft/strips). */
 export const SCALE = 288;
 
 export const RECORD_BYTES = 304;

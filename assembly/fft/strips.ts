@@ -1,5 +1,5 @@
 import { enterRow } from "../enter";
-import { anyNonFinite, deinterleave4, laneBytes, loadLanes, storeLanes } from "../lanes";
+import { anyNonFinite, deinterleave4, laneBytes, loadLanes, multiply, splat, storeLanes } from "../lanes";
 import { assertEnterStrip, assertLeaveStrip } from "../promises";
 import {
   CHANNELS, ENTERED, EXTENDED_COLUMNS, EXTENDED_ROWS, KERNEL_COLUMNS, KERNEL_ROWS, MARKS, MARK_COUNTS, MARK_ROW, MARK_STRIDE, OUTPUT_COLUMNS,
@@ -35,8 +35,14 @@ function markCount(job: usize, row: i32, half: i32): usize {
   return load<usize>(job, MARK_COUNTS) + (<usize>(half * load<i32>(job, TILE_ROWS) + row) << 2);
 }
 
-/** Sets non-finite floats of an entered row to 0 and marks where they stood. A transform would carry them to the whole tile. */
-function markNonFinite<V>(job: usize, entered: usize, floats: i32, row: i32, half: i32): void {
+/** 2⁻²⁰: samples as large as floats can be still have a finite sum over a tile; the spectrum makes up for it (see SCALE). */
+const HEADROOM: f32 = 9.5367431640625e-7;
+
+/**
+ * Makes an entered row of floats fit for a transform, which would carry what is not finite to the whole tile: sets it to 0 and marks
+ * where it stood, and scales the rest down by a power of two.
+ */
+function tameFloats<V>(job: usize, entered: usize, floats: i32, row: i32, half: i32): void {
   const marks = markRow(job, row, half);
   let count = 0;
   memory.fill(marks, 0, load<usize>(job, MARK_STRIDE));
@@ -52,6 +58,9 @@ function markNonFinite<V>(job: usize, entered: usize, floats: i32, row: i32, hal
     }
   }
   store<i32>(markCount(job, row, half), count);
+  const scale = splat<V>(HEADROOM);
+  const end = entered + (<usize>floats << 2);
+  for (let p = entered; p < end; p += laneBytes<V>()) storeLanes<V>(p, multiply<V>(scale, loadLanes<V>(p)));
 }
 
 /** Spreads an entered row over the planes of its channels, zeros behind it. */
@@ -97,7 +106,7 @@ export function enterStrip<V>(job: usize, from: i32, to: i32, strip: i32): void 
       continue;
     }
     enterRow<V>(job, entered, top + row, load<usize>(job, STAGING) + <usize>(row - from) * load<usize>(job, STAGING_STRIDE));
-    if (load<usize>(job, MARKS)) markNonFinite<V>(job, entered, load<i32>(job, EXTENDED_COLUMNS) * load<i32>(job, CHANNELS), row, half);
+    if (load<usize>(job, MARKS)) tameFloats<V>(job, entered, load<i32>(job, EXTENDED_COLUMNS) * load<i32>(job, CHANNELS), row, half);
     spread<V>(job, entered, row, half);
   }
 }

@@ -29,6 +29,9 @@ interface FftFrame extends Frame {
   markRow: number;
 }
 
+/** 2²⁰: what float samples are scaled down by on their way into the planes. */
+const headroom = 1_048_576;
+
 /** Longest transform's points: one call transforms about this many weighted points. */
 const pointsPerCall = 1_500_000;
 
@@ -249,7 +252,7 @@ export const fft: MethodPlan = {
           .pointer(field.SPECTRUM, layout.spectrum)
           .pointer(field.ROW_SCRATCH, layout.scratch)
           .integer(field.STRIP_ROWS, tiling.stripRows)
-          .float(field.SCALE, 1 / (tiling.rows * tiling.columns));
+          .float(field.SCALE, (marksNeeded(problem) ? headroom : 1) / (tiling.rows * tiling.columns));
         if (!marksNeeded(problem)) return;
         job
           .pointer(field.MARKS, layout.marks)

@@ -78,7 +78,7 @@ export const separable: MethodPlan = {
   applicable(problem) {
     if (termsNeeded(problem) !== undefined) return true;
     const { residuals } = problem.analysis.separation();
-    const left = (residuals.at(-1)! * outputScale(problem) * problem.workingFull).toPrecision(2);
+    const left = Number((residuals.at(-1)! * outputScale(problem) * problem.workingFull).toPrecision(2));
     return `The taps are no sum of at most ${Math.min(mostTerms, residuals.length - 1)} separable terms: ${left} levels would be left out, the tolerance is ${problem.request.tolerance}.`;
   },
 
