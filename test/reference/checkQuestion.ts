@@ -25,8 +25,9 @@ function checkCandidate(build: Build, question: Question, candidate: Candidate, 
     return undefined;
   }
   const renormalised = JSON.stringify(question.options?.border ?? "").includes("renormalised");
-  // Division by a denormal weight that alone fell inside leaves no finite bound.
-  if (errorBound === undefined || !(errorBound >= 0) || (errorBound === Infinity && !renormalised))
+  // Division by a weight so small that its contributions may be left out leaves no finite bound.
+  const weightless = renormalised || Math.abs(question.kernel.sum) < 2 ** -100;
+  if (errorBound === undefined || !(errorBound >= 0) || (errorBound === Infinity && !weightless))
     throw new Error(`${build} ${method}: errorBound ${errorBound}`);
   const result = run(build, question, method);
   const disagreement = judged.disagreement(result, errorBound);
