@@ -4,7 +4,6 @@ import { choose, type Choice } from "../planning/choose.js";
 import { explanationOf } from "../planning/explanation.js";
 import { problemOf, type Problem, type Request } from "../planning/problem.js";
 import { shippedProfiles } from "../planning/profile.js";
-import type { EngineMemory } from "../runtime/memory.js";
 import type {
   Build,
   ConvolveOptions,
@@ -96,13 +95,6 @@ class ConvolutionEngine implements Engine {
   }
 }
 
-const memories = new WeakMap<Engine, EngineMemory>();
-
-/** The memory of an engine, for tests and measurements of what it holds. */
-export function memoryOf(engine: Engine): EngineMemory {
-  return memories.get(engine)!;
-}
-
 /**
  * Loads the core and makes an engine of it. Nothing is shared between engines.
  *
@@ -116,7 +108,5 @@ export async function createEngine(options?: EngineOptions): Promise<Engine> {
   const checked = checkedEngineOptions(options);
   const core = await loadCore(checked);
   const shipped = shippedProfiles.find(({ build }) => build === core.build)!;
-  const engine = new ConvolutionEngine(core, checked.profile ? profileForBuild(checked.profile, core.build) : shipped);
-  memories.set(engine, core.memory);
-  return engine;
+  return new ConvolutionEngine(core, checked.profile ? profileForBuild(checked.profile, core.build) : shipped);
 }

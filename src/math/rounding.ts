@@ -13,7 +13,7 @@ export function gamma(roundings: number): number {
 }
 
 /** ⌈log₂ n⌉ for an integer n ≥ 1. */
-export function ceilLog2(n: number): number {
+function ceilLog2(n: number): number {
   let power = 0;
   for (let reached = 1; reached < n; reached *= 2) power++;
   return power;

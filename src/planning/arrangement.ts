@@ -1,7 +1,7 @@
 /** Every block starts on a cache line; so does every filter's memory. */
-export const alignment = 64;
+const alignment = 64;
 
-export function alignedTo(bytes: number, multiple: number): number {
+function alignedTo(bytes: number, multiple: number): number {
   return Math.ceil(bytes / multiple) * multiple;
 }
 

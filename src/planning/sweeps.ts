@@ -41,7 +41,7 @@ export function ringTables(layout: SweepFrame, rings: number): Table {
 const operationsPerCall = 16_000_000;
 
 /** Result rows of one call: an even number, as sweeps go two rows at a time. */
-export function sliceRows(problem: Problem, operationsPerRow: number, affordable: number): number {
+function sliceRows(problem: Problem, operationsPerRow: number, affordable: number): number {
   const bounded = Math.min(affordable, operationsPerCall / Math.max(1, operationsPerRow), problem.vertical.count + 1);
   return Math.max(2, 2 * Math.floor(bounded / 2));
 }

@@ -43,7 +43,7 @@ function takeRows(memory: EngineMemory, target: Required<Pick<Raster, "data" | "
 type Plane = Required<Pick<Raster, "data" | "stride">>;
 
 /** One step: rows in, the call, rows out. */
-export function executeStep({ program, address }: Installed, step: Step, memory: EngineMemory, routines: Routines, source: Plane, target: Plane): void {
+function executeStep({ program, address }: Installed, step: Step, memory: EngineMemory, routines: Routines, source: Plane, target: Plane): void {
   const { intake, outlet } = program;
   if (step.read) stageRows(memory, intake, source, step.read, address + intake.offset);
   if (step.keep) stageRows(memory, intake, source, step.keep, address + intake.keepOffset);

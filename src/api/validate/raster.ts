@@ -2,7 +2,7 @@ import { ConvolutionError } from "../../errors.js";
 import type { Channels, Raster, Samples, SampleType } from "../../types.js";
 
 /** The longest side of an image: index maps stay small, and indices exact. */
-export const longestSide = 16_777_216;
+const longestSide = 16_777_216;
 
 /** A raster whose every field is there and right. */
 export interface CheckedRaster {

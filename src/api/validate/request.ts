@@ -7,7 +7,7 @@ import type { Alpha, BorderRule, Channels, Extent, Light, Method, Region, Sample
 import { checkedBorder } from "./border.js";
 import { checkedChannels, checkedSide } from "./raster.js";
 
-export const sampleNames = ["u8", "u16", "f32"] as const satisfies SampleType[];
+const sampleNames = ["u8", "u16", "f32"] as const satisfies SampleType[];
 const extents = ["same", "full", "valid"] as const satisfies Extent[];
 const methodNames = ["auto", "direct", "separable", "fft", "running-sum"] as const satisfies (Method | "auto")[];
 const alphas = ["straight", "premultiplied", "keep", "none"] as const satisfies Alpha[];
