@@ -18,8 +18,8 @@ export interface Choice {
   candidates: Candidate[];
 }
 
-/** Two costs nearer than this are a tie: no profile predicts better. */
-const tie = 0.01;
+/** Two costs nearer than a hundredth, or than a microsecond, are a tie: no profile predicts better. */
+const tie = { share: 0.01, milliseconds: 0.001 };
 
 function price(plan: MethodPlan, problem: Problem, profile: HardwareProfile): Candidate {
   const applies = plan.applicable(problem);
@@ -44,7 +44,7 @@ const cost = (candidate: Candidate, once: boolean): number => candidate.millisec
 /** The cheaper one; of two that tie the one with the smaller error bound, then with fewer bytes. */
 function better(a: Priced, b: Priced, once: boolean): Priced {
   const [costA, costB] = [cost(a.candidate, once), cost(b.candidate, once)];
-  if (Math.abs(costA - costB) > tie * Math.min(costA, costB)) return costA < costB ? a : b;
+  if (Math.abs(costA - costB) > Math.max(tie.milliseconds, tie.share * Math.min(costA, costB))) return costA < costB ? a : b;
   if (a.candidate.errorBound !== b.candidate.errorBound) return a.candidate.errorBound! < b.candidate.errorBound! ? a : b;
   return a.candidate.bytes! <= b.candidate.bytes! ? a : b;
 }
