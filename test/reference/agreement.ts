@@ -67,10 +67,33 @@ function allowedRange(setting: Setting, defined: Defined, index: number, errorBo
     return [exact - 2 * u * Math.abs(exact), exact + 2 * u * Math.abs(exact)];
   }
   if (plain && !setting.linear) return [exact - bound, exact + bound];
-  const inSums = gain === 0 ? 0 : bound / Math.abs(gain) + leftOut;
+  // The gain does not touch alpha, whose bound is in its own output units.
+  if (channel === channels - 1 && alpha !== "none") {
+    const divisor = alpha === "straight" ? Math.abs(setting.sum) : 1;
+    return alphaRange(setting, exact, errorBound * defined.magnitude + (leftOut / full / divisor) * fullValue[setting.output]);
+  }
+  const inSums = errorOfSums(setting, errorBound * defined.magnitude) + leftOut;
   const values = corners(setting, defined, start, channel, inSums);
   const rounding = leaveRoundings * u * Math.max(Math.abs(offset), ...values.map((value) => Math.abs(value - offset)));
   return [Math.min(...values) - rounding, Math.max(...values) + rounding];
+}
+
+/** The bound holds for colours, which the gain scales, and for filtered alpha, which goes to the output's full value: the smaller error of the sums. */
+function errorOfSums({ alpha, gain, input, output, sum }: Setting, bound: number): number {
+  const ofColours = gain === 0 ? Infinity : bound / Math.abs(gain);
+  const alphaScale = fullValue[output] / fullValue[input] / (alpha === "straight" ? Math.abs(sum) : 1);
+  const ofAlpha = alpha === "straight" || alpha === "premultiplied" ? bound / alphaScale : Infinity;
+  const error = Math.min(ofColours, ofAlpha);
+  return error === Infinity ? 0 : error;
+}
+
+/** Within the bound; and opaque, where what was computed may lie within its own bound of that. */
+function alphaRange(setting: Setting, exact: number, bound: number): [number, number] {
+  const rounding = leaveRoundings * u * Math.abs(exact);
+  const opaque = fullValue[setting.output];
+  const mayBeOpaque = setting.alpha === "straight" && Math.abs(exact - opaque) <= 2 * bound;
+  const [low, high] = [exact - bound - rounding, exact + bound + rounding];
+  return mayBeOpaque ? [Math.min(low, opaque), Math.max(high, opaque)] : [low, high];
 }
 
 function corners(setting: Setting, defined: Defined, start: number, channel: number, inSums: number): number[] {

@@ -74,7 +74,7 @@ export function posed(made: Recipe): Question {
   const alpha = alphaOf(made, taps);
   if (alpha !== undefined) options.alpha = alpha;
   if (made.light !== undefined) options.light = made.light;
-  const output = outputOf(alpha === "none" || made.channels % 2 === 1 || made.gain !== 0 ? made : { ...made, gain: 0.001 });
+  const output = outputOf(made);
   if (Object.keys(output).length > 0) options.output = output;
   if (made.tolerance !== undefined) options.tolerance = made.tolerance;
   const region = regionOf(made, extent);
