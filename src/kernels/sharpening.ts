@@ -46,7 +46,7 @@ export function sharpen(options: SharpenOptions | number = {}): Kernel {
  * @throws ConvolutionError `unknown-option`, `invalid-number`, `unknown-value` (sampling), `invalid-kernel` (too many taps)
  * Source  common practice
  * @example
- * engine.convolve(photo, unsharp({ sigma: 2, amount: 0.8 }));
+ * engine.convolve(image, unsharp({ sigma: 2, amount: 0.8 }));
  */
 export function unsharp(options: UnsharpOptions | number): Kernel {
   const { amount: givenAmount, ...blur } = asOptions<UnsharpOptions>("unsharp", options, "sigma");
