@@ -3,7 +3,7 @@ import { code } from "../../src/generated/debug.js";
 import { createEngine, type Method } from "../../src/index.js";
 import { fc, posed, problems } from "../reference/problems.js";
 import { engines } from "../support/engines.js";
-import { firstDifference } from "../support/methods.js";
+import { firstDifference } from "./differences.js";
 import { layoutOf, type Question } from "../support/questions.js";
 
 const module = await WebAssembly.compile(Buffer.from(code, "base64"));

@@ -1,24 +1,9 @@
 import { describe, expect, test } from "vitest";
 import { gamma, transformError } from "../../src/math/rounding.js";
-import { rootsOfUnity } from "../../src/math/rootsOfUnity.js";
 import { radicesOf, smoothMultiplesOfFour } from "../../src/math/smoothNumbers.js";
 import { noise } from "../support/noise.js";
 import { bench, forms, inner } from "./debugCore.js";
-
-/** Plan and turns in memory, as fft/transform.ts draws them, for radices in any order. */
-function placePlan(radices: readonly number[]): number {
-  const points = radices.reduce((product, radix) => product * radix, 1);
-  const { cosine, sine } = rootsOfUnity(points);
-  const entries = [radices.length];
-  let span = points;
-  for (const radix of radices) {
-    const turns: number[] = [];
-    for (let j = 0; j < span / radix; j++) for (let k = 1; k < radix; k++) turns.push(cosine[(j * k * points) / span]!, -sine[(j * k * points) / span]!);
-    entries.push(radix, span, bench.place(Float32Array.from(turns)));
-    span /= radix;
-  }
-  return bench.place(Int32Array.from(entries));
-}
+import { placePlan } from "./transformPlan.js";
 
 /** Where the forward transform leaves frequency k: its digits, by the radices, turned round. */
 function placeOf(k: number, radices: readonly number[]): number {
@@ -97,7 +82,7 @@ const norm = (...parts: ArrayLike<number>[]): number => Math.sqrt(parts.reduce((
 /** Forward and back in one form; what comes between and after. */
 function transformed(radices: readonly number[], columns: Columns, wide: boolean) {
   bench.clear();
-  const plan = placePlan(radices);
+  const plan = placePlan(bench, radices);
   const { base, stride, apart, re, im, untouched } = laid(columns);
   const vectors = columns.floats / (wide ? 4 : 1);
   inner.forwardTransform(wide, plan, base, stride, apart, vectors);
