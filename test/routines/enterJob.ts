@@ -11,12 +11,19 @@ export const sampleTypes = [
 
 export const factsOf = (sample: SampleType) => sampleTypes.find((facts) => facts.sample === sample)!;
 
+/** A list of samples of a type, by index. */
+export function samplesBy(sample: SampleType, count: number, valueOf: (index: number) => number): Exclude<Samples, Uint8ClampedArray> {
+  const samples = new (factsOf(sample).make)(count);
+  for (let index = 0; index < count; index++) samples[index] = valueOf(index);
+  return samples;
+}
+
 /** Samples over the whole range of a type; floats in −1 … 1. */
 export function samplesOf(sample: SampleType, count: number, seed: number): Exclude<Samples, Uint8ClampedArray> {
   const next = noise(seed);
   next();
-  const { make, full } = factsOf(sample);
-  return make.from({ length: count }, () => (sample === "f32" ? 2 * next() - 1 : Math.floor(next() * (full + 1))));
+  const { full } = factsOf(sample);
+  return samplesBy(sample, count, () => (sample === "f32" ? 2 * next() - 1 : Math.floor(next() * (full + 1))));
 }
 
 /** How samples of one type enter, and how many columns of which kind make up an extended row. */
@@ -58,9 +65,9 @@ function haloOf(columns: readonly number[], first: number, count: number): Int32
 /** Writes the fields of a job that enter reads. Constant pixels hold 1, 2, … (outside by row) and 11, 12, … (outside by column). */
 export function enterFields(bench: Bench, job: Job, stated: Entering): Job {
   const { sample, channels, columns, rows, sourceColumns, premultiply = false, decode = false } = stated;
-  const { code, full, make } = factsOf(sample);
+  const { code, full } = factsOf(sample);
   const { first, count } = stretchOf(columns);
-  const pixels = make.from({ length: 2 * channels }, (_, k) => (k < channels ? 1 + k : 11 + k - channels));
+  const pixels = samplesBy(sample, 2 * channels, (k) => (k < channels ? 1 + k : 11 + k - channels));
   const halo = haloOf(columns, first, count);
   return job
     .integer(field.SOURCE_KIND, code)

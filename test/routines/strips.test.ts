@@ -1,4 +1,4 @@
-import { expect, test } from "vitest";
+import { test } from "vitest";
 import * as field from "../../src/generated/record.js";
 import { transformError } from "../../src/math/rounding.js";
 import { radicesOf } from "../../src/math/smoothNumbers.js";

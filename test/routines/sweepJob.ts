@@ -1,7 +1,7 @@
 import * as field from "../../src/generated/record.js";
 import type { SampleType } from "../../src/types.js";
 import type { Bench, Core, Job } from "./bench.js";
-import { enterFields, extendedRow, factsOf, type Entering } from "./enterJob.js";
+import { enterFields, extendedRow, factsOf, samplesBy, type Entering } from "./enterJob.js";
 
 /** A problem for sweeps: valid results of an extended image, written as floats. */
 export interface Sweeping extends Entering {
@@ -61,7 +61,7 @@ export function stage(bench: Bench, job: Job, stated: Sweeping, first: number, c
   for (let k = 0; k < count; k++) {
     const source = stated.rows[first + k] ?? -1;
     if (source < 0) continue;
-    const row = make.from({ length: rowSamples }, (_, x) => stated.samples[source * rowSamples + x]!);
+    const row = samplesBy(stated.sample, rowSamples, (x) => stated.samples[source * rowSamples + x]!);
     new make(bench.memory.buffer, staging + ((k * rowSamples) << code), rowSamples).set(row);
   }
 }
