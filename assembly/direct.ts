@@ -6,7 +6,7 @@ import { assertCorrelation } from "./promises";
  *
  *     out_k[x] = Σ_j Σ_i taps[j, i] · rows[k + j][x + i·step],   0 ≤ j < n, 0 ≤ i < m, k = 0, 1
  *
- * The sum runs over j, then i, whatever the block: no result depends on its neighbours. A row pass is the case n = 1.
+ * The sum runs over j, then i, whatever the block: no result depends on its neighbours.
  *
  * Shapes    rows: n + 1 pointers to rows of count + (m − 1)·step floats; taps n × m; out0, out1: count floats
  * Units     pointers: bytes; count: floats, a multiple of four; step: bytes from one tap to the next in a row

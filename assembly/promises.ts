@@ -109,7 +109,7 @@ export function assertLeaveRow(job: usize, y: usize, row: i32, out: usize): void
   if (load<usize>(job, WEIGHTS)) assertWeights(job, row);
 }
 
-/** Pointers, counts and rows of a correlation (n = 1 for rows alone, m = 1 for columns): nothing is written that is still to be read. */
+/** Pointers, counts and rows of a correlation (m = 1 for columns): nothing is written that is still to be read. */
 export function assertCorrelation(out0: usize, out1: usize, rows: usize, taps: usize, n: i32, m: i32, step: usize, count: i32): void {
   if (ASC_NO_ASSERT) return;
   assert(n >= 1 && m >= 1 && count >= 4 && (count & 3) == 0);
@@ -122,6 +122,16 @@ export function assertCorrelation(out0: usize, out1: usize, rows: usize, taps: u
     assert(isAligned(row) && isInMemory(row, read));
     assert(areApart(out0, bytes, row, read) && areApart(out1, bytes, row, read));
   }
+}
+
+/** The same for one row and one vector of taps. */
+export function assertRowPass(out: usize, row: usize, taps: usize, m: i32, step: usize, count: i32): void {
+  if (ASC_NO_ASSERT) return;
+  assert(m >= 1 && count >= 4 && (count & 3) == 0);
+  assert(m == 1 || (step >= 4 && (step & 3) == 0));
+  const bytes = <usize>count << 2, read = bytes + <usize>(m - 1) * step;
+  assert(isAligned(out) && isInMemory(out, bytes) && isAligned(row) && isInMemory(row, read) && areApart(out, bytes, row, read));
+  assert((taps & 3) == 0 && isInMemory(taps, <usize>m << 2));
 }
 
 /** Shapes that belong together: valid results of the extended image, rounded up to whole vectors. */
@@ -149,12 +159,10 @@ export function assertSweep(job: usize, from: i32, to: i32, ringRows: i32): void
   }
 }
 
-/** At least one term; two entered rows with their pointer table behind them. */
+/** At least one term, and an entered row. */
 export function assertTerms(job: usize): void {
   if (ASC_NO_ASSERT) return;
-  const entered = load<usize>(job, ENTERED), stride = load<usize>(job, ENTERED_STRIDE), table = entered + 2 * stride;
-  assert(load<i32>(job, TERMS) >= 1 && isAligned(entered) && (stride & 15) == 0);
-  assert(load<usize>(table) == entered && load<usize>(table, 4) == entered + stride);
+  assert(load<i32>(job, TERMS) >= 1 && isAligned(load<usize>(job, ENTERED)));
 }
 
 /** A ring of exactly the window's rows, and places inside a block. */

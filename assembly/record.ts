@@ -52,7 +52,7 @@ export const TERMS = 96;
 /** Pointer tables of the ring: 2 · RING_ROWS entries a term, so that any RING_ROWS neighbours lie side by side. */
 export const ROW_TABLE = 100;
 export const RING_ROWS = 104;
-/** Two extended rows and a pointer table of two, for row passes. */
+/** An extended row on its way into a ring or the planes; running sums of floats keep suffix sums ENTERED_STRIDE bytes behind it. */
 export const ENTERED = 108;
 export const ENTERED_STRIDE = 112;
 /** Two result rows of working floats, and the bytes from one to the next. */

@@ -1,10 +1,11 @@
 import { correlateColumns } from "./columns";
 import { correlateRows } from "./direct";
+import { correlateRow } from "./rows";
 import { enterRow } from "./enter";
 import { leaveRow } from "./leave";
 import { assertSweep, assertTerms } from "./promises";
 import {
-  ALPHA, ANCHOR_ROW, CHANNELS, COLUMN_TAPS, ENTERED, ENTERED_STRIDE, KEEP_ROW, KEEP_STAGING, KERNEL_COLUMNS, KERNEL_ROWS,
+  ALPHA, ANCHOR_ROW, CHANNELS, COLUMN_TAPS, ENTERED, KEEP_ROW, KEEP_STAGING, KERNEL_COLUMNS, KERNEL_ROWS,
   OUTPUT, OUTPUT_STRIDE, RESULT, RESULT_FLOATS, RESULT_STRIDE, RING_ROWS, ROW_TABLE, STAGING, STAGING_STRIDE, TAPS, TERMS,
 } from "./record";
 
@@ -71,33 +72,27 @@ export function sweepDirect<V>(job: usize, from: i32, to: i32): void {
   }
 }
 
-/** Row passes of all terms over one or two entered rows, into the rings. */
-function rowPasses<V>(job: usize, next: i32): void {
+/** Row passes of all terms over an entered row, into the rings. */
+function rowPasses<V>(job: usize, row: i32): void {
   const m = load<i32>(job, KERNEL_COLUMNS);
-  const table = load<usize>(job, ENTERED) + 2 * load<usize>(job, ENTERED_STRIDE);
+  const step = <usize>load<i32>(job, CHANNELS) << 2;
   for (let term = 0; term < load<i32>(job, TERMS); term++) {
     const taps = load<usize>(job, TAPS) + (<usize>(term * m) << 2);
-    const ring = ringFrom(job, term, next);
-    correlateRows<V>(
-      load<usize>(ring), load<usize>(ring, 4), table, taps, 1, m, <usize>load<i32>(job, CHANNELS) << 2, load<i32>(job, RESULT_FLOATS),
-    );
+    correlateRow<V>(load<usize>(ringFrom(job, term, row)), load<usize>(job, ENTERED), taps, m, step, load<i32>(job, RESULT_FLOATS));
   }
 }
 
 /** Separable: row results in the rings, then columns; terms are summed in order. */
 export function sweepSeparable<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
-  assertSweep(job, from, to, n + 2);
+  assertSweep(job, from, to, n + 1);
   assertTerms(job);
-  const entered = load<usize>(job, ENTERED);
   const result = load<usize>(job, RESULT);
   const first = firstNewRow(job, from);
-  const staged = to + n - 1;
   let next = first;
   for (let row = from; row < to; row += 2) {
-    for (const last = min<i32>(row + n + 1, staged); next < last; next += 2) {
-      enterRow<V>(job, entered, next, stagedRow(job, next, first));
-      if (next + 1 < staged) enterRow<V>(job, entered + load<usize>(job, ENTERED_STRIDE), next + 1, stagedRow(job, next + 1, first));
+    for (const last = min<i32>(row + n + 1, to + n - 1); next < last; next++) {
+      enterRow<V>(job, load<usize>(job, ENTERED), next, stagedRow(job, next, first));
       rowPasses<V>(job, next);
     }
     for (let term = 0; term < load<i32>(job, TERMS); term++) {

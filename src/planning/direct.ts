@@ -3,7 +3,7 @@ import { outputBound, sumError } from "./accuracy.js";
 import { frameCounts, frameOf, programOf } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { correlationTaps, type Problem } from "./problem.js";
-import { blocksOf, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
+import { pairBlocks, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
 
 /** Extended rows in a ring; every tap meets every result: m·n multiply–adds a sample. */
 interface DirectFrame extends SweepFrame {
@@ -39,12 +39,12 @@ export const direct: MethodPlan = {
   work(problem) {
     const { horizontal, vertical } = problem;
     const layout = frame(problem);
-    const blocks = blocksOf(problem, layout);
+    const { blocks, floats } = pairBlocks(problem, layout);
     return {
       setup: { setup: 1, setupTap: horizontal.taps * vertical.taps, setupByte: layout.arrangement.byteLength },
       run: {
         ...frameCounts(problem, vertical.extended, sweepCalls(problem, layout)),
-        directTap: blocks * 32 * horizontal.taps * vertical.taps,
+        directTap: floats * horizontal.taps * vertical.taps,
         directLoop: blocks * vertical.taps,
       },
       bytes: layout.arrangement.byteLength,

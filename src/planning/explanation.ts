@@ -48,7 +48,8 @@ function reason(choice: Choice, problem: Problem, once: boolean): string {
   const next = others.reduce((a, b) => (time(b) < time(a) ? b : a));
   const counted = once ? "set-up and one run" : "each run";
   const ratio = time(next) / time(chosen);
-  if (ratio < 1.01 || time(next) - time(chosen) < 0.001) return `${what}: level with ${next.method} in time (${counted}), and its error bound or memory is smaller.`;
+  if (ratio < 1.01 || time(next) - time(chosen) < 0.001)
+    return `${what}: level with ${next.method} in time (${counted}), and its error bound or memory is smaller.`;
   return `${what}: predicted ${threeDigits(time(chosen))} ms for ${counted}, ${threeDigits(ratio)} times as fast as the next, ${next.method}.`;
 }
 

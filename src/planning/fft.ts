@@ -6,7 +6,7 @@ import type { Step, Table } from "../runtime/program.js";
 import { integerResults, outputBound } from "./accuracy.js";
 import { frameCounts, frameOf, plainStep, programOf, writing, type Frame } from "./frame.js";
 import type { MethodPlan } from "./method.js";
-import { correlationTaps, type Problem } from "./problem.js";
+import { correlationTaps, vectorFloats, type Problem } from "./problem.js";
 import { sampleFacts } from "./samples.js";
 import { planTiles, type Tiling } from "./tiles.js";
 
@@ -139,7 +139,6 @@ function chunks(routine: Step["routine"], units: number, costPerUnit: number, gr
   return steps;
 }
 
-const vectorFloats = (problem: Problem): number => (problem.build === "simd" ? 4 : 1);
 const roundedToFour = (count: number): number => 4 * Math.ceil(count / 4);
 
 function enterSteps(problem: Problem, layout: FftFrame, strip: number): Step[] {

@@ -116,3 +116,8 @@ export function correlationTaps(problem: Problem): Float64Array<ArrayBuffer> {
 export function inCorrelationOrder(problem: Problem, vector: Float64Array<ArrayBuffer>): Float64Array<ArrayBuffer> {
   return problem.reversed ? vector.slice().reverse() : vector;
 }
+
+/** Floats of one of the core's working vectors. */
+export function vectorFloats(problem: Problem): number {
+  return problem.build === "simd" ? 4 : 1;
+}

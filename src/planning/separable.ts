@@ -5,7 +5,7 @@ import { mostTerms } from "./analysis.js";
 import { frameCounts, frameOf, programOf } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { inCorrelationOrder, type Problem } from "./problem.js";
-import { blocksOf, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
+import { pairBlocks, rowBlocks, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
 
 /** Row results in one ring a term, then columns: r·(m + n) multiply–adds a sample for a sum of r separable terms. */
 interface SeparableFrame extends SweepFrame {
@@ -40,7 +40,7 @@ function frame(problem: Problem): SeparableFrame {
   const terms = termsOf(problem).length;
   const base = frameOf(problem, sweepStagedRows(problem, terms * (horizontal.taps + vertical.taps) * horizontal.count * channels));
   const { arrangement } = base;
-  const ringRows = vertical.taps + 2;
+  const ringRows = vertical.taps + 1;
   return {
     ...base,
     terms,
@@ -50,7 +50,7 @@ function frame(problem: Problem): SeparableFrame {
     columnTaps: arrangement.take(terms * vertical.taps * 4),
     ring: arrangement.take(terms * ringRows * base.resultStride),
     table: arrangement.take(terms * 2 * ringRows * 4),
-    entered: arrangement.take(2 * base.extendedStride + 8),
+    entered: arrangement.take(base.extendedStride),
     results: arrangement.take(2 * base.resultStride),
   };
 }
@@ -85,16 +85,16 @@ export const separable: MethodPlan = {
   work(problem) {
     const { horizontal, vertical } = problem;
     const layout = frame(problem);
-    const blocks = blocksOf(problem, layout);
-    const rowBlocks = Math.ceil(vertical.extended / 2) * Math.ceil(layout.paddedFloats / 16);
+    const rows = rowBlocks(problem, layout);
+    const columns = pairBlocks(problem, layout);
     return {
       setup: { setup: 1, setupTap: horizontal.taps * vertical.taps, setupByte: layout.arrangement.byteLength },
       run: {
         ...frameCounts(problem, vertical.extended, sweepCalls(problem, layout)),
-        rowTap: layout.terms * rowBlocks * 32 * horizontal.taps,
-        rowLoop: layout.terms * rowBlocks,
-        columnTap: layout.terms * blocks * 32 * vertical.taps,
-        columnLoop: layout.terms * blocks,
+        rowTap: layout.terms * rows.floats * horizontal.taps,
+        rowLoop: layout.terms * rows.blocks,
+        columnTap: layout.terms * columns.floats * vertical.taps,
+        columnLoop: layout.terms * columns.blocks,
       },
       bytes: layout.arrangement.byteLength,
     };
@@ -111,19 +111,16 @@ export const separable: MethodPlan = {
 
   program(problem) {
     const layout = frame(problem);
-    const enteredRows = Int32Array.of(layout.entered, layout.entered + layout.extendedStride);
     return programOf(problem, layout, {
       fields: (job) =>
         sweepFields(job, layout)
           .pointer(field.TAPS, layout.rowTaps)
           .pointer(field.COLUMN_TAPS, layout.columnTaps)
           .integer(field.TERMS, layout.terms)
-          .pointer(field.ENTERED, layout.entered)
-          .integer(field.ENTERED_STRIDE, layout.extendedStride),
+          .pointer(field.ENTERED, layout.entered),
       tables: [
         { offset: layout.rowTaps, data: stacked(problem, "row") },
         { offset: layout.columnTaps, data: stacked(problem, "column") },
-        { offset: layout.entered + 2 * layout.extendedStride, data: enteredRows, addresses: "all" },
         ringTables(layout, layout.terms),
       ],
       setup: [],

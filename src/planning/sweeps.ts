@@ -1,7 +1,7 @@
 import * as field from "../generated/record.js";
 import type { RoutineName, Step, Table } from "../runtime/program.js";
 import { writing, type Frame } from "./frame.js";
-import type { Problem } from "./problem.js";
+import { vectorFloats, type Problem } from "./problem.js";
 import type { JobRecord } from "./record.js";
 
 /** What every sweep has: a ring of rows with its pointer table, and result rows. */
@@ -69,7 +69,23 @@ export function sweepSteps(problem: Problem, frame: Frame, routine: RoutineName)
   return steps;
 }
 
-/** Blocks of 2 × 16 results, the tail counted as one. */
-export function blocksOf(problem: Problem, frame: Frame): number {
-  return Math.ceil(problem.vertical.count / 2) * Math.ceil(frame.paddedFloats / 16);
+/** Blocks of `vectors` vectors that cover a row, or single vectors where it is shorter than a block; and the floats that they compute. */
+function cover(problem: Problem, layout: Frame, vectors: number): { blocks: number; floats: number } {
+  const block = vectors * vectorFloats(problem);
+  if (layout.paddedFloats < block) return { blocks: layout.paddedFloats / vectorFloats(problem), floats: layout.paddedFloats };
+  const blocks = Math.ceil(layout.paddedFloats / block);
+  return { blocks, floats: blocks * block };
+}
+
+/** Blocks and floats of the direct method and of column passes: two result rows × four vectors. */
+export function pairBlocks(problem: Problem, layout: Frame): { blocks: number; floats: number } {
+  const row = cover(problem, layout, 4);
+  const pairs = Math.ceil(problem.vertical.count / 2);
+  return { blocks: pairs * row.blocks, floats: 2 * pairs * row.floats };
+}
+
+/** Blocks and floats of a row pass over every extended row: six vectors. */
+export function rowBlocks(problem: Problem, layout: Frame): { blocks: number; floats: number } {
+  const row = cover(problem, layout, 6);
+  return { blocks: problem.vertical.extended * row.blocks, floats: problem.vertical.extended * row.floats };
 }

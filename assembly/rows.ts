@@ -1,0 +1,57 @@
+import { laneBytes, loadLanes, multiplyAdd, splat, splatFrom, storeLanes } from "./lanes";
+import { assertRowPass } from "./promises";
+
+/**
+ * Correlates one row of floats with one vector of taps.
+ *
+ *     out[x] = Σ_i taps[i] · row[x + i·step],   0 ≤ i < m
+ *
+ * Shapes    row: count + (m − 1)·step floats; taps m; out: count floats
+ * Units     pointers: bytes; count: floats, a multiple of four; step: bytes from one tap to the next in the row
+ * Requires  row readable for whole vectors; out apart from the row
+ * Cost      count · m multiply–adds; allocates nothing
+ * Accuracy  |error| ≤ γ(m) · Σ|taps| · max|row|
+ * Source    Higham, Accuracy and Stability of Numerical Algorithms, §3.1 (bound)
+ */
+export function correlateRow<V>(out: usize, row: usize, taps: usize, m: i32, step: usize, count: i32): void {
+  assertRowPass(out, row, taps, m, step, count);
+  const bytes = <usize>count << 2;
+  const block: usize = 6 * laneBytes<V>();
+  let x: usize = 0;
+  for (; x + block <= bytes; x += block) rowBlock<V>(out + x, row + x, taps, m, step);
+  if (x == bytes) return;
+  if (bytes >= block) {
+    x = bytes - block;
+    rowBlock<V>(out + x, row + x, taps, m, step);
+  } else {
+    for (; x < bytes; x += laneBytes<V>()) rowVector<V>(out + x, row + x, taps, m, step);
+  }
+}
+
+/** Six vectors of sums, six of samples and a tap: thirteen registers, and enough independent sums to hide the latency of an addition. */
+function rowBlock<V>(out: usize, p: usize, taps: usize, m: i32, step: usize): void {
+  const vector = laneBytes<V>();
+  let a0 = splat<V>(0), a1 = a0, a2 = a0, a3 = a0, a4 = a0, a5 = a0;
+  for (const end = taps + (<usize>m << 2); taps < end; taps += 4, p += step) {
+    const h = splatFrom<V>(taps);
+    a0 = multiplyAdd<V>(a0, h, loadLanes<V>(p));
+    a1 = multiplyAdd<V>(a1, h, loadLanes<V>(p + vector));
+    a2 = multiplyAdd<V>(a2, h, loadLanes<V>(p + 2 * vector));
+    a3 = multiplyAdd<V>(a3, h, loadLanes<V>(p + 3 * vector));
+    a4 = multiplyAdd<V>(a4, h, loadLanes<V>(p + 4 * vector));
+    a5 = multiplyAdd<V>(a5, h, loadLanes<V>(p + 5 * vector));
+  }
+  storeLanes<V>(out, a0);
+  storeLanes<V>(out + vector, a1);
+  storeLanes<V>(out + 2 * vector, a2);
+  storeLanes<V>(out + 3 * vector, a3);
+  storeLanes<V>(out + 4 * vector, a4);
+  storeLanes<V>(out + 5 * vector, a5);
+}
+
+/** One vector of sums, where a row is shorter than a block. */
+function rowVector<V>(out: usize, p: usize, taps: usize, m: i32, step: usize): void {
+  let a = splat<V>(0);
+  for (const end = taps + (<usize>m << 2); taps < end; taps += 4, p += step) a = multiplyAdd<V>(a, splatFrom<V>(taps), loadLanes<V>(p));
+  storeLanes<V>(out, a);
+}
