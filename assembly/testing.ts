@@ -4,6 +4,7 @@
  */
 import { correlateColumns as correlateColumnsOf } from "./columns";
 import { correlateRows as correlateRowsOf } from "./direct";
+import { correlateRow as correlateRowOf } from "./rows";
 import { enterPixels as enterPixelsOf, enterRow as enterRowOf } from "./enter";
 import { forwardTransform as forwardTransformOf, inverseTransform as inverseTransformOf } from "./fft/transform";
 import { deinterleave4 as deinterleave4Of, transpose as transposeOf } from "./lanes";
@@ -29,6 +30,11 @@ export function leaveRow(wide: bool, job: usize, y: usize, row: i32, out: usize)
 export function correlateRows(wide: bool, out0: usize, out1: usize, rows: usize, taps: usize, n: i32, m: i32, step: usize, count: i32): void {
   if (wide) correlateRowsOf<v128>(out0, out1, rows, taps, n, m, step, count);
   else correlateRowsOf<f32>(out0, out1, rows, taps, n, m, step, count);
+}
+
+export function correlateRow(wide: bool, out: usize, row: usize, taps: usize, m: i32, step: usize, count: i32): void {
+  if (wide) correlateRowOf<v128>(out, row, taps, m, step, count);
+  else correlateRowOf<f32>(out, row, taps, m, step, count);
 }
 
 export function correlateColumns(wide: bool, out0: usize, out1: usize, rows: usize, taps: usize, n: i32, count: i32, accumulate: bool): void {

@@ -49,6 +49,7 @@ const largest = (rows: readonly Float32Array[]): number => Math.max(...rows.flat
 const shapes = [
   [1, 1],
   [1, 5],
+  [1, 12],
   [2, 1],
   [3, 3],
   [4, 2],
@@ -67,6 +68,24 @@ test.each(shapes)("correlateRows: $n × $m taps, $channels channels apart, is it
         const bound = integers ? 0 : gamma(m * n) * absolute(taps) * largest(rows);
         const found = out.map((address) => bench.floats(address, count));
         found.forEach((row, k) => expectWithin(row, defined(stated, rows, taps, k), bound));
+        expect(bench.damage()).toBeUndefined();
+        return found;
+      });
+      expect(results[0]).toEqual(results[1]);
+    }
+  }
+});
+
+test.each(shapes.filter(({ n }) => n === 1))("correlateRow: $m taps, $channels channels apart, is its sum within γ(m), and both forms agree to the bit", (shape) => {
+  for (const count of counts) {
+    for (const integers of [true, false]) {
+      const stated = { ...shape, count, integers };
+      const { m, channels } = shape;
+      const results = forms.map(({ wide }) => {
+        const { rows, taps, table, tapsAddress, out } = laid(stated);
+        inner.correlateRow(wide, out[0], bench.view(Int32Array, table, 1)[0]!, tapsAddress, m, 4 * channels, count);
+        const found = bench.floats(out[0], count);
+        expectWithin(found, defined(stated, rows, taps, 0), integers ? 0 : gamma(m) * absolute(taps) * largest(rows));
         expect(bench.damage()).toBeUndefined();
         return found;
       });

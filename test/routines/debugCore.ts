@@ -8,6 +8,7 @@ export interface InnerRoutines extends Routines {
   enterRow(wide: boolean, job: number, out: number, row: number, source: number): void;
   leaveRow(wide: boolean, job: number, y: number, row: number, out: number): void;
   correlateRows(wide: boolean, out0: number, out1: number, rows: number, taps: number, n: number, m: number, step: number, count: number): void;
+  correlateRow(wide: boolean, out: number, row: number, taps: number, m: number, step: number, count: number): void;
   correlateColumns(wide: boolean, out0: number, out1: number, rows: number, taps: number, n: number, count: number, accumulate: boolean): void;
   forwardTransform(wide: boolean, plan: number, base: number, stride: number, apart: number, vectors: number): void;
   inverseTransform(wide: boolean, plan: number, base: number, stride: number, apart: number, vectors: number): void;
