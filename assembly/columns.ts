@@ -7,7 +7,13 @@ import { assertCorrelation } from "./promises";
  *     out_k[x] = base_k[x] + Σ_j taps[j] · rows[k + j][x],   0 ≤ j < n, k = 0, 1
  *
  * with base_k = out_k where `accumulate` (a further term of a sum), else 0.
- * Shapes, units and promises as correlateRows with m = 1.
+ *
+ * Shapes    rows: n + 1 pointers to rows of count floats; taps n; out0, out1: count floats
+ * Units     pointers: bytes; count: floats, a multiple of four
+ * Requires  out0, out1 apart from each other and from the rows; row n may be any readable row if out1 is not wanted
+ * Cost      2 · count · n multiply–adds; allocates nothing
+ * Accuracy  |error| ≤ γ(n + 1) · (Σ|taps| · max|rows| + max|base|)
+ * Source    Higham, Accuracy and Stability of Numerical Algorithms, §3.1 (bound)
  */
 export function correlateColumns<V>(out0: usize, out1: usize, rows: usize, taps: usize, n: i32, count: i32, accumulate: bool): void {
   assertCorrelation(out0, out1, rows, taps, n, 1, 0, count);

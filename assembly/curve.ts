@@ -20,7 +20,12 @@ function fifthRoot(x: f64): f64 {
   return y;
 }
 
-/** Encoded → linear: c ÷ 12.92, or ((c + 0.055) ÷ 1.055)^2.4 with x^2.4 = x² · (x^(1/5))². */
+/**
+ * Encoded → linear: c ÷ 12.92, or ((c + 0.055) ÷ 1.055)^2.4 with x^2.4 = x² · (x^(1/5))².
+ *
+ * Accuracy  within 1 ulp of float32; never falls
+ * Source    IEC 61966-2-1
+ */
 export function decode(encoded: f32): f32 {
   const magnitude = abs<f64>(<f64>encoded);
   if (magnitude <= 0.04045) return <f32>(<f64>encoded / 12.92);
@@ -30,7 +35,12 @@ export function decode(encoded: f32): f32 {
   return <f32>copysign<f64>(x * x * (root * root), encoded);
 }
 
-/** Linear → encoded: 12.92 · l, or 1.055 · l^(1/2.4) − 0.055 with x^(5/12) = x^(1/3) · ((x^(1/3))^(1/2))^(1/2). */
+/**
+ * Linear → encoded: 12.92 · l, or 1.055 · l^(1/2.4) − 0.055 with x^(5/12) = x^(1/3) · ((x^(1/3))^(1/2))^(1/2).
+ *
+ * Accuracy  within 1 ulp of float32; never falls, but for the step of −3·10⁻⁸ that the standard's own two pieces leave at 0.0031308
+ * Source    IEC 61966-2-1
+ */
 export function encode(linear: f32): f32 {
   const magnitude = abs<f64>(<f64>linear);
   if (magnitude <= 0.0031308) return <f32>(12.92 * <f64>linear);

@@ -70,9 +70,13 @@ function copyPixel(out: usize, source: usize, channels: i32): void {
 /**
  * One row of the extended image: the stretch that lies in the source, then the halo through the index map.
  *
- * @param out extended row, EXTENDED_COLUMNS · CHANNELS floats
- * @param row index of the row in the extended image
- * @param source its staged samples; not read where the row map says "outside"
+ *     out[x] = working(source[column(x)]),   working: widened, decoded, times alpha ÷ full, as the job asks
+ *
+ * Shapes    out EXTENDED_COLUMNS · CHANNELS floats; source STAGING_STRIDE bytes, not read where the row map says "outside"
+ * Units     pointers: bytes, out 16-byte aligned; row: index in the extended image
+ * Requires  stretch and halo fill every column once; out and source do not overlap   (promised by planning/frame)
+ * Cost      EXTENDED_COLUMNS · CHANNELS samples, halo pixels one by one; allocates nothing
+ * Accuracy  exact; decoded floats within 1 ulp; premultiplied ones two roundings more
  */
 export function enterRow<V>(job: usize, out: usize, row: i32, source: usize): void {
   assertEnterRow(job, out, row, source);
@@ -95,7 +99,11 @@ export function enterRow<V>(job: usize, out: usize, row: i32, source: usize): vo
   }
 }
 
-/** Set-up: the constant pixels, entered like any other samples: one all along an extended row, one for the halo of columns. */
+/**
+ * Set-up: the constant pixels, entered like any other samples: one all along an extended row, one for the halo of columns.
+ *
+ * Requires  CONSTANT_PIXELS holds two pixels of samples; the curve, where there is one, is filled
+ */
 export function enterConstants<V>(job: usize): void {
   assertSource(job);
   const channels = load<i32>(job, CHANNELS);

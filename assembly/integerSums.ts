@@ -101,7 +101,15 @@ function resultRow<V>(job: usize, y: usize): void {
   for (let p = y; p < end; p += laneBytes<V>()) storeLanes<V>(p, multiply<V>(tap, integersToFloats<V>(loadLanes<V>(p))));
 }
 
-/** Result rows from … to − 1, as in every sweep. The ring holds the window's raw rows and one to compose the next one in. */
+/**
+ * Result rows from … to − 1, as in every sweep. The ring holds the window's raw rows and one to compose the next one in.
+ *
+ *     y[r, c] = tap · Σ_j Σ_i x[r + j, c + i],   0 ≤ j < n, 0 ≤ i < m, x integers
+ *
+ * Requires  m · n · full < 2³²; RAW_SAMPLES a multiple of 16, a pixel more than is staged   (promised by planning/runningSum)
+ * Cost      about 8 operations a sample, whatever m and n; allocates nothing
+ * Accuracy  sums exact; two roundings: to float, and times tap
+ */
 export function sweepIntegerSums<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
   assertSweep(job, from, to, n + 1);

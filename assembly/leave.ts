@@ -122,9 +122,13 @@ function leaveKept(job: usize, y: usize): void {
 /**
  * One result row leaves: divided, encoded, gain and offset, rounded. Works in place on y, which is scratch afterwards.
  *
- * @param y OUTPUT_COLUMNS · CHANNELS working floats, padded to whole vectors
- * @param row index of the result row
- * @param out its place among the staged output rows
+ *     out[x] = narrow(gain · encoded(y[x]) + offset),   narrow(v) = ⌊v + ½⌋ held in range for integers, v for floats
+ *
+ * Shapes    y OUTPUT_COLUMNS · CHANNELS working floats, padded to whole vectors; out OUTPUT_STRIDE bytes
+ * Units     pointers: bytes, y 16-byte aligned, out aligned to its samples; row: index of the result row
+ * Requires  y and out do not overlap; alpha modes only with an alpha channel   (promised by planning/frame)
+ * Cost      OUTPUT_COLUMNS · CHANNELS samples; allocates nothing
+ * Accuracy  gain and offset two roundings, division two, encoding within 1 ulp; narrowing is exact, ties up, NaN to 0
  */
 export function leaveRow<V>(job: usize, y: usize, row: i32, out: usize): void {
   assertLeaveRow(job, y, row, out);

@@ -103,7 +103,15 @@ function advanceFloats<V>(job: usize, ring: usize, row: i32, n: i32): void {
   if (whole) suffixDown<V>(job, ring, row, min<i32>(n, row + 1), n);
 }
 
-/** Running sums: horizontal sums in a ring of n rows, vertical sums in one row. Result rows from … to − 1 as in every sweep. */
+/**
+ * Running sums of floats: horizontal sums in a ring of n rows, vertical sums in one row. Result rows from … to − 1 as in every sweep.
+ *
+ *     y[r, c] = tap · Σ_j Σ_i x[r + j, c + i],   0 ≤ j < n, 0 ≤ i < m
+ *
+ * Requires  a ring of n rows of RESULT_FLOATS; COLUMN_PHASE < m, ROW_PHASE < n   (promised by planning/runningSum)
+ * Cost      about 8 operations a sample, whatever m and n; allocates nothing
+ * Accuracy  |error| ≤ γ(m + n + 1) · |tap| · m · n · max|x|
+ */
 export function sweepRunningSum<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
   assertSweep(job, from, to, n);

@@ -93,7 +93,10 @@ function clearRow(job: usize, row: i32, half: i32): void {
 /**
  * Brings rows from … to − 1 of a strip in; rows past the extended image become zeros.
  *
- * @param strip index of the strip; its first extended row is strip · STRIP_ROWS. Staged: its rows from … to − 1
+ * Units     rows; the first extended row of strip `strip` is strip · STRIP_ROWS. Staged: its rows from … to − 1
+ * Requires  to ≤ TILE_ROWS; planes of TILE_ROWS rows, PLANE_STRIDE a multiple of 16   (promised by planning/fft)
+ * Cost      EXTENDED_COLUMNS · CHANNELS samples a row; allocates nothing
+ * Accuracy  as enterRow: spreading and scaling by a power of two are exact (but for denormal results)
  */
 export function enterStrip<V>(job: usize, from: i32, to: i32, strip: i32): void {
   assertEnterStrip(job, from, to, strip);
@@ -153,7 +156,12 @@ function patch(job: usize, y: usize): void {
   }
 }
 
-/** Result rows from … to − 1 of a strip leave. Staged output starts at the first of them. */
+/**
+ * Result rows from … to − 1 of a strip leave. Staged output starts at the first of them.
+ *
+ * Requires  to ≤ STRIP_ROWS, and strip · STRIP_ROWS + to ≤ OUTPUT_ROWS   (promised by planning/fft)
+ * Cost      OUTPUT_COLUMNS · CHANNELS samples a row, and the marks of the rows it reads; allocates nothing
+ */
 export function leaveStrip<V>(job: usize, from: i32, to: i32, strip: i32): void {
   assertLeaveStrip(job, from, to, strip);
   const half = load<i32>(job, CHANNELS) & 1 ? strip & 1 : 0;

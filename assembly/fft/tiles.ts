@@ -63,7 +63,15 @@ function multiplySpectrum<V>(scratch: usize, apart: usize, spectrum: usize, coun
   }
 }
 
-/** Filters the rows of groups from … to − 1 (a group: V's lanes) of every pair, tile after tile. */
+/**
+ * Filters the rows of groups from … to − 1 (a group: V's lanes) of every pair, tile after tile, in place.
+ *
+ *     row[first + c] ← inverse(forward(row[first … first + N − 1]) · spectrum)[c],   0 ≤ c < step, first = 0, step, 2·step, …
+ *
+ * Requires  step ≤ TILE_COLUMNS − KERNEL_COLUMNS + 1, a multiple of four, so that a tile writes only what no later tile reads
+ * Cost      two transforms of TILE_COLUMNS points and one product a tile; allocates nothing
+ * Accuracy  as the transforms, and γ(3) of the product
+ */
 export function filterRows<V>(job: usize, from: i32, to: i32): void {
   assertGroups(job, from, to, lanes<V>());
   const plan = load<usize>(job, ROW_PLAN);

@@ -57,11 +57,16 @@ function inversePass<V>(radix: i32, base: usize, stride: usize, apart: usize, po
 }
 
 /**
- * Forward transform: natural order in, digit-reversed order out.
+ * Forward transform: natural order in, digit-reversed order out, in place.
  *
- * @param base first real part; imaginary parts `apart` bytes behind
- * @param stride bytes from one point to the next
- * @param vectors vectors of neighbouring columns transformed together
+ *     X[k] = Σ_r x[r] · e^(−2πi·kr/N),   0 ≤ r < N;   X[k] lies at place Σ_p d_p · N ÷ (R_0 · … · R_p),  k = d_0 + R_0·(d_1 + R_1·(d_2 + …))
+ *
+ * Shapes    N points of `vectors` vectors of neighbouring columns, real parts at `base`, imaginary parts `apart` bytes behind
+ * Units     pointers, stride (one point to the next) and apart: bytes, whole vectors
+ * Requires  the radices of the plan multiply to N, the span of its first pass; the two planes do not overlap
+ * Cost      N · vectors points a pass; allocates nothing
+ * Accuracy  ‖error‖₂ ≤ (Π (1 + 2·√R·γ(k_R)) − 1) · ‖X‖₂ over the passes,  k₂ = 4, k₃ = 8, k₄ = 5, k₅ = 9 roundings
+ * Source    Higham, Accuracy and Stability of Numerical Algorithms, §24.1
  */
 export function forwardTransform<V>(plan: usize, base: usize, stride: usize, apart: usize, vectors: i32): void {
   assertTransform(plan, base, stride, apart, vectors, laneBytes<V>());
@@ -72,7 +77,11 @@ export function forwardTransform<V>(plan: usize, base: usize, stride: usize, apa
   }
 }
 
-/** Inverse transform, unscaled: digit-reversed order in, natural order out. */
+/**
+ * Inverse transform, unscaled: digit-reversed order in, natural order out. Everything else as forwardTransform.
+ *
+ *     x[r] = Σ_k X[k] · e^(+2πi·kr/N)
+ */
 export function inverseTransform<V>(plan: usize, base: usize, stride: usize, apart: usize, vectors: i32): void {
   assertTransform(plan, base, stride, apart, vectors, laneBytes<V>());
   const points = load<i32>(plan, 8);
