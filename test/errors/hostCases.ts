@@ -33,19 +33,29 @@ function bytesOf(base64: string): Uint8Array<ArrayBuffer> {
   return Uint8Array.from(atob(base64), (character) => character.charCodeAt(0));
 }
 
-/** The core with every f32x4.mul (fd e6 01) replaced by f32x4.sub (fd e5 01): it links and runs, and is wrong. */
-function wrongCore(): WebAssembly.Module {
+/** f32x4.mul in the binary format of WebAssembly (SIMD opcode 230). */
+const vectorProduct = [0xfd, 0xe6, 0x01];
+
+/** The core with every vector product replaced by other code of three bytes: it links, and goes wrong in its own way. */
+function brokenCore(replacement: readonly number[]): WebAssembly.Module {
   const code = Object.values(simdCore).find((value) => typeof value === "string" && value.length > 1000) as string;
   const bytes = bytesOf(code);
   let replaced = 0;
   for (let index = 0; index + 2 < bytes.length; index++) {
-    if (bytes[index] !== 0xfd || bytes[index + 1] !== 0xe6 || bytes[index + 2] !== 0x01) continue;
-    bytes[index + 1] = 0xe5;
+    if (vectorProduct.some((byte, place) => bytes[index + place] !== byte)) continue;
+    bytes.set(replacement, index);
     replaced++;
   }
   if (replaced === 0) throw new Error("the core has no vector product to break");
   return new WebAssembly.Module(bytes);
 }
+
+/** f32x4.sub; and a trap with two instructions that do nothing. */
+const vectorDifference = [0xfd, 0xe5, 0x01];
+const trap = [0x00, 0x01, 0x01];
+
+/** A module that has nothing of what the engine calls. */
+const emptyModule = (): WebAssembly.Module => new WebAssembly.Module(Uint8Array.of(0, 0x61, 0x73, 0x6d, 1, 0, 0, 0));
 
 /** A host that has no memory left when the engine asks for more. */
 async function withoutMemory(act: () => unknown): Promise<unknown> {
@@ -148,5 +158,9 @@ export const states: Pick<
   "webassembly-blocked": [
     { title: "a policy that forbids to compile", act: () => withGlobal("WebAssembly", blockedWebAssembly(), () => createEngine()), says: ["wasm-unsafe-eval"] },
   ],
-  "self-test-failed": [{ title: "a module that multiplies wrongly", act: () => createEngine({ build: "simd", module: wrongCore() }) }],
+  "self-test-failed": [
+    { title: "a module that multiplies wrongly", act: () => createEngine({ build: "simd", module: brokenCore(vectorDifference) }) },
+    { title: "a module that traps", act: () => createEngine({ build: "simd", module: brokenCore(trap) }) },
+    { title: "a module that exports nothing", act: () => createEngine({ module: emptyModule() }) },
+  ],
 };
