@@ -76,23 +76,26 @@ test.each(shapes)("correlateRows: $n × $m taps, $channels channels apart, is it
   }
 });
 
-test.each(shapes.filter(({ n }) => n === 1))("correlateRow: $m taps, $channels channels apart, is its sum within γ(m), and both forms agree to the bit", (shape) => {
-  for (const count of counts) {
-    for (const integers of [true, false]) {
-      const stated = { ...shape, count, integers };
-      const { m, channels } = shape;
-      const results = forms.map(({ wide }) => {
-        const { rows, taps, table, tapsAddress, out } = laid(stated);
-        inner.correlateRow(wide, out[0], bench.view(Int32Array, table, 1)[0]!, tapsAddress, m, 4 * channels, count);
-        const found = bench.floats(out[0], count);
-        expectWithin(found, defined(stated, rows, taps, 0), integers ? 0 : gamma(m) * absolute(taps) * largest(rows));
-        expect(bench.damage()).toBeUndefined();
-        return found;
-      });
-      expect(results[0]).toEqual(results[1]);
+test.each(shapes.filter(({ n }) => n === 1))(
+  "correlateRow: $m taps, $channels channels apart, is its sum within γ(m), and both forms agree to the bit",
+  (shape) => {
+    for (const count of counts) {
+      for (const integers of [true, false]) {
+        const stated = { ...shape, count, integers };
+        const { m, channels } = shape;
+        const results = forms.map(({ wide }) => {
+          const { rows, taps, table, tapsAddress, out } = laid(stated);
+          inner.correlateRow(wide, out[0], bench.view(Int32Array, table, 1)[0]!, tapsAddress, m, 4 * channels, count);
+          const found = bench.floats(out[0], count);
+          expectWithin(found, defined(stated, rows, taps, 0), integers ? 0 : gamma(m) * absolute(taps) * largest(rows));
+          expect(bench.damage()).toBeUndefined();
+          return found;
+        });
+        expect(results[0]).toEqual(results[1]);
+      }
     }
-  }
-});
+  },
+);
 
 test.each([1, 2, 3, 4, 7, 31])("correlateColumns: %i taps, alone and on top of a term before, is its sum within γ(n + 1)", (n) => {
   for (const count of counts) {

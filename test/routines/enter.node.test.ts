@@ -36,10 +36,10 @@ test("every code of 8 and 16 bits becomes the float that it is", () => {
   }
 });
 
-/** Extended columns that take from everywhere: constants, columns before and behind the stretch, columns inside it. */
+/** Extended columns that take from everywhere: constants, a staged column that is not in the stretch, columns of the stretch. */
 function mapsFor(columns: number): { columns: number[]; sourceColumns: number } {
   const stretch = Array.from({ length: columns }, (_, k) => k + 1);
-  return { columns: [-1, columns, 0, ...stretch, 1, 0, -1], sourceColumns: columns + 2 };
+  return { columns: [-1, columns + 1, 0, ...stretch, 1, columns + 1, 0, -1], sourceColumns: columns + 2 };
 }
 
 test.each(sampleTypes)(

@@ -14,12 +14,12 @@ export interface Sweeping extends Entering {
 export const resultColumns = ({ columns, m }: Sweeping): number => columns.length - m + 1;
 export const resultRows = ({ rows, n }: Sweeping): number => rows.length - n + 1;
 
-/** An extended image of `columns` × `rows` results: constants at the left and above, a mirrored column at the right, where there is room. */
+/** An extended image of `columns` × `rows` results: constants at the left and above; at the right, where there is room, a column of the stretch and one that is not in it. */
 export function sweeping(stated: { sample: SampleType; channels: number; columns: number; rows: number; m: number; n: number }): Omit<Sweeping, "samples"> {
   const { sample, channels, m, n } = stated;
   const extended = { columns: stated.columns + m - 1, rows: stated.rows + n - 1 };
   const columns = Array.from({ length: extended.columns }, (_, k) => k - 1);
-  if (extended.columns > 3) columns[extended.columns - 1] = extended.columns - 4;
+  if (extended.columns > 4) columns.splice(-2, 2, extended.columns - 5, extended.columns - 2);
   const rows = Array.from({ length: extended.rows }, (_, k) => k - 1);
   return { sample, channels, columns, rows, sourceColumns: Math.max(1, Math.max(...columns) + 1), m, n };
 }
