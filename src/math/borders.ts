@@ -39,6 +39,9 @@ const indexAt: Record<IndexRule, (i: number, count: number) => number> = {
 export function indexMap(rule: IndexRule, first: number, length: number, count: number): Int32Array<ArrayBuffer> {
   const at = indexAt[rule];
   const map = new Int32Array(length);
-  for (let k = 0; k < length; k++) map[k] = at(first + k, count);
+  for (let k = 0; k < length; k++) {
+    const i = first + k;
+    map[k] = i >= 0 && i < count ? i : at(i, count);
+  }
   return map;
 }

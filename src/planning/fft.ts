@@ -131,9 +131,11 @@ function error(problem: Problem): number {
 
 const roundable = (problem: Problem): boolean => integerResults(problem) && error(problem) < 0.5;
 
-/** Calls of `units` units, as many at a time as last a few milliseconds, in multiples of `grain`. */
-function chunks(routine: Step["routine"], units: number, costPerUnit: number, grain: number): Step[] {
-  const many = Math.max(grain, grain * Math.floor(pointsPerCall / costPerUnit / grain));
+/** Units of one call, as many as last a few milliseconds, in multiples of `grain`. */
+const unitsPerCall = (costPerUnit: number, grain: number): number => Math.max(grain, grain * Math.floor(pointsPerCall / costPerUnit / grain));
+
+/** Calls that do `units` units. */
+function chunks(routine: Step["routine"], units: number, many: number): Step[] {
   const steps: Step[] = [];
   for (let from = 0; from < units; from += many) steps.push(plainStep(routine, from, Math.min(units, from + many)));
   return steps;
@@ -165,30 +167,46 @@ function leaveSteps(problem: Problem, layout: FftFrame, strip: number): Step[] {
   return steps;
 }
 
+/** Floats of columns and groups of rows that one call transforms. */
+function grains(problem: Problem, tiling: Tiling): { columns: number; groups: number } {
+  return {
+    columns: unitsPerCall(5 * tiling.rows * tiling.pairs, 16),
+    groups: unitsPerCall(12 * vectorFloats(problem) * tiling.tiles * tiling.columns * tiling.pairs, 1),
+  };
+}
+
 /** Enter, columns, rows, columns back, leave: group after group of strips. */
 function runSteps(problem: Problem, layout: FftFrame): Step[] {
   const { tiling } = layout;
-  const { horizontal } = problem;
-  const columnCost = 5 * tiling.rows * tiling.pairs;
-  const rowCost = 12 * vectorFloats(problem) * tiling.tiles * tiling.columns * tiling.pairs;
+  const { columns, groups } = grains(problem, tiling);
   const steps: Step[] = [];
   for (let group = 0; group < tiling.groups; group++) {
     const strips = Array.from({ length: tiling.stripsPerGroup }, (_, k) => group * tiling.stripsPerGroup + k);
     steps.push(...strips.flatMap((strip) => enterSteps(problem, layout, strip)));
-    steps.push(...chunks("forwardColumns", roundedToFour(horizontal.extended), columnCost, 16));
-    steps.push(...chunks("filterRows", tiling.rows / vectorFloats(problem), rowCost, 1));
-    steps.push(...chunks("inverseColumns", roundedToFour(horizontal.count), columnCost, 16));
+    steps.push(...chunks("forwardColumns", roundedToFour(problem.horizontal.extended), columns));
+    steps.push(...chunks("filterRows", tiling.rows / vectorFloats(problem), groups));
+    steps.push(...chunks("inverseColumns", roundedToFour(problem.horizontal.count), columns));
     steps.push(...strips.flatMap((strip) => leaveSteps(problem, layout, strip)));
   }
   return steps;
+}
+
+/** How many steps those are. */
+function callsOf(problem: Problem, layout: FftFrame): number {
+  const { tiling, stagedRows } = layout;
+  const { columns, groups } = grains(problem, tiling);
+  const entering = tiling.stripsPerGroup * Math.ceil(tiling.rows / stagedRows);
+  const transforms = Math.ceil(roundedToFour(problem.horizontal.extended) / columns) + Math.ceil(roundedToFour(problem.horizontal.count) / columns);
+  const middle = Math.ceil(tiling.rows / vectorFloats(problem) / groups);
+  return tiling.groups * (entering + transforms + middle) + tiling.strips * Math.ceil(tiling.stripRows / stagedRows);
 }
 
 function setupSteps(problem: Problem, tiling: Tiling): Step[] {
   const lanes = vectorFloats(problem);
   return [
     plainStep("placeTaps", 0, 0),
-    ...chunks("forwardColumns", roundedToFour(problem.horizontal.taps), 5 * tiling.rows * tiling.pairs, 16),
-    ...chunks("takeSpectrum", tiling.rows / lanes, 8 * lanes * tiling.columns, 1),
+    ...chunks("forwardColumns", roundedToFour(problem.horizontal.taps), grains(problem, tiling).columns),
+    ...chunks("takeSpectrum", tiling.rows / lanes, unitsPerCall(8 * lanes * tiling.columns, 1)),
   ];
 }
 
@@ -214,7 +232,7 @@ export const fft: MethodPlan = {
         rowPass: 7 * setupRows,
       },
       run: {
-        ...frameCounts(problem, Math.min(entered, vertical.extended + (tiling.strips - 1) * (vertical.taps - 1)), runSteps(problem, layout).length),
+        ...frameCounts(problem, Math.min(entered, vertical.extended + (tiling.strips - 1) * (vertical.taps - 1)), callsOf(problem, layout)),
         planeSample: (entered * horizontal.extended + vertical.count * horizontal.count) * channels,
         columnPass: tiling.columnPasses,
         rowPass: tiling.rowPasses,

@@ -17,7 +17,15 @@ interface Stretch {
   count: number;
 }
 
-function stretchOf({ map, first, extended }: Axis): Stretch {
+const stretches = new WeakMap<Axis, Stretch>();
+
+function stretchOf(axis: Axis): Stretch {
+  let stretch = stretches.get(axis);
+  if (!stretch) stretches.set(axis, (stretch = findStretch(axis)));
+  return stretch;
+}
+
+function findStretch({ map, first, extended }: Axis): Stretch {
   const inPlace = (column: number): boolean => map[column]! >= 0 && map[column] === first + column;
   let column = 0;
   while (column < extended && !inPlace(column)) column++;
@@ -39,10 +47,14 @@ function haloOf(axis: Axis, stretch: Stretch, firstStaged: number): Int32Array<A
   return Int32Array.from(pairs);
 }
 
-function stagedColumns(map: Int32Array): { first: number; count: number } {
-  let first = Infinity;
-  let last = -1;
-  for (const index of map) {
+/** The source columns that are read: all from the first to the last. */
+function stagedColumns(axis: Axis): { first: number; count: number } {
+  const { column, count } = stretchOf(axis);
+  let first = count > 0 ? axis.map[column]! : Infinity;
+  let last = count > 0 ? axis.map[column + count - 1]! : -1;
+  for (let k = 0; k < axis.extended; k++) {
+    if (k === column && count > 0) k += count;
+    const index = k < axis.extended ? axis.map[k]! : -1;
     if (index < 0) continue;
     first = Math.min(first, index);
     last = Math.max(last, index);
@@ -94,7 +106,7 @@ export function frameOf(problem: Problem, mostRows: (affordable: number) => numb
   const { channels, horizontal, vertical, request } = problem;
   const arrangement = new Arrangement();
   const record = arrangement.take(field.RECORD_BYTES);
-  const staged = stagedColumns(horizontal.map);
+  const staged = stagedColumns(horizontal);
   const rowBytes = (staged.count * channels) << sampleFacts[request.sample].code;
   const resultFloats = horizontal.count * channels;
   const paddedFloats = Math.ceil(resultFloats / 4) * 4;

@@ -75,8 +75,10 @@ function tilingOf(problem: Problem, rows: Size, columns: Size): Tiling {
 
 const bytesOf = (tiling: Tiling): number => 2 * tiling.pairs * tiling.planeBytes + tiling.spectrumBytes;
 
-/** Setting up costs the kernel's own transform; a run that fills its strips only once should not pay for a far larger tile. */
-const costOf = (tiling: Tiling): number => tiling.columnPasses + tiling.rowPasses;
+/** A group of strips takes at least five calls into the core, each as long as about a hundred points in one pass; planes that are too small drown in them. */
+const pointsPerGroup = 500;
+
+const costOf = (tiling: Tiling): number => tiling.columnPasses + tiling.rowPasses + pointsPerGroup * tiling.groups * tiling.stripsPerGroup;
 
 /**
  * The tiling with the fewest weighted points whose planes and spectrum fit into `bytes`, the smaller one of equals.
