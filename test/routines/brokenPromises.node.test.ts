@@ -3,6 +3,7 @@ import * as field from "../../src/generated/record.js";
 import type { Job } from "./bench.js";
 import { bench, forms, inner } from "./debugCore.js";
 import { enterFields } from "./enterJob.js";
+import { commonFields, ring, sweeping } from "./sweepJob.js";
 import { placePlan } from "./transformPlan.js";
 
 /** Something that a caller may get wrong: it changes a job or the arguments of a call that would be in order. */
@@ -129,5 +130,27 @@ describe("a transform", () => {
     ["rows closer than a vector", (_, given) => (given.stride = 0)],
     ["points outside the memory", (_, given) => (given.base = bench.memory.buffer.byteLength - 64)],
     ["points off their boundary", (_, given) => (given.base! += 2)],
+  ])("traps on %s", (_, broken) => expectTrap(prepare, broken));
+});
+
+describe("a sweep", () => {
+  const prepare = () => {
+    const stated = { ...sweeping({ sample: "u8", channels: 1, columns: 8, rows: 3, m: 3, n: 2 }), samples: [] };
+    const table = bench.place(Int32Array.from(ring(bench, 3, 4 * 12)));
+    const job = commonFields(bench, stated).integer(field.TAPS, bench.take(24)).integer(field.RING_ROWS, 3).integer(field.ROW_TABLE, table);
+    const given = { from: 0, to: 3, table };
+    return { job, given, call: () => inner.sweepDirect(job.address, given.from, given.to, 0) };
+  };
+
+  test.each<[string, Break]>([
+    ["no rows to compute", (_, given) => (given.to = 0)],
+    ["rows above the image", (_, given) => (given.from = -1)],
+    ["rows below the image", (_, given) => (given.to = 4)],
+    ["a kernel without rows", (job) => job.integer(field.KERNEL_ROWS, 0)],
+    ["an extended image that does not fit the results", (job) => job.integer(field.EXTENDED_COLUMNS, 11)],
+    ["results that are not in fours", (job) => job.integer(field.RESULT_FLOATS, 9)],
+    ["result rows on one another", (job) => job.integer(field.RESULT_STRIDE, 16)],
+    ["a ring that is too small", (job) => job.integer(field.RING_ROWS, 2)],
+    ["a pointer table that does not go round twice", (_, given) => (bench.view(Int32Array, given.table!, 6)[4] = bench.view(Int32Array, given.table!, 6)[0]!)],
   ])("traps on %s", (_, broken) => expectTrap(prepare, broken));
 });
