@@ -37,27 +37,13 @@ const pointsPerCall = 1_500_000;
 
 const tilings = new WeakMap<Problem, Tiling>();
 
-/** The tiling for a problem. What the frame needs besides planes and spectrum is small, and set aside first. */
 function tilingOf(problem: Problem): Tiling | undefined {
   let tiling = tilings.get(problem);
   if (!tiling) {
-    tiling = planTiles(problem, problem.bytesAvailable - frameBytes(problem)) ?? planTiles(problem, Infinity);
+    tiling = planTiles(problem, (candidate) => frameFor(problem, candidate).arrangement.byteLength <= problem.bytesAvailable);
     if (tiling) tilings.set(problem, tiling);
   }
   return tiling;
-}
-
-/** Everything but planes and spectrum, for the largest tiling there is. */
-function frameBytes(problem: Problem): number {
-  const { horizontal, vertical, channels } = problem;
-  const marks = markRowBytes(problem) * 2 * (vertical.extended + 4096);
-  return (
-    frameOf(problem, (affordable) => affordable).arrangement.byteLength +
-    horizontal.taps * vertical.taps * 4 +
-    400_000 +
-    8 * horizontal.extended * channels +
-    Math.min(marks, 4_000_000)
-  );
 }
 
 /** Only floats can hold NaN or ∞. */
@@ -76,8 +62,11 @@ const turnsBytes = (points: number): number => {
 };
 
 function frame(problem: Problem): FftFrame {
+  return frameFor(problem, tilingOf(problem)!);
+}
+
+function frameFor(problem: Problem, tiling: Tiling): FftFrame {
   const { horizontal, vertical } = problem;
-  const tiling = tilingOf(problem)!;
   const base = frameOf(problem, (affordable) => Math.min(affordable, tiling.rows));
   const { arrangement } = base;
   const markStride = markRowBytes(problem);

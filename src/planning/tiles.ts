@@ -73,31 +73,46 @@ function tilingOf(problem: Problem, rows: Size, columns: Size): Tiling {
   };
 }
 
-const bytesOf = (tiling: Tiling): number => 2 * tiling.pairs * tiling.planeBytes + tiling.spectrumBytes;
-
 /** A group of strips takes at least five calls into the core, each as long as about a hundred points in one pass; planes that are too small drown in them. */
 const pointsPerGroup = 500;
 
 const costOf = (tiling: Tiling): number => tiling.columnPasses + tiling.rowPasses + pointsPerGroup * tiling.groups * tiling.stripsPerGroup;
 
-/**
- * The tiling with the fewest weighted points whose planes and spectrum fit into `bytes`, the smaller one of equals.
- * It depends on the problem alone, never on a profile, so that a forced FFT gives the same bytes everywhere.
- */
-export function planTiles(problem: Problem, bytes: number): Tiling | undefined {
+/** Every tiling worth a look: transforms long enough for the kernel and no longer than the image needs. */
+function* tilings(problem: Problem): Generator<Tiling> {
   const { horizontal, vertical } = problem;
-  let best: Tiling | undefined;
-  const tallest = vertical.extended + 3;
-  const widest = horizontal.extended + 3;
   for (const rows of sizes) {
     if (rows.points < vertical.taps) continue;
     for (const columns of sizes) {
       if (columns.points < horizontal.taps + 3) continue;
-      const tiling = tilingOf(problem, rows, columns);
-      if (bytesOf(tiling) <= bytes && (!best || costOf(tiling) < costOf(best))) best = tiling;
-      if (columns.points >= widest) break;
+      yield tilingOf(problem, rows, columns);
+      if (columns.points >= horizontal.extended + 3) break;
     }
-    if (rows.points >= tallest) break;
+    if (rows.points >= vertical.extended + 3) break;
   }
+}
+
+/**
+ * The tiling with the fewest weighted points that fits, the smaller one of equals; where none fits, the one with the smallest planes
+ * and spectrum. Nothing where the kernel is longer than the longest transform.
+ *
+ * It depends on the problem and on what fits, never on a profile, so that a forced FFT gives the same bytes everywhere.
+ */
+export function planTiles(problem: Problem, fits: (tiling: Tiling) => boolean): Tiling | undefined {
+  const cheapest = leastOf(problem, costOf, () => true);
+  if (!cheapest || fits(cheapest)) return cheapest;
+  return (
+    leastOf(problem, costOf, fits) ??
+    leastOf(
+      problem,
+      (tiling) => 2 * tiling.pairs * tiling.planeBytes + tiling.spectrumBytes,
+      () => true,
+    )
+  );
+}
+
+function leastOf(problem: Problem, measure: (tiling: Tiling) => number, allowed: (tiling: Tiling) => boolean): Tiling | undefined {
+  let best: Tiling | undefined;
+  for (const tiling of tilings(problem)) if ((!best || measure(tiling) < measure(best)) && allowed(tiling)) best = tiling;
   return best;
 }
