@@ -13,7 +13,7 @@ import { noiseImage } from "../support/noise.js";
 describe("edge response", () => {
   /** erf(x), x = ½, 3/2, 5/2, …: ten decimals; beyond it differs from 1 by less than 10⁻⁶. */
   const erf = [0.5204998778, 0.9661051465, 0.999593048, 0.9999992569];
-  const area = [2 * erf[0]!, erf[1]! - erf[0]!, erf[2]! - erf[1]!, erf[3]! - erf[2]!].map((difference_) => difference_ / 2);
+  const area = [2 * erf[0]!, erf[1]! - erf[0]!, erf[2]! - erf[1]!, erf[3]! - erf[2]!].map((span) => span / 2);
   const taps = [area[3]!, area[2]!, area[1]!, area[0]!, area[1]!, area[2]!, area[3]!];
   const step = Array.from({ length: 16 }, (_, n) => (n < 8 ? 0 : 1));
   const expected = new Map([
