@@ -34,6 +34,17 @@ const passWeight: Record<Radix, number> = { 2: 0.72, 3: 1.07, 4: 1, 5: 1.47 };
 /** Turning, storing and multiplying by the spectrum cost a row's point about two and a half passes. */
 const rowOverhead = 2.5;
 
+/**
+ * Rows longer than this leave the first cache: scratch and spectrum take 64 bytes a point. With 2048 points a run took half as much
+ * again as predicted without this factor (bench/results/tiles-amd-epyc-node-20.20.2.json).
+ */
+const cachedPoints = 1024;
+const uncachedRow = 1.5;
+
+/** Planes and spectrum beyond 8 MB slow every pass down: a fifth at 40 MB, a quarter at 60 MB, measured in the same place. */
+const cachedBytes = 8_000_000;
+const bytesToDouble = 200_000_000;
+
 /** Points of the longest transforms that are considered. */
 const mostPoints = 4096;
 
@@ -54,6 +65,10 @@ function tilingOf(problem: Problem, rows: Size, columns: Size): Tiling {
   const pairs = channels % 2 === 0 ? channels / 2 : channels;
   const groups = Math.ceil(strips / stripsPerGroup);
   const planeStride = rowStride(Math.max(horizontal.extended + 3, columns.points) * 4);
+  const planeBytes = rows.points * planeStride;
+  const spectrumBytes = rows.points * columns.points * 8;
+  const spilling = 1 + Math.max(0, 2 * pairs * planeBytes + spectrumBytes - cachedBytes) / bytesToDouble;
+  const rowSlowness = spilling * (columns.points > cachedPoints ? uncachedRow : 1);
   const touched = 16 * (Math.ceil(horizontal.extended / 16) + Math.ceil(horizontal.count / 16));
   return {
     rows: rows.points,
@@ -66,10 +81,10 @@ function tilingOf(problem: Problem, rows: Size, columns: Size): Tiling {
     groups,
     stripsPerGroup,
     planeStride,
-    planeBytes: rows.points * planeStride,
-    spectrumBytes: rows.points * columns.points * 8,
-    columnPasses: groups * pairs * rows.points * touched * rows.weight,
-    rowPasses: groups * pairs * rows.points * tiles * columns.points * (2 * columns.weight + rowOverhead),
+    planeBytes,
+    spectrumBytes,
+    columnPasses: spilling * groups * pairs * rows.points * touched * rows.weight,
+    rowPasses: rowSlowness * groups * pairs * rows.points * tiles * columns.points * (2 * columns.weight + rowOverhead),
   };
 }
 
