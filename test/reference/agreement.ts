@@ -96,6 +96,11 @@ function alphaRange(setting: Setting, exact: number, bound: number): [number, nu
   return mayBeOpaque ? [Math.min(low, opaque), Math.max(high, opaque)] : [low, high];
 }
 
+/** The alpha, in output units, above which it is written as more than nothing: ½ rounds to 1. */
+function leastWritten({ output }: Setting): number {
+  return output === "f32" ? 0 : 0.5 + 2 ** -30;
+}
+
 function corners(setting: Setting, defined: Defined, start: number, channel: number, inSums: number): number[] {
   const { channels, alpha } = setting;
   const sums = Array.from(defined.sums.subarray(start, start + channels));
@@ -105,6 +110,10 @@ function corners(setting: Setting, defined: Defined, start: number, channel: num
   // Within its own bound of Σh the quotient is exactly 1.
   const opaque = setting.sum * fullValue[setting.input];
   if (alpha === "straight" && Math.abs(alphaSum - opaque) <= 2 * inSums) alphaSums.push(opaque);
+  // The quotient is largest where alpha is only just written, and unbounded for floats.
+  const least = (opaque * leastWritten(setting)) / fullValue[setting.output];
+  const between = Math.min(...alphaSums) <= least && least <= Math.max(...alphaSums);
+  if (alpha === "straight" && between) alphaSums.push(least);
   const values: number[] = [];
   for (const otherAlpha of alphaSums) {
     for (const step of channel === channels - 1 && alpha !== "none" ? [0] : [-inSums, 0, inSums]) {
@@ -113,9 +122,6 @@ function corners(setting: Setting, defined: Defined, start: number, channel: num
       values.push(defined.finish(moved, alphaSum)[channel]!);
     }
   }
-  // A coverage that may be nothing leaves the quotient free.
-  const smallest = Math.min(...alphaSums.map(Math.abs));
-  const crosses = alphaSums.some((sum) => sum > 0) && alphaSums.some((sum) => sum <= 0);
-  if (alpha === "straight" && channel < channels - 1 && crosses && smallest <= inSums && defined.sample === "f32") values.push(-Infinity, Infinity);
+  if (alpha === "straight" && between && defined.sample === "f32") values.push(-Infinity, Infinity);
   return values;
 }
