@@ -2,7 +2,7 @@ import { encode } from "./curve";
 import { add, laneBytes, loadLanes, multiply, narrow16_u8, narrow8_u16, roundHalfUpOne, splat, storeLanes } from "./lanes";
 import { assertLeaveRow } from "./promises";
 import {
-  ALPHA, ALPHA_BOUND, ANCHOR_COLUMN, CHANNELS, COLOURS, DECODE, GAIN, KEEP_ROW, OPAQUE_SUM, OFFSET, OUTPUT_COLUMNS, OUTPUT_FULL, OUTPUT_KIND,
+  ALPHA, ALPHA_BOUND, ALPHA_NOISE, ANCHOR_COLUMN, CHANNELS, COLOURS, DECODE, GAIN, KEEP_ROW, OPAQUE_SUM, OFFSET, OUTPUT_COLUMNS, OUTPUT_FULL, OUTPUT_KIND,
   ROUND, SOURCE_FULL, WEIGHTS, WEIGHT_COLUMNS, WEIGHT_ROWS, WEIGHT_STRIDE, WORKING_FULL,
 } from "./record";
 
@@ -71,7 +71,8 @@ function leaveStraight(job: usize, y: usize): void {
   const offset = load<f32>(job, OFFSET);
   const end = y + (<usize>(load<i32>(job, OUTPUT_COLUMNS) * (colours + 1)) << 2);
   while (y < end) {
-    const weight = load<f32>(y + (<usize>colours << 2));
+    const found = load<f32>(y + (<usize>colours << 2));
+    const weight: f32 = abs<f32>(found) <= load<f32>(job, ALPHA_NOISE) ? 0 : found;
     const opaque = abs<f32>(weight - sum) <= load<f32>(job, ALPHA_BOUND);
     const alpha: f32 = opaque ? 1 : weight / sum;
     const written = writtenAlpha(job, alpha);

@@ -89,6 +89,8 @@ export const ALPHA = 180;
 /** f32: h∗a of an opaque image, Σh · WORKING_FULL, and how far the computed h∗a may be from it and still stand for it. */
 export const OPAQUE_SUM = 184;
 export const ALPHA_BOUND = 188;
+/** f32: where the computed h∗a is no larger, it is noise and the result transparent. */
+export const ALPHA_NOISE = 300;
 /** Renormalised border: i32 a row, i32 a column, floats [row pattern][column pattern], floats a row pattern; 0 where there is none. */
 export const WEIGHT_ROWS = 192;
 export const WEIGHT_COLUMNS = 196;
@@ -124,7 +126,7 @@ export const MARKS = 272;
 export const MARK_STRIDE = 276;
 export const MARK_COUNTS = 280;
 export const MARK_ROW = 284;
-/** f32: 1 ÷ (tile rows · tile columns), times 2²⁰ for float samples (see HEADROOM in fft/strips). */
+/** f32. FFT: 1 ÷ (tile rows · tile columns). Running sums of floats: the power of two that keeps sums over the window finite. */
 export const SCALE = 288;
 
-export const RECORD_BYTES = 304;
+export const RECORD_BYTES = 320;

@@ -1,9 +1,10 @@
 import { enterRow } from "./enter";
 import { add, laneBytes, loadLanes, multiply, splat, storeLanes } from "./lanes";
 import {
-  CHANNELS, COLUMN_PHASE, ENTERED, ENTERED_STRIDE, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, RESULT, RESULT_FLOATS, ROW_PHASE, ROW_TABLE, SUMS, TAPS,
+  CHANNELS, COLUMN_PHASE, ENTERED, ENTERED_STRIDE, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, RESULT, RESULT_FLOATS, ROW_PHASE, ROW_TABLE, SCALE, SUMS, TAPS,
 } from "./record";
 import { assertRunningSum, assertSweep } from "./promises";
+import { scaleRow } from "./fft/strips";
 import { firstNewRow, leaveStaged, stagedRow } from "./sweep";
 
 /*
@@ -55,6 +56,7 @@ function sumRow<V>(job: usize, out: usize, row: i32, source: usize): void {
   const m = load<i32>(job, KERNEL_COLUMNS);
   const entered = load<usize>(job, ENTERED);
   enterRow<V>(job, entered, row, source);
+  scaleRow<V>(entered, (columns + m - 1) * channels, load<f32>(job, SCALE));
   const suffix = entered + load<usize>(job, ENTERED_STRIDE);
   const phase = load<i32>(job, COLUMN_PHASE);
   suffixSums(suffix, entered, columns + m - 1, m, phase, channels);

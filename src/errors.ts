@@ -66,3 +66,8 @@ export class ConvolutionError extends Error {
     this.received = details.received;
   }
 }
+
+/** A value as messages show it: text in quotes, so that "5" is not taken for 5. */
+export function shown(value: unknown): string {
+  return typeof value === "string" ? `"${value}"` : typeof value === "bigint" ? `${value}n` : String(value);
+}

@@ -35,8 +35,15 @@ function markCount(job: usize, row: i32, half: i32): usize {
   return load<usize>(job, MARK_COUNTS) + (<usize>(half * load<i32>(job, TILE_ROWS) + row) << 2);
 }
 
-/** 2⁻²⁰: samples as large as floats can be still have a finite sum over a tile; the spectrum makes up for it (see SCALE). */
+/** 2⁻²⁰: samples as large as floats can be still have finite sums all the way through a tile; results are scaled back as they leave. */
 const HEADROOM: f32 = 9.5367431640625e-7;
+
+/** row ← scale · row, whole vectors. */
+export function scaleRow<V>(row: usize, floats: i32, scale: f32): void {
+  const factor = splat<V>(scale);
+  const end = row + (<usize>floats << 2);
+  for (; row < end; row += laneBytes<V>()) storeLanes<V>(row, multiply<V>(factor, loadLanes<V>(row)));
+}
 
 /**
  * Makes an entered row of floats fit for a transform, which would carry what is not finite to the whole tile: sets it to 0 and marks
@@ -58,9 +65,7 @@ function tameFloats<V>(job: usize, entered: usize, floats: i32, row: i32, half: 
     }
   }
   store<i32>(markCount(job, row, half), count);
-  const scale = splat<V>(HEADROOM);
-  const end = entered + (<usize>floats << 2);
-  for (let p = entered; p < end; p += laneBytes<V>()) storeLanes<V>(p, multiply<V>(scale, loadLanes<V>(p)));
+  scaleRow<V>(entered, floats, HEADROOM);
 }
 
 /** Spreads an entered row over the planes of its channels, zeros behind it. */
@@ -169,7 +174,10 @@ export function leaveStrip<V>(job: usize, from: i32, to: i32, strip: i32): void 
   const y = load<usize>(job, RESULT);
   for (let row = from; row < to; row++) {
     gather<V>(job, y, row, half);
-    if (load<usize>(job, MARKS) && gatherMarks(job, row, half)) patch(job, y);
+    if (load<usize>(job, MARKS)) {
+      scaleRow<V>(y, load<i32>(job, OUTPUT_COLUMNS) * load<i32>(job, CHANNELS), 1 / HEADROOM);
+      if (gatherMarks(job, row, half)) patch(job, y);
+    }
     leaveStaged<V>(job, y, top + row, top + from);
   }
 }

@@ -41,7 +41,8 @@ export class PreparedFilter implements Filter {
   run(image: Raster, target?: Raster): Raster {
     const installed = this.#installed;
     if (!installed) {
-      const message = "run: the filter was disposed, its memory is given back. Prepare it anew.";
+      const message =
+        "run: the filter was disposed, by itself or with its engine, and its memory is given back. Prepare it anew on an engine that is not disposed.";
       throw new ConvolutionError("disposed", message, { expected: "a filter that is not disposed", received: "a disposed filter" });
     }
     const { request, horizontal, vertical } = this.#problem;

@@ -44,12 +44,22 @@ async function compile(build: Build): Promise<WebAssembly.Module> {
   }
 }
 
+/** The first wrong answer; a core that traps has none. */
+function answered(routines: Routines, memory: EngineMemory, build: Build): string | undefined {
+  try {
+    return failedAnswer(routines, memory, build);
+  } catch (cause) {
+    if (cause instanceof ConvolutionError) throw cause;
+    return `it traps (${String(cause)})`;
+  }
+}
+
 /** @throws ConvolutionError `self-test-failed` with the answer that was wrong */
 async function start(wanted: Build | "auto", module: WebAssembly.Module, limit: number): Promise<Core> {
   const memory = new EngineMemory(limit);
   const linked = await link(module, memory.memory);
   const build: Build = "missing" in linked || linked.vectorFloats() === 4 ? "simd" : "scalar";
-  const failure = "missing" in linked ? linked.missing : wanted !== "auto" && wanted !== build ? `it is a ${build} core` : failedAnswer(linked, memory, build);
+  const failure = "missing" in linked ? linked.missing : wanted !== "auto" && wanted !== build ? `it is a ${build} core` : answered(linked, memory, build);
   if (failure === undefined) return { build, memory, routines: linked as Routines };
   const message = `The ${wanted} core fails its known-answer test: ${failure}. Try another build; if you passed a module, compile it from this package's own core.`;
   throw new ConvolutionError("self-test-failed", message, { expected: "the known answers", received: failure });

@@ -7,12 +7,12 @@ import { nearestName } from "../math/nearestName.js";
  * @throws ConvolutionError `unknown-option`, `unknown-value` (not an object)
  */
 export function checkOptionNames(where: string, options: unknown, names: readonly string[]): void {
-  if (typeof options !== "object" || options === null) {
-    const received = options === null ? "null" : typeof options;
+  if (Object.prototype.toString.call(options) !== "[object Object]") {
+    const received = Object.prototype.toString.call(options).slice(8, -1).toLowerCase();
     const message = `${where} takes its options as an object with ${listed(names)}; found ${received}.`;
     throw new ConvolutionError("unknown-value", message, { expected: "an object of options", received });
   }
-  for (const given of Object.keys(options)) {
+  for (const given of Object.keys(options as object)) {
     if (names.includes(given)) continue;
     const nearest = nearestName(given, names);
     const advice = nearest === undefined ? `It takes ${listed(names)}.` : `Did you mean "${nearest}"?`;

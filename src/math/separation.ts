@@ -40,7 +40,16 @@ export function separate(taps: Float64Array, rows: number, columns: number, most
     separation.residuals.push(left);
   }
   if (separation.terms.length === 1 && left === 0) separation.terms[0] = integerTerm(taps, separation.terms[0]!);
+  separation.terms = separation.terms.map(held);
   return separation;
+}
+
+/** The same term with Σ|row| ≤ 1, by a power of two: a row's result is never larger than its samples, and integers stay as exact. */
+function held({ column, row }: SeparableTerm): SeparableTerm {
+  const sum = absoluteSum(row);
+  let scale = 1;
+  while (sum > scale) scale *= 2;
+  return { column: column.map((value) => value * scale), row: row.map((value) => value / scale) };
 }
 
 export function absoluteSum(values: ArrayLike<number>): number {

@@ -15,26 +15,43 @@ export function outputScale(problem: Problem): number {
   return request.alpha === "premultiplied" ? Math.max(colour, opaque) : colour;
 }
 
+/** How far a method may be off among working floats, for |x| ≤ workingFull. */
+export interface MethodError {
+  /** Roundings of sums whose terms have one sign where the border is renormalised: as small beside a small inside weight as beside Σh. */
+  relative: number;
+  /** Everything else (transform noise, dropped terms): it stays where the weight is small, and is divided by it. */
+  absolute: number;
+}
+
 /**
- * From the error of a method among working floats to the contract's bound in output units:
+ * From the error of a method to the contract's bound in output units:
  *
- *     bound = outputScale · error ÷ (smallest inside weight ÷ Σh)  +  roundings on the way in and out
- *
- * @param error largest error of h∗x among working floats, for |x| ≤ workingFull
+ *     bound = outputScale · (relative + absolute ÷ (smallest inside weight ÷ Σh))  +  roundings on the way in and out
  */
-export function outputBound(problem: Problem, error: number): number {
-  const largest = problem.analysis.absoluteSum * problem.workingFull;
-  const all = weighted(problem, error + conversionRoundings(problem) * unitRoundoff * largest);
-  return outputScale(problem) * all + Math.abs(problem.request.output.offset) * unitRoundoff;
+export function outputBound(problem: Problem, error: MethodError): number {
+  const { analysis, workingFull, request } = problem;
+  const conversions = conversionRoundings(problem) * unitRoundoff * analysis.absoluteSum * workingFull;
+  const alpha = request.alpha === "none" ? 0 : 4 * unitRoundoff * sampleFacts[request.output.sample].full;
+  return outputScale(problem) * (weighted(problem, error) + conversions) + alpha + Math.abs(request.output.offset) * unitRoundoff;
 }
 
 /** Error that the alpha of an opaque image may show: where h∗a is that close to Σh, it is Σh. In working units. */
-export function opaqueBound(problem: Problem, error: number): number {
-  return weighted(problem, error + 4 * unitRoundoff * problem.analysis.absoluteSum * problem.workingFull);
+export function opaqueBound(problem: Problem, error: MethodError): number {
+  return weighted(problem, error) + 4 * unitRoundoff * problem.analysis.absoluteSum * problem.workingFull;
 }
 
-function weighted(problem: Problem, error: number): number {
-  return problem.renormalised ? (error * problem.analysis.sum) / smallestWeight(problem) : error;
+/** Alpha that is nothing but noise: where the computed h∗a is no larger, there is none. Sums of non-negative terms have no noise where there is nothing. */
+export function transparentBound(problem: Problem, error: MethodError): number {
+  return error.absolute > 0 ? weighted(problem, { relative: 0, absolute: error.absolute }) : 0;
+}
+
+/** The smallest inside weight as a part of Σh; 1 but for the renormalised border. */
+export function leastWeight(problem: Problem): number {
+  return problem.renormalised ? smallestWeight(problem) / problem.analysis.sum : 1;
+}
+
+function weighted(problem: Problem, { relative, absolute }: MethodError): number {
+  return relative + absolute / leastWeight(problem);
 }
 
 /** Roundings that a value meets besides the sum: decoding, premultiplying, dividing, encoding, gain and offset. */
@@ -46,6 +63,14 @@ function conversionRoundings(problem: Problem): number {
   if (problem.renormalised) roundings += 2;
   if (output.gain !== 1 || output.offset !== 0) roundings += 3;
   return roundings;
+}
+
+/** 2⁻¹⁴⁹, the step of single precision below 2⁻¹²⁶: products and taps down there are rounded by half of it. */
+const smallestStep = 1.401298464324817e-45;
+
+/** What rounding near 0 may add to a sum over all taps. */
+export function underflow({ horizontal, vertical, workingFull }: Problem): number {
+  return horizontal.taps * vertical.taps * smallestStep * (1 + workingFull);
 }
 
 /** Error of a sum of products: each passes through `roundings` of them, weights sum to `weight` in absolute value. */

@@ -8,7 +8,7 @@ export const mostTerms = 16;
 export interface KernelAnalysis {
   sum: number;
   absoluteSum: number;
-  /** All taps are the same number, not 0. */
+  /** All taps are the same number. */
   constant: boolean;
   /** All taps are integers. */
   integer: boolean;
@@ -32,7 +32,7 @@ function analyseTaps(kernel: Kernel): KernelAnalysis {
   return {
     sum: kernel.sum,
     absoluteSum: absoluteSum(taps),
-    constant: taps[0] !== 0 && taps.every((tap) => tap === taps[0]),
+    constant: taps.every((tap) => tap === taps[0]),
     integer: taps.every((tap) => Number.isInteger(tap)),
     negative: taps.some((tap) => tap < 0),
     separation: () => (separation ??= separate(taps, kernel.height, kernel.width, limit)),

@@ -50,7 +50,7 @@ function better(a: Priced, b: Priced, once: boolean): Priced {
 }
 
 /**
- * Compares the methods.
+ * Compares the methods. Where results are integers, those that may be off by more than a level do not win as long as another may not.
  *
  * @param once true where the filter will run a single time: setting up counts then
  * @throws ConvolutionError `method-not-applicable` for a forced method, `memory-limit` where none fits
@@ -62,7 +62,9 @@ export function choose(problem: Problem, profile: HardwareProfile, once: boolean
   if (method !== "auto") return { ...forced(all, method, problem), candidates };
   const open = all.filter(({ candidate }) => candidate.refused === undefined);
   if (open.length === 0) throw outOfMemory(candidates, problem);
-  const winner = open.reduce((a, b) => better(a, b, once));
+  const close = open.filter(({ candidate }) => candidate.errorBound! <= 1);
+  const integers = problem.request.output.sample !== "f32" && close.length > 0;
+  const winner = (integers ? close : open).reduce((a, b) => better(a, b, once));
   return { plan: winner.plan, chosen: winner.candidate, candidates };
 }
 

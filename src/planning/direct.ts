@@ -1,5 +1,5 @@
 import * as field from "../generated/record.js";
-import { outputBound, sumError } from "./accuracy.js";
+import { outputBound, sumError, underflow, type MethodError } from "./accuracy.js";
 import { frameCounts, frameOf, programOf } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { correlationTaps, type Problem } from "./problem.js";
@@ -27,8 +27,8 @@ function frame(problem: Problem): DirectFrame {
 }
 
 /** Each tap is rounded once, each product once, each sum once. */
-function error(problem: Problem): number {
-  return sumError(problem, problem.horizontal.taps * problem.vertical.taps + 1, problem.analysis.absoluteSum);
+function error(problem: Problem): MethodError {
+  return { relative: sumError(problem, problem.horizontal.taps * problem.vertical.taps + 1, problem.analysis.absoluteSum), absolute: underflow(problem) };
 }
 
 export const direct: MethodPlan = {

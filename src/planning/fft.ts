@@ -3,7 +3,7 @@ import { transformError } from "../math/rounding.js";
 import { rootsOfUnity } from "../math/rootsOfUnity.js";
 import { radicesOf } from "../math/smoothNumbers.js";
 import type { Step, Table } from "../runtime/program.js";
-import { integerResults, outputBound } from "./accuracy.js";
+import { integerResults, leastWeight, outputBound, underflow, type MethodError } from "./accuracy.js";
 import { frameCounts, frameOf, plainStep, programOf, writing, type Frame } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { correlationTaps, vectorFloats, type Problem } from "./problem.js";
@@ -29,8 +29,8 @@ interface FftFrame extends Frame {
   markRow: number;
 }
 
-/** 2²⁰: what float samples are scaled down by on their way into the planes. */
-const headroom = 1_048_576;
+/** With the renormalised border the error is divided by the inside weight: a smaller share than this is no longer worth a transform. */
+const leastShare = 0.001;
 
 /** Longest transform's points: one call transforms about this many weighted points. */
 const pointsPerCall = 1_500_000;
@@ -113,12 +113,13 @@ function transformTables(points: number, plan: number, turns: number): Table[] {
 }
 
 /** Error among working floats. Exact results that are integers lose it where it stays below ½. */
-function error(problem: Problem): number {
+function error(problem: Problem): MethodError {
   const tiling = tilingOf(problem)!;
-  return transformError(tiling.rows * tiling.columns) * problem.analysis.absoluteSum * problem.workingFull;
+  const noise = transformError(tiling.rows * tiling.columns) * problem.analysis.absoluteSum * problem.workingFull;
+  return { relative: 0, absolute: noise + underflow(problem) };
 }
 
-const roundable = (problem: Problem): boolean => integerResults(problem) && error(problem) < 0.5;
+const roundable = (problem: Problem): boolean => integerResults(problem) && error(problem).absolute < 0.5;
 
 /** Units of one call, as many as last a few milliseconds, in multiples of `grain`. */
 const unitsPerCall = (costPerUnit: number, grain: number): number => Math.max(grain, grain * Math.floor(pointsPerCall / costPerUnit / grain));
@@ -202,9 +203,13 @@ function setupSteps(problem: Problem, tiling: Tiling): Step[] {
 export const fft: MethodPlan = {
   name: "fft",
 
-  applicable: (problem) =>
-    tilingOf(problem) !== undefined ||
-    `A kernel of ${problem.horizontal.taps}×${problem.vertical.taps} taps is longer than the longest transform, 4096 points.`,
+  applicable(problem) {
+    const { horizontal, vertical } = problem;
+    if (tilingOf(problem) === undefined) return `A kernel of ${horizontal.taps}×${vertical.taps} taps leaves no room in the longest transform, 4096 points.`;
+    const share = leastWeight(problem);
+    if (share >= leastShare) return true;
+    return `At the border as little as ${share.toExponential(1)} of the kernel's weight falls inside, and the noise of a transform would be divided by it.`;
+  },
 
   work(problem) {
     const { horizontal, vertical, channels } = problem;
@@ -258,7 +263,7 @@ export const fft: MethodPlan = {
           .pointer(field.SPECTRUM, layout.spectrum)
           .pointer(field.ROW_SCRATCH, layout.scratch)
           .integer(field.STRIP_ROWS, tiling.stripRows)
-          .float(field.SCALE, (marksNeeded(problem) ? headroom : 1) / (tiling.rows * tiling.columns));
+          .float(field.SCALE, 1 / (tiling.rows * tiling.columns));
         if (!marksNeeded(problem)) return;
         job
           .pointer(field.MARKS, layout.marks)

@@ -1,6 +1,6 @@
 import * as field from "../generated/record.js";
 import type { Intake, Outlet, Program, RowSpan, Step, Table } from "../runtime/program.js";
-import { opaqueBound } from "./accuracy.js";
+import { opaqueBound, transparentBound, type MethodError } from "./accuracy.js";
 import { Arrangement, rowStride } from "./arrangement.js";
 import type { Counts } from "./cost.js";
 import type { Axis, Problem } from "./problem.js";
@@ -177,7 +177,7 @@ function enterFields(problem: Problem, frame: Frame, job: JobRecord): void {
 
 const alphaCodes = { none: 0, straight: 1, premultiplied: 2, keep: 3 } as const;
 
-function leaveFields(problem: Problem, frame: Frame, job: JobRecord, error: number, round: boolean): void {
+function leaveFields(problem: Problem, frame: Frame, job: JobRecord, error: MethodError, round: boolean): void {
   const { horizontal, vertical, request, channels } = problem;
   const { outlet, offsets } = frame;
   const facts = sampleFacts[request.output.sample];
@@ -195,7 +195,7 @@ function leaveFields(problem: Problem, frame: Frame, job: JobRecord, error: numb
     .float(field.OPAQUE_SUM, problem.analysis.sum * problem.workingFull)
     .integer(field.ANCHOR_COLUMN, horizontal.anchor)
     .integer(field.ANCHOR_ROW, vertical.anchor);
-  if (request.alpha === "straight") job.float(field.ALPHA_BOUND, opaqueBound(problem, error));
+  if (request.alpha === "straight") job.float(field.ALPHA_BOUND, opaqueBound(problem, error)).float(field.ALPHA_NOISE, transparentBound(problem, error));
   if (request.alpha === "keep") job.pointer(field.KEEP_STAGING, frame.intake.keepOffset).pointer(field.KEEP_ROW, offsets.keepRow);
   if (!problem.renormalised) return;
   job
@@ -232,7 +232,7 @@ export interface Body {
   setup: Step[];
   steps: Step[];
   /** Error among working floats (for alpha), and whether exact results are integers whose error may be taken away. */
-  error: number;
+  error: MethodError;
   round: boolean;
 }
 

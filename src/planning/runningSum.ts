@@ -1,6 +1,6 @@
 import * as field from "../generated/record.js";
 import { gamma } from "../math/rounding.js";
-import { outputBound, sumError } from "./accuracy.js";
+import { outputBound, sumError, underflow, type MethodError } from "./accuracy.js";
 import { rowStride } from "./arrangement.js";
 import { constantPixels, frameCounts, frameOf, programOf } from "./frame.js";
 import type { MethodPlan } from "./method.js";
@@ -57,10 +57,17 @@ function rawConstantRow(problem: Problem, layout: RunningSumFrame): Uint8Array |
   return row.map((_, k) => pixel[k % problem.channels]!);
 }
 
-function error(problem: Problem): number {
+function error(problem: Problem): MethodError {
   const { horizontal, vertical, analysis, workingFull } = problem;
-  if (integerSums(problem)) return gamma(3) * analysis.absoluteSum * workingFull;
-  return sumError(problem, horizontal.taps + vertical.taps + 3, analysis.absoluteSum);
+  if (integerSums(problem)) return { relative: gamma(3) * analysis.absoluteSum * workingFull, absolute: 0 };
+  return { relative: sumError(problem, horizontal.taps + vertical.taps + 3, analysis.absoluteSum), absolute: underflow(problem) };
+}
+
+/** The power of two that keeps a float sum over the window no larger than its samples. */
+function windowScale({ horizontal, vertical }: Problem): number {
+  let scale = 1;
+  while (horizontal.taps * vertical.taps * scale > 1) scale /= 2;
+  return scale;
 }
 
 /** Position inside its block of the first sample that is read, blocks being counted from image sample 0. */
@@ -99,11 +106,12 @@ export const runningSum: MethodPlan = {
           .integer(field.ENTERED_STRIDE, layout.extendedStride)
           .integer(field.COLUMN_PHASE, phase(horizontal.first, horizontal.taps))
           .integer(field.ROW_PHASE, phase(vertical.first, vertical.taps))
+          .float(field.SCALE, windowScale(problem))
           .pointer(field.SUMS, layout.sums)
           .integer(field.RAW_SAMPLES, layout.rawSamples)
           .pointer(field.RAW_CONSTANT, layout.rawConstant),
       tables: [
-        { offset: layout.tap, data: Float32Array.of(correlationTaps(problem)[0]!) },
+        { offset: layout.tap, data: Float32Array.of(correlationTaps(problem)[0]! / (integers ? 1 : windowScale(problem))) },
         ringTables(layout, 1),
         ...(integers ? [{ offset: layout.rawConstant, data: rawConstantRow(problem, layout) }] : []),
       ],

@@ -1,10 +1,11 @@
 import * as field from "../generated/record.js";
 import { absoluteSum, type SeparableTerm } from "../math/separation.js";
-import { integerResults, outputBound, outputScale, sumError } from "./accuracy.js";
+import { integerResults, leastWeight, outputBound, outputScale, sumError, underflow, type MethodError } from "./accuracy.js";
 import { mostTerms } from "./analysis.js";
 import { frameCounts, frameOf, programOf } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { inCorrelationOrder, type Problem } from "./problem.js";
+import { sampleFacts } from "./samples.js";
 import { pairBlocks, rowBlocks, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
 
 /** Row results in one ring a term, then columns: r·(m + n) multiply–adds a sample for a sum of r separable terms. */
@@ -15,9 +16,14 @@ interface SeparableFrame extends SweepFrame {
   entered: number;
 }
 
-/** Σ|taps left out| that the caller's tolerance allows, and that double precision leaves anyway (0). */
+/**
+ * Σ|taps left out| that the caller's tolerance allows. Whatever is divided by less than all of the weight afterwards is allowed that much
+ * less: by the inside weight of a renormalised border, by alpha down to half a level of it.
+ */
 function allowedResidual(problem: Problem): number {
-  return problem.request.tolerance / Math.max(1e-300, outputScale(problem) * problem.workingFull);
+  const { tolerance, alpha, output } = problem.request;
+  const leastAlpha = alpha === "straight" ? 0.5 / sampleFacts[output.sample].full : 1;
+  return (tolerance * leastWeight(problem) * leastAlpha) / Math.max(1e-300, outputScale(problem) * problem.workingFull);
 }
 
 /** The fewest terms whose residual is allowed, or nothing. An all-zero kernel takes one term of zeros. */
@@ -56,16 +62,18 @@ function frame(problem: Problem): SeparableFrame {
 }
 
 /** Each vector's taps are rounded once, and a result passes through the sums of a row, of a column and of the terms. */
-function error(problem: Problem): number {
+function error(problem: Problem): MethodError {
   const terms = termsOf(problem);
   const weight = terms.reduce((sum, { column, row }) => sum + absoluteSum(column) * absoluteSum(row), 0);
   const roundings = problem.horizontal.taps + terms.length * problem.vertical.taps + 3;
   const dropped = problem.analysis.separation().residuals[termsNeeded(problem)!]!;
-  return sumError(problem, roundings, weight) + dropped * problem.workingFull;
+  const sums = sumError(problem, roundings, weight);
+  const oneSign = terms.length === 1 && dropped === 0;
+  return { relative: oneSign ? sums : 0, absolute: (oneSign ? 0 : sums) + dropped * problem.workingFull + underflow(problem) };
 }
 
 /** Several terms seldom consist of integers: where the results must, what the terms added is taken away again. */
-const roundable = (problem: Problem): boolean => termsOf(problem).length > 1 && integerResults(problem) && error(problem) < 0.5;
+const roundable = (problem: Problem): boolean => termsOf(problem).length > 1 && integerResults(problem) && error(problem).absolute < 0.5;
 
 /** Vectors of all terms, one after the other, in correlation order. */
 function stacked(problem: Problem, part: "row" | "column"): Float32Array<ArrayBuffer> {

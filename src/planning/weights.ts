@@ -46,29 +46,48 @@ class StretchSums {
   readonly #values: ArrayLike<number>;
   readonly #upTo: Float64Array;
   readonly #from: Float64Array;
+  #blocks: { length: number; upTo: Float64Array; from: Float64Array } | undefined;
 
   constructor(values: ArrayLike<number>) {
-    const count = values.length;
     this.#values = values;
-    this.#upTo = new Float64Array(count + 1);
-    this.#from = new Float64Array(count + 1);
-    for (let k = 0; k < count; k++) this.#upTo[k + 1] = this.#upTo[k]! + values[k]!;
-    for (let k = count - 1; k >= 0; k--) this.#from[k] = this.#from[k + 1]! + values[k]!;
+    this.#upTo = sumsUpTo(values, values.length);
+    this.#from = sumsFrom(values, values.length);
   }
 
   /** Σ values[before] … values[after − 1]. */
   inside({ before, after }: Pattern): number {
-    if (before === 0) return this.#upTo[after]!;
+    const length = after - before;
+    if (length === 0) return 0;
+    if (before === 0) return this.#upTo[after - 1]!;
     if (after === this.#values.length) return this.#from[before]!;
-    let sum = 0;
-    for (let k = before; k < after; k++) sum += this.#values[k]!;
-    return sum;
+    const { upTo, from } = this.#blocksOf(length);
+    return before % length === 0 ? upTo[after - 1]! : from[before]! + upTo[after - 1]!;
+  }
+
+  /** Stretches that touch neither end are all of one length (the image's): two blocks of that length cover each. */
+  #blocksOf(length: number): { upTo: Float64Array; from: Float64Array } {
+    if (this.#blocks?.length !== length) this.#blocks = { length, upTo: sumsUpTo(this.#values, length), from: sumsFrom(this.#values, length) };
+    return this.#blocks;
   }
 
   /** Σ of all others. */
   outside({ before, after }: Pattern): number {
-    return this.#upTo[before]! + this.#from[after]!;
+    return (before > 0 ? this.#upTo[before - 1]! : 0) + (after < this.#values.length ? this.#from[after]! : 0);
   }
+}
+
+/** Entry k: the sum from the start of its block of `length` values up to value k. */
+function sumsUpTo(values: ArrayLike<number>, length: number): Float64Array {
+  const sums = new Float64Array(values.length);
+  for (let k = 0; k < values.length; k++) sums[k] = (k % length === 0 ? 0 : sums[k - 1]!) + values[k]!;
+  return sums;
+}
+
+/** Entry k: the sum from value k to the end of its block. */
+function sumsFrom(values: ArrayLike<number>, length: number): Float64Array {
+  const sums = new Float64Array(values.length);
+  for (let k = values.length - 1; k >= 0; k--) sums[k] = ((k + 1) % length === 0 || k + 1 === values.length ? 0 : sums[k + 1]!) + values[k]!;
+  return sums;
 }
 
 /** For one row pattern: the weight inside of each column of taps, and the weight of outside rows that count all the same. */

@@ -17,8 +17,6 @@ interface Cut extends Sweeping {
 
 const stripRowsOf = ({ tileRows, n }: Cut): number => tileRows - n + 1;
 const tileStepOf = ({ tileColumns, m }: Cut): number => 4 * Math.floor((tileColumns - m + 1) / 4);
-/** What float samples are scaled down by as they enter, so that large ones have finite sums: see HEADROOM in the core's fft/strips. */
-const headroom = 2 ** 20;
 
 function stripJob({ bench }: Core, stated: Cut): Job {
   const { tileRows, tileColumns, channels, columns, sample } = stated;
@@ -41,7 +39,7 @@ function stripJob({ bench }: Core, stated: Cut): Job {
     .integer(field.SPECTRUM, bench.take(tileRows * tileColumns * 8))
     .integer(field.ROW_SCRATCH, bench.take(tileColumns * 32))
     .integer(field.STRIP_ROWS, stripRowsOf(stated))
-    .float(field.SCALE, (sample === "f32" ? headroom : 1) / (tileRows * tileColumns));
+    .float(field.SCALE, 1 / (tileRows * tileColumns));
   if (sample !== "f32") return job;
   const markStride = 8 * Math.ceil((columns.length * channels) / 64);
   return job

@@ -81,12 +81,13 @@ function floatSumsJob({ bench }: Core, stated: Sweeping, tap: number, phases: { 
   const stride = 16 * Math.ceil(extendedBytes(stated) / 16) + 16;
   const floats = 4 * Math.ceil((resultColumns(stated) * stated.channels) / 4);
   return commonFields(bench, stated)
-    .integer(field.TAPS, bench.place(Float32Array.of(tap)))
+    .integer(field.TAPS, bench.place(Float32Array.of(64 * tap)))
     .integer(field.RING_ROWS, stated.n)
     .integer(field.ROW_TABLE, bench.place(Int32Array.from(ring(bench, stated.n, 4 * floats))))
     .integer(field.ENTERED, bench.take(2 * stride))
     .integer(field.ENTERED_STRIDE, stride)
     .integer(field.SUMS, bench.take(4 * floats))
+    .float(field.SCALE, 1 / 64)
     .integer(field.COLUMN_PHASE, phases.column)
     .integer(field.ROW_PHASE, phases.row);
 }

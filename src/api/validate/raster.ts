@@ -1,4 +1,4 @@
-import { ConvolutionError } from "../../errors.js";
+import { ConvolutionError, shown } from "../../errors.js";
 import type { Channels, Raster, Samples, SampleType } from "../../types.js";
 
 /** The longest side of an image: index maps stay small, and indices exact. */
@@ -66,12 +66,12 @@ function checkedSamples(what: string, data: unknown): { data: Samples; sample: S
 /** @throws ConvolutionError `invalid-raster` */
 export function checkedSide(what: string, name: string, value: unknown): number {
   if (Number.isInteger(value) && (value as number) >= 1 && (value as number) <= longestSide) return value as number;
-  return fail(what, `${name} is ${String(value)}`, `a whole number 1…${longestSide}`, `Give ${name} in samples.`);
+  return fail(what, `${name} is ${shown(value)}`, `a whole number 1…${longestSide}`, `Give ${name} in samples.`);
 }
 
 export function checkedChannels(what: string, value: unknown): Channels {
   if (value === 1 || value === 2 || value === 3 || value === 4) return value;
-  return fail(what, `channels is ${String(value)}`, "1, 2, 3 or 4", "Give the samples of one pixel.");
+  return fail(what, `channels is ${shown(value)}`, "1, 2, 3 or 4", "Give the samples of one pixel.");
 }
 
 function channelsFromLength(what: string, length: number, width: number, height: number): Channels {
@@ -88,7 +88,7 @@ function channelsFromLength(what: string, length: number, width: number, height:
 function checkedStride(what: string, value: unknown, rowSamples: number): number {
   if (value === undefined) return rowSamples;
   if (Number.isSafeInteger(value) && (value as number) >= rowSamples) return value as number;
-  return fail(what, `stride is ${String(value)}`, `a whole number of at least width · channels = ${rowSamples}`, "Give stride in samples.");
+  return fail(what, `stride is ${shown(value)}`, `a whole number of at least width · channels = ${rowSamples}`, "Give stride in samples.");
 }
 
 /**

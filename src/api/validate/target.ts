@@ -39,7 +39,7 @@ export function checkedTarget(
     throw new ConvolutionError("invalid-target", message, { expected: shapeOf(result), received: shapeOf(checked) });
   }
   if (overlap(checked.data, source.data)) {
-    const message = "run: target and image share memory, so results would be read as samples. Give a target of its own.";
+    const message = "run: target and image lie in the same stretch of memory, where results could be read as samples. Give a target of its own.";
     throw new ConvolutionError("overlapping-target", message, { expected: "memory apart from the image", received: "overlapping memory" });
   }
   return checked;
