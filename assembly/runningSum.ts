@@ -15,37 +15,51 @@ import { firstNewRow, leaveStaged, stagedRow } from "./sweep";
  * so that a region gives the same bytes as the whole.  (van Herk 1992 and Gil & Werman 1993 use the same blocks for maxima.)
  */
 
-/** row[k] ← Σ row[k] … row[end of its block], in floats; blocks of m pixels, the first one `phase` pixels in. */
-function suffixSums(out: usize, row: usize, columns: i32, m: i32, phase: i32, channels: i32): void {
+/**
+ * Sums inside the blocks of a row, in place and beside it; blocks of m pixels, the first one `phase` pixels in.
+ *
+ *     suffix[k] = Σ row[k] … row[last of its block]        row[k] ← Σ row[first of its block] … row[k]
+ */
+function blockSums<V>(suffix: usize, row: usize, pixels: i32, m: i32, phase: i32, channels: i32): void {
   const pixel = <usize>channels << 2;
-  for (let c: usize = 0; c < pixel; c += 4) {
-    let place = (phase + columns - 1) % m;
-    let sum: f32 = 0;
-    for (let k = columns - 1; k >= 0; k--) {
-      const at = <usize>k * pixel + c;
-      sum = place == m - 1 ? load<f32>(row + at) : load<f32>(row + at) + sum;
-      store<f32>(out + at, sum);
-      place = place == 0 ? m - 1 : place - 1;
-    }
+  let start: usize = 0;
+  for (let end = m - phase, next = 0; next < pixels; end += m) {
+    next = min<i32>(end, pixels);
+    const stop = <usize>next * pixel;
+    if (channels == 1) blockOfOne<f32>(suffix, row, start, stop, 4);
+    else if (channels == 4 && isVector<V>()) blockOfOne<V>(suffix, row, start, stop, 16);
+    else for (let c: usize = 0; c < pixel; c += 4) blockOfOne<f32>(suffix + c, row + c, start, stop, pixel);
+    start = stop;
   }
 }
 
-/** out[x] = suffix[x] + prefix(x + m − 1), or the prefix alone where the window is a whole block. */
-function slideFloats(out: usize, row: usize, suffix: usize, columns: i32, m: i32, phase: i32, channels: i32): void {
+/** One block of one chain of sums: a channel, or four at once. */
+// @ts-ignore: decorator
+@inline
+function blockOfOne<T>(suffix: usize, row: usize, start: usize, stop: usize, pixel: usize): void {
+  let sum = loadLanes<T>(row + stop - pixel);
+  storeLanes<T>(suffix + stop - pixel, sum);
+  for (let at = stop - pixel; at > start; ) {
+    at -= pixel;
+    sum = add<T>(loadLanes<T>(row + at), sum);
+    storeLanes<T>(suffix + at, sum);
+  }
+  sum = loadLanes<T>(row + start);
+  for (let at = start + pixel; at < stop; at += pixel) {
+    sum = add<T>(sum, loadLanes<T>(row + at));
+    storeLanes<T>(row + at, sum);
+  }
+}
+
+/** out[x] = suffix[x] + prefix[x + m − 1], or the prefix alone where the window is a whole block. */
+function joinBlocks<V>(out: usize, prefix: usize, suffix: usize, columns: i32, m: i32, phase: i32, channels: i32): void {
   const pixel = <usize>channels << 2;
-  const extended = columns + m - 1;
-  for (let c: usize = 0; c < pixel; c += 4) {
-    let place = phase;
-    let prefix: f32 = 0;
-    for (let k = 0; k < extended; k++) {
-      const x = load<f32>(row + <usize>k * pixel + c);
-      prefix = place == 0 ? x : prefix + x;
-      if (k >= m - 1) {
-        const at = <usize>(k - m + 1) * pixel + c;
-        store<f32>(out + at, place == m - 1 ? prefix : load<f32>(suffix + at) + prefix);
-      }
-      place = place == m - 1 ? 0 : place + 1;
-    }
+  const ahead = prefix + <usize>(m - 1) * pixel;
+  const bytes = <usize>columns * pixel;
+  for (let x: usize = 0; x < bytes; x += laneBytes<V>()) storeLanes<V>(out + x, add<V>(loadLanes<V>(suffix + x), loadLanes<V>(ahead + x)));
+  for (let k = phase == 0 ? 0 : m - phase; k < columns; k += m) {
+    const at = <usize>k * pixel;
+    for (let c: usize = 0; c < pixel; c += 4) store<f32>(out + at + c, load<f32>(ahead + at + c));
   }
 }
 
@@ -59,18 +73,8 @@ function sumRow<V>(job: usize, out: usize, row: i32, source: usize): void {
   scaleRow<V>(entered, (columns + m - 1) * channels, load<f32>(job, SCALE));
   const suffix = entered + load<usize>(job, ENTERED_STRIDE);
   const phase = load<i32>(job, COLUMN_PHASE);
-  suffixSums(suffix, entered, columns + m - 1, m, phase, channels);
-  slideFloats(out, entered, suffix, columns, m, phase, channels);
-}
-
-/** sums ← incoming, or sums + incoming inside a block. */
-function prefixDown<V>(job: usize, incoming: usize, start: bool): void {
-  const sums = load<usize>(job, SUMS);
-  const bytes = <usize>load<i32>(job, RESULT_FLOATS) << 2;
-  for (let x: usize = 0; x < bytes; x += laneBytes<V>()) {
-    const y = loadLanes<V>(incoming + x);
-    storeLanes<V>(sums + x, start ? y : add<V>(loadLanes<V>(sums + x), y));
-  }
+  blockSums<V>(suffix, entered, columns + m - 1, m, phase, channels);
+  joinBlocks<V>(out, entered, suffix, columns, m, phase, channels);
 }
 
 /** The ring rows of a finished block, last but one to first: row ← row + the row after it. */
@@ -83,25 +87,29 @@ function suffixDown<V>(job: usize, ring: usize, last: i32, count: i32, n: i32): 
   }
 }
 
-/** result = tap · (suffix + sums), or tap · sums where the window is a whole block. */
-function closeWindow<V>(job: usize, suffix: usize, result: usize): void {
+/**
+ * sums ← incoming at the start of a block, sums + incoming inside it; result = tap · (suffix + sums), or tap · sums where the window is a
+ * whole block (suffix 0).
+ */
+function addRow<V>(job: usize, incoming: usize, start: bool, suffix: usize): void {
   const sums = load<usize>(job, SUMS);
+  const result = load<usize>(job, RESULT);
   const bytes = <usize>load<i32>(job, RESULT_FLOATS) << 2;
   const tap = splat<V>(load<f32>(load<usize>(job, TAPS)));
   for (let x: usize = 0; x < bytes; x += laneBytes<V>()) {
-    const y = loadLanes<V>(sums + x);
-    storeLanes<V>(result + x, multiply<V>(tap, suffix ? add<V>(loadLanes<V>(suffix + x), y) : y));
+    let sum = loadLanes<V>(incoming + x);
+    if (!start) sum = add<V>(loadLanes<V>(sums + x), sum);
+    storeLanes<V>(sums + x, sum);
+    storeLanes<V>(result + x, multiply<V>(tap, suffix ? add<V>(loadLanes<V>(suffix + x), sum) : sum));
   }
 }
 
-/** Takes extended row `row` in and, once a window is full, computes its result row. */
+/** Takes extended row `row` in and computes the result row of the window that ends with it (of no use before the first is full). */
 function advanceFloats<V>(job: usize, ring: usize, row: i32, n: i32): void {
   const place = (load<i32>(job, ROW_PHASE) + row) % n;
   const incoming = load<usize>(ring + (<usize>(row % n) << 2));
-  prefixDown<V>(job, incoming, place == 0);
   const whole = place == n - 1;
-  const suffix: usize = whole ? 0 : load<usize>(ring + (<usize>((row + 1) % n) << 2));
-  if (row >= n - 1) closeWindow<V>(job, suffix, load<usize>(job, RESULT));
+  addRow<V>(job, incoming, place == 0, whole ? 0 : load<usize>(ring + (<usize>((row + 1) % n) << 2)));
   if (whole) suffixDown<V>(job, ring, row, min<i32>(n, row + 1), n);
 }
 
