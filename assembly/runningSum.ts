@@ -87,10 +87,15 @@ function suffixDown<V>(job: usize, ring: usize, last: i32, count: i32, n: i32): 
   }
 }
 
-/**
- * sums ← incoming at the start of a block, sums + incoming inside it; result = tap · (suffix + sums), or tap · sums where the window is a
- * whole block (suffix 0).
- */
+/** sums ← incoming at the start of a block, sums + incoming inside it: all that rows before the first full window need. */
+function addFirstRow<V>(job: usize, incoming: usize, start: bool): void {
+  const sums = load<usize>(job, SUMS);
+  const bytes = <usize>load<i32>(job, RESULT_FLOATS) << 2;
+  if (start) memory.copy(sums, incoming, bytes);
+  else for (let x: usize = 0; x < bytes; x += laneBytes<V>()) storeLanes<V>(sums + x, add<V>(loadLanes<V>(sums + x), loadLanes<V>(incoming + x)));
+}
+
+/** The same, and result = tap · (suffix + sums), or tap · sums where the window is a whole block (suffix 0). */
 function addRow<V>(job: usize, incoming: usize, start: bool, suffix: usize): void {
   const sums = load<usize>(job, SUMS);
   const result = load<usize>(job, RESULT);
@@ -104,12 +109,13 @@ function addRow<V>(job: usize, incoming: usize, start: bool, suffix: usize): voi
   }
 }
 
-/** Takes extended row `row` in and computes the result row of the window that ends with it (of no use before the first is full). */
+/** Takes extended row `row` in and computes the result row of the window that ends with it, if it is full. */
 function advanceFloats<V>(job: usize, ring: usize, row: i32, n: i32): void {
   const place = (load<i32>(job, ROW_PHASE) + row) % n;
   const incoming = load<usize>(ring + (<usize>(row % n) << 2));
   const whole = place == n - 1;
-  addRow<V>(job, incoming, place == 0, whole ? 0 : load<usize>(ring + (<usize>((row + 1) % n) << 2)));
+  if (row < n - 1) addFirstRow<V>(job, incoming, place == 0);
+  else addRow<V>(job, incoming, place == 0, whole ? 0 : load<usize>(ring + (<usize>((row + 1) % n) << 2)));
   if (whole) suffixDown<V>(job, ring, row, min<i32>(n, row + 1), n);
 }
 
