@@ -44,7 +44,8 @@ export const direct: MethodPlan = {
       setup: { setup: 1, setupTap: horizontal.taps * vertical.taps, setupByte: layout.arrangement.byteLength },
       run: {
         ...frameCounts(problem, vertical.extended, sweepCalls(problem, layout)),
-        directTap: floats * horizontal.taps * vertical.taps,
+        directTap: floats * horizontal.taps * (vertical.taps - 1),
+        directEdgeTap: floats * horizontal.taps,
         directLoop: blocks * vertical.taps,
       },
       bytes: layout.arrangement.byteLength,
