@@ -1,4 +1,4 @@
-/** The rules for one axis, by name; `constant` stands for zero, a constant and renormalised alike once samples are out of the question. */
+/** The rules for one axis that fill the outside with samples of the image, by name; "outside" stands for all others alike. */
 export type IndexRule = "replicate" | "periodic" | "half-sample-symmetric" | "whole-sample-symmetric" | "outside";
 
 /** i mod count in 0 … count − 1, for any integer i. */
@@ -28,6 +28,9 @@ const indexAt: Record<IndexRule, (i: number, count: number) => number> = {
   },
   outside: (i, count) => (i >= 0 && i < count ? i : -1),
 };
+
+/** Names of the rules that callers may give. */
+export const indexRuleNames = (Object.keys(indexAt) as IndexRule[]).filter((name) => name !== "outside");
 
 /**
  * Index map of an axis: entry k is the sample at index first + k, or −1 where nothing but the constant stands.

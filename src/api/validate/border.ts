@@ -1,9 +1,10 @@
 import { ConvolutionError } from "../../errors.js";
 import { checkOptionNames, chosenWord } from "../../kernels/options.js";
+import { indexRuleNames } from "../../math/borders.js";
 import { sampleFacts } from "../../planning/samples.js";
 import type { BorderRule, SampleType } from "../../types.js";
 
-const ruleNames = ["replicate", "zero", "periodic", "half-sample-symmetric", "whole-sample-symmetric", "renormalised"] as const;
+const ruleNames = [...indexRuleNames, "zero", "renormalised"] as const;
 
 /** What a border rule is checked against. */
 export interface BorderContext {

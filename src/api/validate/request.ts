@@ -2,6 +2,7 @@ import { ConvolutionError } from "../../errors.js";
 import { asKernel, readTaps, type Kernel } from "../../kernels/kernel.js";
 import { checkedNumber, checkOptionNames, chosenWord } from "../../kernels/options.js";
 import { analyse } from "../../planning/analysis.js";
+import { methods } from "../../planning/methods.js";
 import { anchorOf, extentOf, type Request } from "../../planning/problem.js";
 import type { Alpha, BorderRule, Channels, Extent, Light, Method, Region, SampleType } from "../../types.js";
 import { checkedBorder } from "./border.js";
@@ -9,7 +10,7 @@ import { checkedChannels, checkedSide } from "./raster.js";
 
 const sampleNames = ["u8", "u16", "f32"] as const satisfies SampleType[];
 const extents = ["same", "full", "valid"] as const satisfies Extent[];
-const methodNames = ["auto", "direct", "separable", "fft", "running-sum"] as const satisfies (Method | "auto")[];
+const methodNames: (Method | "auto")[] = ["auto", ...methods.map(({ name }) => name)];
 const alphas = ["straight", "premultiplied", "keep", "none"] as const satisfies Alpha[];
 const lights = ["encoded", "linear"] as const satisfies Light[];
 const optionNames = ["border", "extent", "method", "tolerance", "region", "alpha", "light", "output"];
