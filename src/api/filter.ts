@@ -1,5 +1,6 @@
 import { ConvolutionError } from "../errors.js";
 import type { Choice } from "../planning/choose.js";
+import { programsOf } from "../planning/panels.js";
 import type { Problem } from "../planning/problem.js";
 import { execute, install, type Installed } from "../runtime/execute.js";
 import type { Explanation, Filter, Raster, ResultRaster, Samples, SampleType } from "../types.js";
@@ -33,7 +34,7 @@ export class PreparedFilter implements Filter {
     this.#problem = problem;
     this.#core = core;
     this.#leave = leave;
-    this.#installed = install(choice.plan.program(problem), core.memory, core.routines);
+    this.#installed = install(programsOf(choice.plan, problem), core.memory, core.routines);
   }
 
   run<S extends Samples>(image: Raster<S>): ResultRaster;
@@ -62,7 +63,7 @@ export class PreparedFilter implements Filter {
     const installed = this.#installed;
     if (!installed) return;
     this.#installed = undefined;
-    this.#core.memory.release(installed.address, installed.program.byteLength);
+    this.#core.memory.release(installed.address, installed.byteLength);
     this.#leave(this);
   }
 }

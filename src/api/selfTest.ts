@@ -64,10 +64,10 @@ export function failedAnswer(routines: Routines, memory: EngineMemory, build: Bu
       light: "encoded",
       output: { sample: "f32", gain: 1, offset: 0 },
     };
-    const installed = install(plan.program(problemOf(request, build, Infinity)), memory, routines);
+    const installed = install([plan.program(problemOf(request, build, Infinity))], memory, routines);
     const found = new Float32Array(width * height);
     execute(installed, memory, routines, { data, stride: width }, { data: found, stride: width });
-    memory.release(installed.address, installed.program.byteLength);
+    memory.release(installed.address, installed.byteLength);
     const expected = answers(kernels[plan.name].taps);
     const wrong = found.findIndex((value, k) => value !== expected[k]);
     if (wrong >= 0) return `${plan.name} gives ${found[wrong]} at sample ${wrong} instead of ${expected[wrong]}`;

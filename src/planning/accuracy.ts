@@ -21,6 +21,8 @@ export interface MethodError {
   relative: number;
   /** Everything else (transform noise, dropped terms): it stays where the weight is small, and is divided by it. */
   absolute: number;
+  /** The part of it that a transform spreads over all results, also where there is nothing. */
+  noise?: number;
 }
 
 /**
@@ -40,9 +42,12 @@ export function opaqueBound(problem: Problem, error: MethodError): number {
   return weighted(problem, error) + 4 * unitRoundoff * problem.analysis.absoluteSum * problem.workingFull;
 }
 
-/** Alpha that is nothing but noise: where the computed h∗a is no larger, there is none. Sums of non-negative terms have no noise where there is nothing. */
-export function transparentBound(problem: Problem, error: MethodError): number {
-  return error.absolute > 0 ? weighted(problem, { relative: 0, absolute: error.absolute }) : 0;
+/**
+ * Alpha that is nothing but a transform's noise: where the computed h∗a is no larger, there is none. A quarter of the bound, which noise
+ * stays well below; other methods have no noise where there is nothing.
+ */
+export function transparentBound(problem: Problem, { noise = 0 }: MethodError): number {
+  return noise / 4 / leastWeight(problem);
 }
 
 /** The smallest inside weight as a part of Σh; 1 but for the renormalised border. */

@@ -3,6 +3,7 @@ import type { Candidate, HardwareProfile, Method } from "../types.js";
 import { priceOf, type Prices } from "./cost.js";
 import type { MethodPlan } from "./method.js";
 import { methods } from "./methods.js";
+import { panelsOf } from "./panels.js";
 import type { Problem } from "./problem.js";
 
 /** A candidate with the numbers that the choice is made by. */
@@ -24,15 +25,16 @@ const tie = { share: 0.01, milliseconds: 0.001 };
 function price(plan: MethodPlan, problem: Problem, profile: HardwareProfile): Candidate {
   const applies = plan.applicable(problem);
   if (applies !== true) return { method: plan.name, refused: applies };
-  const { setup, run, bytes } = plan.work(problem);
+  const { problems, work } = panelsOf(plan, problem);
+  const { setup, run, bytes } = work;
   const prices = profile.nanoseconds as Prices;
   const candidate: Candidate = {
     method: plan.name,
     milliseconds: priceOf(run, prices) / 1e6,
     setupMilliseconds: priceOf(setup, prices) / 1e6,
     bytes,
-    errorBound: plan.errorBound(problem),
-    arithmetic: plan.arithmetic(problem),
+    errorBound: Math.max(...problems.map((part) => plan.errorBound(part))),
+    arithmetic: plan.arithmetic(problems[0]!),
   };
   if (plan.terms) candidate.terms = plan.terms(problem);
   if (bytes <= problem.bytesAvailable) return candidate;

@@ -116,7 +116,7 @@ function transformTables(points: number, plan: number, turns: number): Table[] {
 function error(problem: Problem): MethodError {
   const tiling = tilingOf(problem)!;
   const noise = transformError(tiling.rows * tiling.columns) * problem.analysis.absoluteSum * problem.workingFull;
-  return { relative: 0, absolute: noise + underflow(problem) };
+  return { relative: 0, absolute: noise + underflow(problem), noise };
 }
 
 const roundable = (problem: Problem): boolean => integerResults(problem) && error(problem).absolute < 0.5;

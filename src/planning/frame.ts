@@ -140,7 +140,12 @@ export function frameOf(problem: Problem, mostRows: (affordable: number) => numb
     columns: staged.count,
     rowMap: vertical.map,
   };
-  const outlet: Outlet = { offset: arrangement.take(stagedRows * outputRowBytes + 16), sample: request.output.sample, rowSamples: resultFloats };
+  const outlet: Outlet = {
+    offset: arrangement.take(stagedRows * outputRowBytes + 16),
+    sample: request.output.sample,
+    firstSample: problem.column * channels,
+    rowSamples: resultFloats,
+  };
   return { arrangement, record, intake, outlet, resultFloats, paddedFloats, extendedStride, resultStride, stagedRows, offsets };
 }
 

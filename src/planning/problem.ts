@@ -55,6 +55,8 @@ export interface Problem {
   reversed: boolean;
   horizontal: Axis;
   vertical: Axis;
+  /** Result column of the whole where these results begin: 0 but for a panel (planning/panels). */
+  column: number;
   channels: number;
   /** Channels that are colours; the others are alpha. */
   colours: number;
@@ -97,6 +99,7 @@ export function problemOf(request: Request, build: Build, bytesAvailable: number
     reversed: !request.correlate,
     horizontal,
     vertical,
+    column: 0,
     channels: request.channels,
     colours: request.alpha === "none" ? request.channels : request.channels - 1,
     workingFull: request.light === "linear" ? 1 : sampleFacts[request.sample].full,

@@ -65,7 +65,8 @@ export interface Intake {
 export interface Outlet {
   offset: number;
   sample: SampleType;
-  /** Samples of a row. */
+  /** Where in a row of the target they go, and how many there are. */
+  firstSample: number;
   rowSamples: number;
 }
 

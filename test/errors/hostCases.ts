@@ -135,7 +135,7 @@ export const states: Pick<
       act: async ({ kernel: taps }) => {
         const engine = await createEngine({ memoryLimit: 2 ** 20 });
         try {
-          return engine.prepare(taps, { width: 2_000_000, height: 4, channels: 4, sample: "f32" });
+          return engine.prepare(taps, { width: 4, height: 2_000_000, channels: 4, sample: "f32" });
         } finally {
           // The same engine works on for what does fit.
           engine.convolve({ data: Uint8Array.of(1, 2, 3), width: 3, height: 1 }, kernel([[1]]));

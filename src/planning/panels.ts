@@ -1,0 +1,88 @@
+import type { Program } from "../runtime/program.js";
+import type { Counts, Operation } from "./cost.js";
+import type { MethodPlan, Work } from "./method.js";
+import type { Axis, Problem } from "./problem.js";
+
+/**
+ * Engine memory that a filter takes without need, 64 MiB. Rings and planes are as wide as the image; where they would take more, results
+ * are computed panel by panel, one after the other in the same memory. A panel is a region, so no byte of a sum changes.
+ */
+const comfortableBytes = 67_108_864;
+
+/** Narrower panels than this would enter mostly halo. */
+const narrowest = 64;
+
+/** How a method cuts a problem: problems of one width side by side, the last one flush with the edge, and the work of all. */
+export interface Panels {
+  problems: Problem[];
+  work: Work;
+}
+
+function cutAxis(axis: Axis, start: number, count: number): Axis {
+  const extended = count + axis.taps - 1;
+  return { ...axis, count, first: axis.first + start, extended, map: axis.map.subarray(start, start + extended) };
+}
+
+function panel(problem: Problem, start: number, count: number, bytesAvailable: number): Problem {
+  return { ...problem, column: start, horizontal: cutAxis(problem.horizontal, start, count), bytesAvailable };
+}
+
+/** One panel and its work stand for all: they are of one width. */
+interface Cut {
+  width: number;
+  first: Problem;
+  work: Work;
+}
+
+function* cuts(plan: MethodPlan, problem: Problem): Generator<Cut> {
+  const columns = problem.horizontal.count;
+  const bytesAvailable = Math.min(problem.bytesAvailable, comfortableBytes);
+  for (let count = 1; ; count *= 2) {
+    const width = Math.ceil(columns / count);
+    const first = panel(problem, 0, width, bytesAvailable);
+    yield { width, first, work: plan.work(first) };
+    if (width <= narrowest) return;
+  }
+}
+
+/** The fewest panels that are comfortable, else the fewest that fit, else those that need least. */
+function bestCut(plan: MethodPlan, problem: Problem): Cut {
+  let fitting: Cut | undefined;
+  let least: Cut | undefined;
+  for (const cut of cuts(plan, problem)) {
+    if (cut.work.bytes <= cut.first.bytesAvailable) return cut;
+    if (!fitting && cut.work.bytes <= problem.bytesAvailable) fitting = cut;
+    if (!least || cut.work.bytes < least.work.bytes) least = cut;
+  }
+  return fitting ?? least!;
+}
+
+/** Several panels set themselves up again at every run: what that takes besides tables counts with the run. */
+function workOfAll({ setup, run, bytes }: Work, panels: number): Work {
+  if (panels === 1) return { setup, run, bytes };
+  const all: Counts = {};
+  for (const [name, count] of Object.entries(run) as [Operation, number][]) all[name] = count * (name === "run" ? 1 : panels);
+  for (const name of ["columnPass", "rowPass"] as const) if (setup[name]) all[name] = (all[name] ?? 0) + panels * setup[name];
+  return { setup, run: all, bytes };
+}
+
+const known = new WeakMap<Problem, Map<MethodPlan, Panels>>();
+
+/** Cuts a problem for a method that applies to it. */
+export function panelsOf(plan: MethodPlan, problem: Problem): Panels {
+  const cut = known.get(problem)?.get(plan);
+  if (cut) return cut;
+  const { width, first, work } = bestCut(plan, problem);
+  const columns = problem.horizontal.count;
+  const starts = Array.from({ length: Math.ceil(columns / width) }, (_, k) => Math.min(k * width, columns - width));
+  const problems = starts.map((start) => (start === 0 ? first : panel(problem, start, width, first.bytesAvailable)));
+  const panels = { problems, work: workOfAll(work, problems.length) };
+  if (!known.has(problem)) known.set(problem, new Map());
+  known.get(problem)!.set(plan, panels);
+  return panels;
+}
+
+/** Programs of all panels, left to right. */
+export function programsOf(plan: MethodPlan, problem: Problem): Program[] {
+  return panelsOf(plan, problem).problems.map((part) => plan.program(part));
+}
