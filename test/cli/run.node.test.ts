@@ -86,7 +86,7 @@ describe("what fails although the command is right exits with 1 and writes nothi
     ["filter | IN | @folder | --kernel | delta | --force", "file-unwritable", "host"],
     ["filter | IN | OUT | --kernel | @absent.json", "file-unreadable", "caller"],
     ["filter | IN | OUT | --kernel | gaussian 20 | --method | direct | --memory-limit | 64KiB", "memory-limit", "capacity"],
-    ["explain | --size | 1920x1080 | --kernel | gaussian 3 | --memory-limit | 64KiB", "memory-limit", "capacity"],
+    ["explain | --size | 16x2000000 | --kernel | gaussian 3 | --memory-limit | 64KiB", "memory-limit", "capacity"],
     ["explain | @notes.png | --kernel | delta", "invalid-png", "caller"],
   ])("%s", async (line, code, fault) => {
     const programs = await tapwise(...spelled(line), "--json");
