@@ -22,6 +22,7 @@ export type {
   PrepareOptions,
   Raster,
   Region,
+  ResultArray,
   ResultRaster,
   Samples,
   SampleType,

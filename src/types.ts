@@ -32,6 +32,31 @@ export interface ResultRaster<S extends Samples = Samples> extends Raster<S> {
   channels: Channels;
 }
 
+/**
+ * The array of a result: where `output.sample` (T) is not given, the source's own kind (S), in memory of its own. Where it is: a
+ * `Uint8ClampedArray` (which `new ImageData(…)` takes) unless the source is 8-bit itself, a `Uint16Array` or a `Float32Array`.
+ */
+export type ResultArray<S extends Samples, T extends SampleType = never> = [T] extends [never]
+  ? OwnArray<S>
+  : T extends "u8"
+    ? S extends Uint8Array | Uint8ClampedArray
+      ? OwnArray<S>
+      : Uint8ClampedArray<ArrayBuffer>
+    : T extends "u16"
+      ? Uint16Array<ArrayBuffer>
+      : Float32Array<ArrayBuffer>;
+
+/** The same kind of array on a buffer that nobody shares. */
+type OwnArray<S extends Samples> = S extends Uint8ClampedArray
+  ? Uint8ClampedArray<ArrayBuffer>
+  : S extends Uint8Array
+    ? Uint8Array<ArrayBuffer>
+    : S extends Uint16Array
+      ? Uint16Array<ArrayBuffer>
+      : S extends Float32Array
+        ? Float32Array<ArrayBuffer>
+        : never;
+
 /** The shape of the images that a prepared filter takes. */
 export interface Layout {
   width: number;
@@ -79,16 +104,16 @@ export type Alpha = "straight" | "premultiplied" | "keep" | "none";
 export type Light = "encoded" | "linear";
 
 /** result = gain · y + offset, in the output's own units. */
-export interface Output {
+export interface Output<T extends SampleType = SampleType> {
   /** @defaultValue the source's sample type */
-  sample?: SampleType;
+  sample?: T;
   /** @defaultValue 1 */
   gain?: number;
   /** @defaultValue 0 */
   offset?: number;
 }
 
-export interface ConvolveOptions {
+export interface ConvolveOptions<T extends SampleType = SampleType> {
   /** @defaultValue `"replicate"` */
   border?: Border;
   /** @defaultValue `"same"` */
@@ -103,11 +128,11 @@ export interface ConvolveOptions {
   alpha?: Alpha;
   /** @defaultValue `"encoded"` */
   light?: Light;
-  output?: Output;
+  output?: Output<T>;
 }
 
 /** Options of `prepare` and `explain`. */
-export interface PrepareOptions extends ConvolveOptions {
+export interface PrepareOptions<T extends SampleType = SampleType> extends ConvolveOptions<T> {
   /** Lay the taps on the image as written instead of reversed. @defaultValue `false` */
   correlate?: boolean;
 }
@@ -177,7 +202,7 @@ export interface EngineOptions {
 }
 
 /** A prepared filter: the plan, the tables and the scratch for one kernel and one layout. */
-export interface Filter {
+export interface Filter<T extends SampleType = never> {
   /**
    * Filters one image of the prepared layout.
    *
@@ -185,8 +210,8 @@ export interface Filter {
    * @param target receives the result; its size, channels and sample type must be the result's. A new raster where absent
    * @throws ConvolutionError `disposed`, `invalid-raster`, `layout-mismatch`, `invalid-target`, `overlapping-target`, …
    */
-  run<S extends Samples>(image: Raster<S>): ResultRaster;
-  run<S extends Samples, T extends Raster>(image: Raster<S>, target: T): T;
+  run<S extends Samples>(image: Raster<S>): ResultRaster<ResultArray<S, T>>;
+  run<R extends Raster>(image: Raster, target: R): R;
   readonly explanation: Explanation;
   /** Gives the filter's memory back. Safe to call twice. */
   dispose(): void;
@@ -195,10 +220,10 @@ export interface Filter {
 export interface Engine {
   readonly build: Build;
   /** Convolves (taps reversed) and returns a new raster. */
-  convolve<S extends Samples>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions): ResultRaster;
+  convolve<S extends Samples, T extends SampleType = never>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions<T>): ResultRaster<ResultArray<S, T>>;
   /** Correlates (taps as written) and returns a new raster. */
-  correlate<S extends Samples>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions): ResultRaster;
-  prepare(kernel: Kernel, layout: Layout, options?: PrepareOptions): Filter;
+  correlate<S extends Samples, T extends SampleType = never>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions<T>): ResultRaster<ResultArray<S, T>>;
+  prepare<T extends SampleType = never>(kernel: Kernel, layout: Layout, options?: PrepareOptions<T>): Filter<T>;
   /** Says what `prepare` would choose and why; allocates nothing in the engine. */
   explain(kernel: Kernel, layout: Layout, options?: PrepareOptions): Explanation;
   dispose(): void;

@@ -15,8 +15,10 @@ import type {
   Layout,
   PrepareOptions,
   Raster,
+  ResultArray,
   ResultRaster,
   Samples,
+  SampleType,
 } from "../types.js";
 import { PreparedFilter } from "./filter.js";
 import { loadCore, type Core } from "./loading.js";
@@ -27,7 +29,7 @@ import { checkedLayout, checkedRequest } from "./validate/request.js";
 class ConvolutionEngine implements Engine {
   readonly #core: Core;
   readonly #profile: HardwareProfile;
-  readonly #filters = new Set<PreparedFilter>();
+  readonly #filters = new Set<{ dispose(): void }>();
   #disposed = false;
 
   constructor(core: Core, profile: HardwareProfile) {
@@ -39,15 +41,15 @@ class ConvolutionEngine implements Engine {
     return this.#core.build;
   }
 
-  convolve<S extends Samples>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions): ResultRaster {
+  convolve<S extends Samples, T extends SampleType = never>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions<T>): ResultRaster<ResultArray<S, T>> {
     return this.#once("convolve", image, kernel, options, false);
   }
 
-  correlate<S extends Samples>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions): ResultRaster {
+  correlate<S extends Samples, T extends SampleType = never>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions<T>): ResultRaster<ResultArray<S, T>> {
     return this.#once("correlate", image, kernel, options, true);
   }
 
-  prepare(kernel: Kernel, layout: Layout, options?: PrepareOptions): Filter {
+  prepare<T extends SampleType = never>(kernel: Kernel, layout: Layout, options?: PrepareOptions<T>): Filter<T> {
     this.#usable("prepare");
     return this.#prepared(checkedRequest("prepare", kernel, checkedLayout("prepare", layout), options), false);
   }
@@ -70,10 +72,16 @@ class ConvolutionEngine implements Engine {
     throw new ConvolutionError("disposed", message, { expected: "an engine that is not disposed", received: "a disposed engine" });
   }
 
-  #once(call: string, image: Raster, kernel: Kernel, options: ConvolveOptions | undefined, correlate: boolean): ResultRaster {
+  #once<S extends Samples, T extends SampleType>(
+    call: string,
+    image: Raster<S>,
+    kernel: Kernel,
+    options: ConvolveOptions<T> | undefined,
+    correlate: boolean,
+  ): ResultRaster<ResultArray<S, T>> {
     this.#usable(call);
     const { width, height, channels, sample } = checkedRaster(`${call}: image`, image);
-    const filter = this.#prepared(checkedRequest(call, kernel, { width, height, channels, sample }, options, correlate), true);
+    const filter = this.#prepared<T>(checkedRequest(call, kernel, { width, height, channels, sample }, options, correlate), true);
     try {
       return filter.run(image);
     } finally {
@@ -86,10 +94,10 @@ class ConvolutionEngine implements Engine {
     return { problem, choice: choose(problem, this.#profile, once) };
   }
 
-  #prepared(request: Request, once: boolean): PreparedFilter {
+  #prepared<T extends SampleType>(request: Request, once: boolean): PreparedFilter<T> {
     const { problem, choice } = this.#chosen(request, once);
     const explanation = explanationOf(choice, problem, this.#profile, once);
-    const filter = new PreparedFilter(problem, choice, explanation, this.#core, (gone) => this.#filters.delete(gone));
+    const filter: PreparedFilter<T> = new PreparedFilter<T>(problem, choice, explanation, this.#core, () => this.#filters.delete(filter));
     this.#filters.add(filter);
     return filter;
   }

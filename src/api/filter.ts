@@ -3,7 +3,7 @@ import type { Choice } from "../planning/choose.js";
 import { programsOf } from "../planning/panels.js";
 import type { Problem } from "../planning/problem.js";
 import { execute, install, type Installed } from "../runtime/execute.js";
-import type { Explanation, Filter, Raster, ResultRaster, Samples, SampleType } from "../types.js";
+import type { Explanation, Filter, Raster, ResultArray, ResultRaster, Samples, SampleType } from "../types.js";
 import type { Core } from "./loading.js";
 import type { CheckedRaster } from "./validate/raster.js";
 import { checkedSource, checkedTarget } from "./validate/target.js";
@@ -22,14 +22,14 @@ function newSamples(sample: SampleType, source: CheckedRaster, length: number): 
 }
 
 /** A plan with its memory in the engine. */
-export class PreparedFilter implements Filter {
+export class PreparedFilter<T extends SampleType = never> implements Filter<T> {
   readonly explanation: Explanation;
   readonly #problem: Problem;
   readonly #core: Core;
-  readonly #leave: (filter: PreparedFilter) => void;
+  readonly #leave: () => void;
   #installed: Installed | undefined;
 
-  constructor(problem: Problem, choice: Choice, explanation: Explanation, core: Core, leave: (filter: PreparedFilter) => void) {
+  constructor(problem: Problem, choice: Choice, explanation: Explanation, core: Core, leave: () => void) {
     this.explanation = explanation;
     this.#problem = problem;
     this.#core = core;
@@ -37,8 +37,8 @@ export class PreparedFilter implements Filter {
     this.#installed = install(programsOf(choice.plan, problem), core.memory, core.routines);
   }
 
-  run<S extends Samples>(image: Raster<S>): ResultRaster;
-  run<S extends Samples, T extends Raster>(image: Raster<S>, target: T): T;
+  run<S extends Samples>(image: Raster<S>): ResultRaster<ResultArray<S, T>>;
+  run<R extends Raster>(image: Raster, target: R): R;
   run(image: Raster, target?: Raster): Raster {
     const installed = this.#installed;
     if (!installed) {
@@ -64,6 +64,6 @@ export class PreparedFilter implements Filter {
     if (!installed) return;
     this.#installed = undefined;
     this.#core.memory.release(installed.address, installed.byteLength);
-    this.#leave(this);
+    this.#leave();
   }
 }

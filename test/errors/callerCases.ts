@@ -1,4 +1,16 @@
-import { createEngine, kernel, box, outer, reversed, type ConvolveOptions, type ErrorCode, type Kernel, type Layout, type Raster } from "../../src/index.js";
+import {
+  createEngine,
+  kernel,
+  box,
+  outer,
+  reversed,
+  type ConvolveOptions,
+  type ErrorCode,
+  type Kernel,
+  type Layout,
+  type PrepareOptions,
+  type Raster,
+} from "../../src/index.js";
 import type { Bench } from "./bench.js";
 import { untyped, type ErrorCase } from "./errorCase.js";
 import { noiseKernel } from "../support/kernels.js";
@@ -12,7 +24,7 @@ export const namesAndNumbers: Pick<Record<ErrorCode, ErrorCase[]>, "unknown-opti
     { title: "an option of convolve", act: convolve({ bordr: "zero" }), says: ["bordr", "border"] },
     {
       title: "an option of prepare",
-      act: ({ engine, kernel: taps }) => engine.prepare(taps, { width: 3, height: 3 }, untyped({ corelate: true })),
+      act: ({ engine, kernel: taps }) => engine.prepare(taps, { width: 3, height: 3 }, untyped<PrepareOptions>({ corelate: true })),
       says: ["corelate", "correlate"],
     },
     {
@@ -38,7 +50,7 @@ export const namesAndNumbers: Pick<Record<ErrorCode, ErrorCase[]>, "unknown-opti
     { title: "a sample type of the output", act: convolve({ output: { sample: "u9" } }), says: ["u9"] },
     { title: "a sample type of a layout", act: prepare({ width: 3, height: 3, sample: "f16" }), says: ["f16"] },
     { title: "a build", act: () => createEngine(untyped({ build: "smid" })), says: ["smid"] },
-    { title: "options that are no object", act: ({ engine, image, kernel: taps }) => engine.convolve(image, taps, untyped(5)) },
+    { title: "options that are no object", act: ({ engine, image, kernel: taps }) => engine.convolve(image, taps, untyped<ConvolveOptions>(5)) },
     { title: "a border that is no rule", act: convolve({ border: 7 }), says: ["7"] },
   ],
   "invalid-number": [
