@@ -12,8 +12,8 @@ export interface Separation {
   residuals: number[];
 }
 
-/** A residual below this share of Σ|taps| is what double precision leaves of nothing. */
-const negligible = 1.4210854715202004e-14;
+/** A residual below this share of Σ|taps| is what double precision leaves of nothing; no further terms are looked for. */
+export const negligible = 1.4210854715202004e-14;
 
 /**
  * Writes a matrix as a sum of separable terms, by crosses through the largest element that is left:
@@ -32,14 +32,13 @@ export function separate(taps: Float64Array, rows: number, columns: number, most
   const total = absoluteSum(rest);
   const separation: Separation = { terms: [], residuals: [total] };
   let left = total;
-  while (left > 0 && separation.terms.length < mostTerms) {
+  while (left > negligible * total && separation.terms.length < mostTerms) {
     const term = cross(rest, rows, columns);
     left = subtractTerm(rest, term);
-    if (left <= negligible * total) left = 0;
     separation.terms.push(term);
     separation.residuals.push(left);
   }
-  if (separation.terms.length === 1 && left === 0) separation.terms[0] = integerTerm(taps, separation.terms[0]!);
+  if (separation.terms.length === 1 && left <= negligible * total) separation.terms[0] = integerTerm(taps, separation.terms[0]!);
   separation.terms = separation.terms.map(held);
   return separation;
 }

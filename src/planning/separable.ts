@@ -1,5 +1,5 @@
 import * as field from "../generated/record.js";
-import { absoluteSum, type SeparableTerm } from "../math/separation.js";
+import { absoluteSum, negligible, type SeparableTerm } from "../math/separation.js";
 import { integerResults, leastWeight, outputBound, outputScale, sumError, underflow, type MethodError } from "./accuracy.js";
 import { mostTerms } from "./analysis.js";
 import { frameCounts, frameOf, programOf } from "./frame.js";
@@ -26,11 +26,11 @@ function allowedResidual(problem: Problem): number {
   return (tolerance * leastWeight(problem) * leastAlpha) / Math.max(1e-300, outputScale(problem) * problem.workingFull);
 }
 
-/** The fewest terms whose residual is allowed, or nothing. An all-zero kernel takes one term of zeros. */
+/** The fewest terms whose residual is allowed, or no more than double precision leaves anyway; nothing where there are none. An all-zero kernel takes one term of zeros. */
 function termsNeeded(problem: Problem): number | undefined {
   const { residuals } = problem.analysis.separation();
   const allowed = allowedResidual(problem);
-  const count = residuals.findIndex((residual, r) => r > 0 && residual <= allowed);
+  const count = residuals.findIndex((residual, r) => r > 0 && residual <= Math.max(allowed, negligible * leastWeight(problem) * residuals[0]!));
   return count > 0 ? count : residuals[0] === 0 ? 0 : undefined;
 }
 
@@ -68,7 +68,7 @@ function error(problem: Problem): MethodError {
   const roundings = problem.horizontal.taps + terms.length * problem.vertical.taps + 3;
   const dropped = problem.analysis.separation().residuals[termsNeeded(problem)!]!;
   const sums = sumError(problem, roundings, weight);
-  const oneSign = terms.length === 1 && dropped === 0;
+  const oneSign = terms.length === 1;
   return { relative: oneSign ? sums : 0, absolute: (oneSign ? 0 : sums) + dropped * problem.workingFull + underflow(problem) };
 }
 
