@@ -67,7 +67,7 @@ function allowedRange(setting: Setting, defined: Defined, index: number, errorBo
     return [exact - 2 * u * Math.abs(exact), exact + 2 * u * Math.abs(exact)];
   }
   // Taps that weigh next to nothing leave no finite bound (see checkQuestion): nothing is promised there.
-  if (errorBound === Infinity) return [-Infinity, Infinity];
+  if (errorBound === Infinity || leftOut === Infinity) return [-Infinity, Infinity];
   if (plain && !setting.linear) return [exact - bound, exact + bound];
   // The gain does not touch alpha, whose bound is in its own output units.
   if (channel === channels - 1 && alpha !== "none") {
