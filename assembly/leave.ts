@@ -77,7 +77,7 @@ function leaveStraight(job: usize, y: usize): void {
     const alpha: f32 = opaque ? 1 : weight / sum;
     const written = writtenAlpha(job, alpha);
     for (let c = 0; c < colours; c++, y += 4) {
-      const x = opaque ? load<f32>(y) : (sum * load<f32>(y)) / weight;
+      const x = opaque ? load<f32>(y) : sum * (load<f32>(y) / weight);
       store<f32>(y, written > 0 ? gain * encoded(job, x) + offset : 0);
     }
     store<f32>(y, written);
