@@ -1,4 +1,4 @@
-import { laneBytes, loadLanes, multiplyAdd, splat, splatFrom, storeLanes } from "./lanes";
+import { laneBytes, loadLanes, multiply, multiplyAdd, splat, splatFrom, storeLanes } from "./lanes";
 import { assertRowPass } from "./promises";
 
 /**
@@ -54,4 +54,11 @@ function rowVector<V>(out: usize, p: usize, taps: usize, m: i32, step: usize): v
   let a = splat<V>(0);
   for (const end = taps + (<usize>m << 2); taps < end; taps += 4, p += step) a = multiplyAdd<V>(a, splatFrom<V>(taps), loadLanes<V>(p));
   storeLanes<V>(out, a);
+}
+
+/** row ← scale · row, whole vectors. */
+export function scaleRow<V>(row: usize, floats: i32, scale: f32): void {
+  const factor = splat<V>(scale);
+  const end = row + (<usize>floats << 2);
+  for (; row < end; row += laneBytes<V>()) storeLanes<V>(row, multiply<V>(factor, loadLanes<V>(row)));
 }

@@ -4,7 +4,7 @@ import {
   CHANNELS, COLUMN_PHASE, ENTERED, ENTERED_STRIDE, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, RESULT, RESULT_FLOATS, ROW_PHASE, ROW_TABLE, SCALE, SUMS, TAPS,
 } from "./record";
 import { assertRunningSum, assertSweep } from "./promises";
-import { scaleRow } from "./fft/strips";
+import { scaleRow } from "./rows";
 import { firstNewRow, leaveStaged, stagedRow } from "./sweep";
 
 /*

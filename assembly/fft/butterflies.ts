@@ -1,4 +1,4 @@
-import { add, laneBytes, loadLanes, multiply, splat, splatFrom, storeLanes, subtract } from "../lanes";
+import { add, loadLanes, multiply, splat, splatFrom, storeLanes, subtract } from "../lanes";
 
 /*
  * Butterflies of radix 2, 3, 4 and 5 on V's lanes at once. Real parts at p + k·leg, imaginary parts `apart` bytes behind them.

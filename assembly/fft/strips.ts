@@ -1,10 +1,11 @@
 import { enterRow } from "../enter";
-import { anyNonFinite, deinterleave4, laneBytes, loadLanes, multiply, splat, storeLanes } from "../lanes";
+import { anyNonFinite, deinterleave4, loadLanes } from "../lanes";
 import { assertEnterStrip, assertLeaveStrip } from "../promises";
 import {
   CHANNELS, ENTERED, EXTENDED_COLUMNS, EXTENDED_ROWS, KERNEL_COLUMNS, KERNEL_ROWS, MARKS, MARK_COUNTS, MARK_ROW, MARK_STRIDE, OUTPUT_COLUMNS,
-  PAIRS, PLANES, PLANE_BYTES, PLANE_STRIDE, RESULT, STAGING, STAGING_STRIDE, STRIP_ROWS, TILE_ROWS,
+  PLANES, PLANE_BYTES, PLANE_STRIDE, RESULT, STAGING, STAGING_STRIDE, STRIP_ROWS, TILE_ROWS,
 } from "../record";
+import { scaleRow } from "../rows";
 import { leaveStaged } from "../sweep";
 
 /*
@@ -37,13 +38,6 @@ function markCount(job: usize, row: i32, half: i32): usize {
 
 /** 2⁻²⁰: samples as large as floats can be still have finite sums all the way through a tile; results are scaled back as they leave. */
 const HEADROOM: f32 = 9.5367431640625e-7;
-
-/** row ← scale · row, whole vectors. */
-export function scaleRow<V>(row: usize, floats: i32, scale: f32): void {
-  const factor = splat<V>(scale);
-  const end = row + (<usize>floats << 2);
-  for (; row < end; row += laneBytes<V>()) storeLanes<V>(row, multiply<V>(factor, loadLanes<V>(row)));
-}
 
 /**
  * Makes an entered row of floats fit for a transform, which would carry what is not finite to the whole tile: sets it to 0 and marks

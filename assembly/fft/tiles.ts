@@ -1,8 +1,8 @@
 import { add, laneBytes, lanes, loadLanes, multiply, splat, storeLanes, subtract, transpose } from "../lanes";
 import { assertFloats, assertGroups, assertTiles } from "../promises";
 import {
-  COLUMN_PLAN, EXTENDED_COLUMNS, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, PAIRS, PLANES, PLANE_BYTES, PLANE_STRIDE, ROW_PLAN, ROW_SCRATCH,
-  SCALE, SPECTRUM, TAPS, TILE_COLUMNS, TILE_ROWS, TILE_STEP,
+  COLUMN_PLAN, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, PAIRS, PLANES, PLANE_BYTES, PLANE_STRIDE, ROW_PLAN, ROW_SCRATCH,
+  SCALE, SPECTRUM, TAPS, TILE_COLUMNS, TILE_STEP,
 } from "../record";
 import { forwardTransform, inverseTransform } from "./transform";
 

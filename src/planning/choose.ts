@@ -33,8 +33,8 @@ function price(plan: MethodPlan, problem: Problem, profile: HardwareProfile): Ca
     milliseconds: priceOf(run, prices) / 1e6,
     setupMilliseconds: priceOf(setup, prices) / 1e6,
     bytes,
-    errorBound: Math.max(...problems.map((part) => plan.errorBound(part))),
-    arithmetic: plan.arithmetic(problems[0]!),
+    errorBound: problems.reduce((most, part) => Math.max(most, plan.errorBound(part)), 0),
+    arithmetic: [...new Set(problems.map((part) => plan.arithmetic(part)))].join("; "),
   };
   if (plan.terms) candidate.terms = plan.terms(problem);
   if (bytes <= problem.bytesAvailable) return candidate;

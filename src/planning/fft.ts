@@ -32,7 +32,7 @@ interface FftFrame extends Frame {
 /** With the renormalised border the error is divided by the inside weight: a smaller share than this is no longer worth a transform. */
 const leastShare = 0.001;
 
-/** Longest transform's points: one call transforms about this many weighted points. */
+/** One call transforms about this many weighted points: a few milliseconds of them. */
 const pointsPerCall = 1_500_000;
 
 const tilings = new WeakMap<Problem, Tiling>();

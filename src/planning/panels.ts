@@ -27,7 +27,7 @@ function panel(problem: Problem, start: number, count: number, bytesAvailable: n
   return { ...problem, column: start, horizontal: cutAxis(problem.horizontal, start, count), bytesAvailable };
 }
 
-/** One panel and its work stand for all: they are of one width. */
+/** The first panel's work stands for all, being of one width; the memory is that of the neediest: one inside stages more columns than one at the edge. */
 interface Cut {
   width: number;
   first: Problem;
@@ -40,7 +40,9 @@ function* cuts(plan: MethodPlan, problem: Problem): Generator<Cut> {
   for (let count = 1; ; count *= 2) {
     const width = Math.ceil(columns / count);
     const first = panel(problem, 0, width, bytesAvailable);
-    yield { width, first, work: plan.work(first) };
+    const work = plan.work(first);
+    const others = count === 1 ? [] : [Math.min(width, columns - width), columns - width].map((start) => panel(problem, start, width, bytesAvailable));
+    yield { width, first, work: { ...work, bytes: others.reduce((most, other) => Math.max(most, plan.work(other).bytes), work.bytes) } };
     if (width <= narrowest) return;
   }
 }

@@ -14,7 +14,7 @@ export interface Installed {
 
 /** Takes memory for programs; a single one is set up here and now. */
 export function install(programs: readonly Program[], memory: EngineMemory, routines: Routines): Installed {
-  const byteLength = Math.max(...programs.map((program) => program.byteLength));
+  const byteLength = programs.reduce((most, program) => Math.max(most, program.byteLength), 0);
   const address = memory.take(byteLength);
   if (programs.length === 1) setUp(programs[0]!, address, memory, routines);
   return { programs, address, byteLength };
