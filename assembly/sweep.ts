@@ -36,13 +36,24 @@ function ringFrom(job: usize, term: i32, row: i32): usize {
   return load<usize>(job, ROW_TABLE) + (<usize>(term * 2 * ringRows + (row % ringRows)) << 2);
 }
 
+/** Staged samples of the extended row that alpha is kept from. */
+// @ts-ignore: decorator
+@inline
+export function keptRow(job: usize, row: i32, from: i32): usize {
+  return load<usize>(job, KEEP_STAGING) + <usize>(row - from) * load<usize>(job, STAGING_STRIDE);
+}
+
+/** Where a result row goes. */
+// @ts-ignore: decorator
+@inline
+export function outputRow(job: usize, row: i32, from: i32): usize {
+  return load<usize>(job, OUTPUT) + <usize>(row - from) * load<usize>(job, OUTPUT_STRIDE);
+}
+
 /** Leaves one result row: enters the alpha row of `keep` before, where it is asked for. */
 export function leaveStaged<V>(job: usize, y: usize, row: i32, from: i32): void {
-  if (load<i32>(job, ALPHA) == 3) {
-    const staged = load<usize>(job, KEEP_STAGING) + <usize>(row - from) * load<usize>(job, STAGING_STRIDE);
-    enterRow<V>(job, load<usize>(job, KEEP_ROW), row + load<i32>(job, ANCHOR_ROW), staged);
-  }
-  leaveRow<V>(job, y, row, load<usize>(job, OUTPUT) + <usize>(row - from) * load<usize>(job, OUTPUT_STRIDE));
+  if (load<i32>(job, ALPHA) == 3) enterRow<V>(job, load<usize>(job, KEEP_ROW), row + load<i32>(job, ANCHOR_ROW), keptRow(job, row, from));
+  leaveRow<V>(job, y, row, outputRow(job, row, from));
 }
 
 // @ts-ignore: decorator
