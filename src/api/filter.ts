@@ -3,6 +3,7 @@ import type { Choice } from "../planning/choose.js";
 import { programsOf } from "../planning/panels.js";
 import type { Problem } from "../planning/problem.js";
 import { execute, install, type Installed } from "../runtime/execute.js";
+import { Execution } from "../runtime/execution.js";
 import type { Explanation, Filter, Raster, ResultArray, ResultRaster, Samples, SampleType } from "../types.js";
 import type { Core } from "./loading.js";
 import type { CheckedRaster } from "./validate/raster.js";
@@ -28,6 +29,7 @@ export class PreparedFilter<T extends SampleType = never> implements Filter<T> {
   readonly #core: Core;
   readonly #leave: () => void;
   #installed: Installed | undefined;
+  #execution: Execution | undefined;
 
   constructor(problem: Problem, choice: Choice, explanation: Explanation, core: Core, leave: () => void) {
     this.explanation = explanation;
@@ -35,13 +37,14 @@ export class PreparedFilter<T extends SampleType = never> implements Filter<T> {
     this.#core = core;
     this.#leave = leave;
     this.#installed = install(programsOf(choice.plan, problem), core.memory, core.routines);
+    this.#execution = new Execution(this.#installed, core.memory, core.routines);
   }
 
   run<S extends Samples>(image: Raster<S>): ResultRaster<ResultArray<S, T>>;
   run<R extends Raster>(image: Raster, target: R): R;
   run(image: Raster, target?: Raster): Raster {
-    const installed = this.#installed;
-    if (!installed) {
+    const execution = this.#execution;
+    if (!execution) {
       const message =
         "run: the filter was disposed, by itself or with its engine, and its memory is given back. Prepare it anew on an engine that is not disposed.";
       throw new ConvolutionError("disposed", message, { expected: "a filter that is not disposed", received: "a disposed filter" });
@@ -50,19 +53,19 @@ export class PreparedFilter<T extends SampleType = never> implements Filter<T> {
     const source = checkedSource(image, request);
     const result = { width: horizontal.count, height: vertical.count, channels: request.channels, sample: request.output.sample };
     if (target !== undefined) {
-      execute(installed, this.#core.memory, this.#core.routines, source, checkedTarget(target, source, result));
+      execute(execution, source, checkedTarget(target, source, result));
       return target;
     }
     const { width, height, channels } = result;
     const data = newSamples(result.sample, source, width * height * channels);
-    execute(installed, this.#core.memory, this.#core.routines, source, { data, stride: width * channels });
+    execute(execution, source, { data, stride: width * channels });
     return { data, width, height, channels, ...(source.colorSpace === undefined ? {} : { colorSpace: source.colorSpace }) };
   }
 
   dispose(): void {
     const installed = this.#installed;
     if (!installed) return;
-    this.#installed = undefined;
+    this.#installed = this.#execution = undefined;
     this.#core.memory.release(installed.address, installed.byteLength);
     this.#leave();
   }

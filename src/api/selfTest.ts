@@ -2,6 +2,7 @@ import { kernel } from "../kernels/index.js";
 import { methods } from "../planning/methods.js";
 import { problemOf, type Request } from "../planning/problem.js";
 import { execute, install } from "../runtime/execute.js";
+import { Execution } from "../runtime/execution.js";
 import type { EngineMemory } from "../runtime/memory.js";
 import type { Routines } from "../runtime/routines.js";
 import type { Build } from "../types.js";
@@ -66,7 +67,7 @@ export function failedAnswer(routines: Routines, memory: EngineMemory, build: Bu
     };
     const installed = install([plan.program(problemOf(request, build, Infinity))], memory, routines);
     const found = new Float32Array(width * height);
-    execute(installed, memory, routines, { data, stride: width }, { data: found, stride: width });
+    execute(new Execution(installed, memory, routines), { data, stride: width }, { data: found, stride: width });
     memory.release(installed.address, installed.byteLength);
     const expected = answers(kernels[plan.name].taps);
     const wrong = found.findIndex((value, k) => value !== expected[k]);

@@ -1,9 +1,8 @@
-import type { Raster } from "../types.js";
+import type { Execution } from "./execution.js";
 import type { EngineMemory } from "./memory.js";
-import type { Intake, Outlet, Program, RowSpan, Step } from "./program.js";
+import type { Program } from "./program.js";
 import type { Routines } from "./routines.js";
-
-type Plane = Required<Pick<Raster, "data" | "stride">>;
+import type { Plane } from "./rowTraffic.js";
 
 /** Programs that have their memory: one, or several that take turns in it. */
 export interface Installed {
@@ -26,43 +25,8 @@ function setUp(program: Program, address: number, memory: EngineMemory, routines
   for (const step of program.setup) routines[step.routine](address + program.record, step.from, step.to, step.strip);
 }
 
-/** Stages source rows for a step: neighbours in one copy where they lie side by side in both places. */
-function stageRows(memory: EngineMemory, intake: Intake, source: Plane, rows: RowSpan, address: number): void {
-  const { data, stride } = source;
-  const rowSamples = intake.columns * intake.channels;
-  if (rowSamples === 0) return;
-  const rowBytes = rowSamples * data.BYTES_PER_ELEMENT;
-  const left = intake.firstColumn * intake.channels;
-  for (let k = 0; k < rows.count;) {
-    const row = intake.rowMap[rows.first + k]!;
-    let run = 1;
-    if (stride === rowSamples) while (k + run < rows.count && row >= 0 && intake.rowMap[rows.first + k + run] === row + run) run++;
-    if (row >= 0) memory.stage(data, row * stride + left, run * rowSamples, address + k * rowBytes);
-    k += run;
-  }
-}
-
-function takeRows(memory: EngineMemory, target: Plane, { firstSample, rowSamples }: Outlet, rows: RowSpan, address: number): void {
-  const { data, stride } = target;
-  if (stride === rowSamples) return memory.takeOut(data, rows.first * stride, rows.count * rowSamples, address);
-  const rowBytes = rowSamples * data.BYTES_PER_ELEMENT;
-  for (let k = 0; k < rows.count; k++) memory.takeOut(data, (rows.first + k) * stride + firstSample, rowSamples, address + k * rowBytes);
-}
-
-/** One step: rows in, the call, rows out. */
-function executeStep(program: Program, address: number, step: Step, memory: EngineMemory, routines: Routines, source: Plane, target: Plane): void {
-  const { intake, outlet } = program;
-  if (step.read) stageRows(memory, intake, source, step.read, address + intake.offset);
-  if (step.keep) stageRows(memory, intake, source, step.keep, address + intake.keepOffset);
-  routines[step.routine](address + program.record, step.from, step.to, step.strip);
-  if (step.write) takeRows(memory, target, outlet, step.write, address + outlet.offset);
-}
-
 /** All steps of all programs, back to back. */
-export function execute(installed: Installed, memory: EngineMemory, routines: Routines, source: Plane, target: Plane): void {
-  const { programs, address } = installed;
-  for (const program of programs) {
-    if (programs.length > 1) setUp(program, address, memory, routines);
-    for (const step of program.steps) executeStep(program, address, step, memory, routines, source, target);
-  }
+export function execute(execution: Execution, source: Plane, target: Plane): void {
+  execution.begin(source, target);
+  while (!execution.done) execution.advance();
 }

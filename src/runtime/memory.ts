@@ -129,16 +129,15 @@ export class EngineMemory {
     return samples.BYTES_PER_ELEMENT === 1 ? this.#bytes : samples.BYTES_PER_ELEMENT === 2 ? this.#words : this.#floats;
   }
 
-  /** Copies samples first … first + count − 1 into the memory. */
-  stage(samples: Samples, first: number, count: number, address: number): void {
-    const whole = first === 0 && count === samples.length;
-    this.#viewFor(samples).set(whole ? samples : samples.subarray(first, first + count), address / samples.BYTES_PER_ELEMENT);
+  /** Copies samples into the memory. */
+  stage(samples: Samples, address: number): void {
+    this.#viewFor(samples).set(samples, address / samples.BYTES_PER_ELEMENT);
   }
 
-  /** Copies `count` samples out of the memory, to samples[first] and on. */
-  takeOut(samples: Samples, first: number, count: number, address: number): void {
-    const start = address / samples.BYTES_PER_ELEMENT;
-    samples.set(this.#viewFor(samples).subarray(start, start + count), first);
+  /** A view of `count` samples in the memory, of the type of `like`; gone when the memory grows. */
+  window(like: Samples, address: number, count: number): Samples {
+    const start = address / like.BYTES_PER_ELEMENT;
+    return this.#viewFor(like).subarray(start, start + count);
   }
 
   /** Writes a program's tables for a filter whose block starts at `base`. */
