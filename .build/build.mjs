@@ -1,19 +1,14 @@
 /** Makes dist/ anew: the core, the library with its declarations, the command line. */
-import { spawnSync } from "node:child_process";
 import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
 import { dirname, join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { buildCommandLine } from "./commandLine.mjs";
 import { buildCore } from "./core.mjs";
 import { fingerprintOf } from "./fingerprint.mjs";
+import { buildLibrary } from "./library.mjs";
 
 const root = join(dirname(fileURLToPath(import.meta.url)), "..");
 const stampFile = join(root, "node_modules", ".cache", "tapwise", "dist");
-
-function emitLibrary() {
-  const { status } = spawnSync(process.execPath, [join(root, "node_modules/typescript/bin/tsc"), "-p", "tsconfig.build.json"], { cwd: root, stdio: "inherit" });
-  if (status !== 0) throw new Error("The library does not compile.");
-}
 
 function isFresh(stamp) {
   return existsSync(join(root, "dist", "cli", "tapwise.js")) && existsSync(stampFile) && readFileSync(stampFile, "utf8") === stamp;
@@ -25,7 +20,7 @@ export async function buildPackage({ onlyIfStale = false } = {}) {
   const stamp = fingerprintOf(root, ["src", ".build"], ["package.json", "tsconfig.json", "tsconfig.build.json", "package-lock.json"]);
   if (onlyIfStale && isFresh(stamp)) return;
   rmSync(join(root, "dist"), { recursive: true, force: true });
-  emitLibrary();
+  await buildLibrary();
   await buildCommandLine();
   mkdirSync(dirname(stampFile), { recursive: true });
   writeFileSync(stampFile, stamp);

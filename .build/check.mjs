@@ -6,7 +6,7 @@ import { fileURLToPath } from "node:url";
 import { buildPackage } from "./build.mjs";
 import { buildCore } from "./core.mjs";
 import { reportFile } from "./reports.mjs";
-import { packageSizes } from "./sizes.mjs";
+import { checkPageSize, mostGzipBytes, sizeTable } from "./sizes.mjs";
 
 const root = join(dirname(fileURLToPath(import.meta.url)), "..");
 const packed = join(root, "node_modules", ".cache", "tapwise", "packed");
@@ -38,6 +38,7 @@ const steps = [
   ["layers", () => run("vitest", "run", "--project", "node", "test/layers"), "imports, arithmetic, the owner of the memory"],
   ["documents", () => run("vitest", "run", "--project", "node", "test/documents"), "links, anchors and error codes in the documents"],
   ["build", () => buildPackage(), "dist/"],
+  ["size", () => checkPageSize(), `what a default page loads: at most ${mostGzipBytes / 1000} kB with gzip`],
   ["publint", () => run("publint", pack(), "--strict"), "the tarball as bundlers and Node read it"],
   ["declarations", () => run("attw", pack(), "--profile", "esm-only", "--no-color"), "the tarball's types as TypeScript resolves them"],
   ["package", () => run("vitest", "run", "--project", "package"), "the tarball installed in an empty folder and used"],
@@ -61,6 +62,6 @@ for (const step of steps) outcomes.push(await attempt(step));
 const numPassedTests = outcomes.filter(Boolean).length;
 const numFailedTests = outcomes.length - numPassedTests;
 writeFileSync(reportFile("check"), JSON.stringify({ numPassedTests, numFailedTests }));
-if (numFailedTests === 0) console.log(packageSizes(pack()));
+if (numFailedTests === 0) console.log(`\n${sizeTable(pack())}\n`);
 console.log(`${numPassedTests} checks passed, ${numFailedTests} failed`);
 process.exitCode = numFailedTests === 0 ? 0 : 1;

@@ -16,15 +16,15 @@ const pathOf = (k: number): string => join(folder, `example${k}.ts`);
 let program: ts.Program;
 let outcomes: Record<string, string>;
 
-async function namesExportedBy(module: string): Promise<Set<string>> {
-  return new Set(Object.keys(await import(pathToFileURL(join(root, "dist", module)).href)));
+async function namesExportedBy(path: string): Promise<Set<string>> {
+  return new Set(Object.keys(await import(pathToFileURL(join(root, path)).href)));
 }
 
 /** A folder in which the repository is an installed package and two photographs lie. */
 function furnish(): void {
   mkdirSync(join(folder, "node_modules", "@types"), { recursive: true });
   symlinkSync(root, join(folder, "node_modules", "tapwise"));
-  for (const name of ["pngjs", "@types/pngjs", "@types/node"]) symlinkSync(join(root, "node_modules", name), join(folder, "node_modules", name));
+  for (const name of ["pngjs", "tsx", "@types/pngjs", "@types/node"]) symlinkSync(join(root, "node_modules", name), join(folder, "node_modules", name));
   writeFileSync(join(folder, "package.json"), '{ "type": "module" }');
   const photo = new PNG({ width: 64, height: 48 });
   photo.data.forEach((_, k) => (photo.data[k] = (k * 31) % 256));
@@ -33,16 +33,19 @@ function furnish(): void {
 
 async function writeProgram(snippet: Snippet, k: number): Promise<void> {
   const moduleNames = snippet.module === undefined ? new Set<string>() : await namesExportedBy(snippet.module);
-  writeFileSync(pathOf(k), programOf(snippet, await namesExportedBy("index.js"), moduleNames));
+  writeFileSync(pathOf(k), programOf(snippet, await namesExportedBy("dist/index.js"), moduleNames));
 }
 
-/** Runs the compiled examples one after the other in one process: what each threw, by its number. */
+/**
+ * Runs the compiled examples one after the other in one process: what each threw, by its number. tsx serves those that describe a
+ * module inside the house, which the package does not export and so is taken from src/.
+ */
 function runAll(): Record<string, string> {
   const numbers = snippets.flatMap((snippet, k) => (snippet.pageOnly ? [] : [k]));
   const runner = `const outcomes = {}; for (const k of ${JSON.stringify(numbers)}) { try { await import("./example" + k + ".js"); outcomes[k] = "done"; } catch (error) { outcomes[k] = String(error); } }
     (await import("node:fs")).writeFileSync("outcomes.json", JSON.stringify(outcomes));`;
   writeFileSync(join(folder, "run.js"), runner);
-  const { status, stderr } = spawnSync(process.execPath, ["run.js"], { cwd: folder, encoding: "utf8" });
+  const { status, stderr } = spawnSync(process.execPath, ["--import", "tsx", "run.js"], { cwd: folder, encoding: "utf8" });
   if (status !== 0) throw new Error(stderr);
   return JSON.parse(ts.sys.readFile(join(folder, "outcomes.json")) ?? "{}");
 }
@@ -62,7 +65,7 @@ beforeAll(async () => {
       skipLibCheck: true,
     },
   );
-  program.emit();
+  for (const k of snippets.keys()) program.emit(program.getSourceFile(pathOf(k)));
   outcomes = runAll();
 }, 120_000);
 afterAll(() => rmSync(folder, { recursive: true, force: true }));

@@ -1,5 +1,4 @@
 import { join } from "node:path";
-import { pathToFileURL } from "node:url";
 import ts from "typescript";
 import { root, visit } from "../layers/sources.js";
 import type { Snippet } from "./snippets.js";
@@ -87,6 +86,6 @@ export function programOf(snippet: Snippet, publicNames: ReadonlySet<string>, mo
   const fromModule = wanted.filter((name) => !publicNames.has(name) && moduleNames.has(name));
   const imports = fromPackage.length > 0 ? [`import { ${fromPackage.join(", ")} } from "tapwise";`] : [];
   if (fromModule.length > 0)
-    imports.push(`import { ${fromModule.join(", ")} } from ${JSON.stringify(pathToFileURL(join(root, "dist", snippet.module ?? "")).pathname)};`);
+    imports.push(`import { ${fromModule.join(", ")} } from ${JSON.stringify(join(root, snippet.module ?? "").replace(/\.ts$/, ".js"))};`);
   return [...imports, ...lines.map(([, line]) => line), withPromisesChecked(tree), holds, "export {};"].join("\n");
 }

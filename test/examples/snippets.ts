@@ -9,7 +9,7 @@ export interface Snippet {
   /** Where it stands, as path:line. */
   place: string;
   code: string;
-  /** The module of the library in whose comments it stands, if it does. */
+  /** The module in whose comments it stands, if it does: its path from the root. */
   module?: string;
   /** Needs a page: its types are checked, but it is not run here. */
   pageOnly: boolean;
@@ -35,7 +35,7 @@ function snippetsOfModule(path: string, tree: ts.SourceFile): Snippet[] {
   return [...tags].map((tag) => ({
     place: `${path}:${tree.getLineAndCharacterOfPosition(tag.getStart()).line + 1}`,
     code: commentText(tag.comment).replace(/^```\w*\n([\s\S]*)\n```$/, "$1"),
-    module: path.replace(/^src\//, "").replace(/\.ts$/, ".js"),
+    module: path,
     pageOnly: false,
   }));
 }
