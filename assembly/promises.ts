@@ -147,7 +147,7 @@ export function assertSweep(job: usize, from: i32, to: i32, ringRows: i32): void
   if (ASC_NO_ASSERT) return;
   assertSource(job);
   assertShapes(job);
-  assert(from >= 0 && from < to && to <= load<i32>(job, OUTPUT_ROWS));
+  assert(from > -load<i32>(job, KERNEL_ROWS) && from < to && to <= load<i32>(job, OUTPUT_ROWS));
   const floats = load<i32>(job, RESULT_FLOATS), stride = load<usize>(job, RESULT_STRIDE);
   assert((floats & 3) == 0 && floats - load<i32>(job, OUTPUT_COLUMNS) * load<i32>(job, CHANNELS) < 4);
   assert(isAligned(load<usize>(job, RESULT)) && (stride & 15) == 0 && stride >= <usize>floats << 2);

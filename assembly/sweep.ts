@@ -10,15 +10,23 @@ import {
 } from "./record";
 
 /*
- * A sweep computes result rows from … to − 1. It starts with an empty ring where from is 0, else the ring holds the
- * kernelRows − 1 extended rows before; the staged rows are those that come new: extended rows first … to + kernelRows − 2.
+ * A sweep goes by extended rows, counted so that row k completes result row k: units −(kernelRows − 1) … resultRows − 1. A call
+ * from … to − 1 enters extended rows from + kernelRows − 1 … to + kernelRows − 2, which are those that are staged, and computes result rows
+ * max(from, 0) … to − 1. It starts with an empty ring at the first unit, else the ring holds the kernelRows − 1 extended rows before.
  */
 
-/** First extended row that a sweep from result row `from` has to enter. */
+/** First extended row that a call from unit `from` enters; 0 at the start of a sweep. */
 // @ts-ignore: decorator
 @inline
 export function firstNewRow(job: usize, from: i32): i32 {
-  return from == 0 ? 0 : from + load<i32>(job, KERNEL_ROWS) - 1;
+  return from + load<i32>(job, KERNEL_ROWS) - 1;
+}
+
+/** First result row that a call from unit `from` computes. */
+// @ts-ignore: decorator
+@inline
+export function firstResultRow(from: i32): i32 {
+  return max<i32>(from, 0);
 }
 
 /** Staged samples of an extended row. */
@@ -40,14 +48,14 @@ function ringFrom(job: usize, term: i32, row: i32): usize {
 // @ts-ignore: decorator
 @inline
 export function keptRow(job: usize, row: i32, from: i32): usize {
-  return load<usize>(job, KEEP_STAGING) + <usize>(row - from) * load<usize>(job, STAGING_STRIDE);
+  return load<usize>(job, KEEP_STAGING) + <usize>(row - firstResultRow(from)) * load<usize>(job, STAGING_STRIDE);
 }
 
 /** Where a result row goes. */
 // @ts-ignore: decorator
 @inline
 export function outputRow(job: usize, row: i32, from: i32): usize {
-  return load<usize>(job, OUTPUT) + <usize>(row - from) * load<usize>(job, OUTPUT_STRIDE);
+  return load<usize>(job, OUTPUT) + <usize>(row - firstResultRow(from)) * load<usize>(job, OUTPUT_STRIDE);
 }
 
 /** Leaves one result row: enters the alpha row of `keep` before, where it is asked for. */
@@ -71,10 +79,11 @@ export function sweepDirect<V>(job: usize, from: i32, to: i32): void {
   const step = <usize>load<i32>(job, CHANNELS) << 2;
   const result = load<usize>(job, RESULT);
   const first = firstNewRow(job, from);
+  const end = to + n - 1;
   let next = first;
-  for (let row = from; row < to; row += 2) {
-    const last = min<i32>(row + n + 1, to + n - 1);
-    for (; next < last; next++) enterRow<V>(job, load<usize>(ringFrom(job, 0, next)), next, stagedRow(job, next, first));
+  for (let row = firstResultRow(from); next < end; row += 2) {
+    for (const last = min<i32>(row + n + 1, end); next < last; next++) enterRow<V>(job, load<usize>(ringFrom(job, 0, next)), next, stagedRow(job, next, first));
+    if (row >= to) return; // a call that ends above the first result only enters
     correlateRows<V>(
       result, result + load<usize>(job, RESULT_STRIDE), ringFrom(job, 0, row), load<usize>(job, TAPS), n,
       load<i32>(job, KERNEL_COLUMNS), step, load<i32>(job, RESULT_FLOATS),
@@ -100,12 +109,14 @@ export function sweepSeparable<V>(job: usize, from: i32, to: i32): void {
   assertTerms(job);
   const result = load<usize>(job, RESULT);
   const first = firstNewRow(job, from);
+  const end = to + n - 1;
   let next = first;
-  for (let row = from; row < to; row += 2) {
-    for (const last = min<i32>(row + n + 1, to + n - 1); next < last; next++) {
+  for (let row = firstResultRow(from); next < end; row += 2) {
+    for (const last = min<i32>(row + n + 1, end); next < last; next++) {
       enterRow<V>(job, load<usize>(job, ENTERED), next, stagedRow(job, next, first));
       rowPasses<V>(job, next);
     }
+    if (row >= to) return; // a call that ends above the first result only enters
     for (let term = 0; term < load<i32>(job, TERMS); term++) {
       const taps = load<usize>(job, COLUMN_TAPS) + (<usize>(term * n) << 2);
       correlateColumns<V>(

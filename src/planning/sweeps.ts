@@ -1,6 +1,6 @@
 import * as field from "../generated/record.js";
 import type { RoutineName, Step, Table } from "../runtime/program.js";
-import { writing, type Frame } from "./frame.js";
+import { plainStep, writing, type Frame } from "./frame.js";
 import { vectorFloats, type Problem } from "./problem.js";
 import type { JobRecord } from "./record.js";
 
@@ -40,31 +40,41 @@ export function ringTables(layout: SweepFrame, rings: number): Table {
  */
 const operationsPerCall = 16_000_000;
 
-/** Result rows of one call: an even number, as sweeps go two rows at a time. */
-function sliceRows(problem: Problem, operationsPerRow: number, affordable: number): number {
-  const bounded = Math.min(affordable, operationsPerCall / Math.max(1, operationsPerRow), problem.vertical.count + 1);
-  return Math.max(2, 2 * Math.floor(bounded / 2));
+/** Extended rows that one call of a sweep enters: an even number, as sweeps go two rows at a time. */
+export function sweepStagedRows(problem: Problem, operationsPerRow: number): (affordable: number) => number {
+  return (affordable) => {
+    const bounded = Math.min(affordable, operationsPerCall / Math.max(1, operationsPerRow), problem.vertical.extended + 1);
+    return Math.max(2, 2 * Math.floor(bounded / 2));
+  };
 }
 
-/** Rows that a sweep's first call reads: its own, and those above its first result. */
-export function sweepStagedRows(problem: Problem, operationsPerRow: number): (affordable: number) => number {
-  return (affordable) => sliceRows(problem, operationsPerRow, affordable) + problem.vertical.taps - 1;
+/**
+ * Where the calls of a sweep end, in its units (see the core's sweep): the first taps − 1 rows only enter, so that a tall kernel's first call is
+ * no longer than the others. Results come in pairs, so every call with results behind it begins with an even one.
+ */
+function* callEnds(problem: Problem, frame: Frame): Generator<number> {
+  const { count, taps } = problem.vertical;
+  for (let end = 1 - taps; end < count;) {
+    end += frame.stagedRows;
+    if (end > 0) end -= end % 2;
+    yield Math.min(count, end);
+  }
 }
 
 export function sweepCalls(problem: Problem, frame: Frame): number {
-  return Math.ceil(problem.vertical.count / (frame.stagedRows - problem.vertical.taps + 1));
+  return [...callEnds(problem, frame)].length;
 }
 
 /** Calls of a sweep, top to bottom; each reads the rows that are new to it. */
 export function sweepSteps(problem: Problem, frame: Frame, routine: RoutineName): Step[] {
-  const { count, taps } = problem.vertical;
-  const slice = frame.stagedRows - taps + 1;
+  const { taps } = problem.vertical;
   const steps: Step[] = [];
-  for (let from = 0; from < count; from += slice) {
-    const to = Math.min(count, from + slice);
-    const first = from === 0 ? 0 : from + taps - 1;
-    const step: Step = { routine, from, to, strip: 0, read: { first, count: to + taps - 1 - first } };
-    steps.push(writing(problem, step, { first: from, count: to - from }));
+  let from = 1 - taps;
+  for (const to of callEnds(problem, frame)) {
+    const step: Step = { ...plainStep(routine, from, to), read: { first: from + taps - 1, count: to - from } };
+    const first = Math.max(from, 0);
+    steps.push(to > first ? writing(problem, step, { first, count: to - first }) : step);
+    from = to;
   }
   return steps;
 }

@@ -144,7 +144,7 @@ describe("a sweep", () => {
 
   test.each<[string, Break]>([
     ["no rows to compute", (_, given) => (given.to = 0)],
-    ["rows above the image", (_, given) => (given.from = -1)],
+    ["rows above the image", (_, given) => (given.from = -2)],
     ["rows below the image", (_, given) => (given.to = 4)],
     ["a kernel without rows", (job) => job.integer(field.KERNEL_ROWS, 0)],
     ["an extended image that does not fit the results", (job) => job.integer(field.EXTENDED_COLUMNS, 11)],

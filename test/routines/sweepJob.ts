@@ -78,18 +78,18 @@ export function ring(bench: Bench, rows: number, byteLength: number, slackFloats
 
 type SweepName = "sweepDirect" | "sweepSeparable" | "sweepRunningSum" | "sweepIntegerSums";
 
-/** Calls a sweep in slices of `slice` result rows, each with the rows that are new to it staged; all results. */
+/** Calls a sweep in slices of `slice` rows, each with the rows that are new to it staged, from the first that only enters; all results. */
 export function swept({ bench, routines }: Core, name: SweepName, job: Job, stated: Sweeping, slice: number): Float32Array {
   const rows = resultRows(stated);
   const rowFloats = resultColumns(stated) * stated.channels;
   const results = new Float32Array(rows * rowFloats);
   routines.enterConstants(job.address, 0, 0, 0);
-  for (let from = 0; from < rows; from += slice) {
+  for (let from = 1 - stated.n; from < rows; from += slice) {
     const to = Math.min(rows, from + slice);
-    const first = from === 0 ? 0 : from + stated.n - 1;
-    stage(bench, job, stated, first, to + stated.n - 1 - first);
+    const top = Math.max(from, 0);
+    stage(bench, job, stated, from + stated.n - 1, to - from);
     routines[name](job.address, from, to, 0);
-    results.set(bench.floats(fieldOf(bench, job, field.OUTPUT), (to - from) * rowFloats), from * rowFloats);
+    if (to > top) results.set(bench.floats(fieldOf(bench, job, field.OUTPUT), (to - top) * rowFloats), top * rowFloats);
   }
   return results;
 }
