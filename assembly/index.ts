@@ -7,9 +7,12 @@
  * every sum is taken in the same order in both.
  *
  *     set-up    enterConstants · decodeCurve · placeTaps, forwardColumns, takeSpectrum (FFT)
- *     sweeps    sweepDirect · sweepSeparable · sweepIntegerSums · sweepRunningSum                          units: result rows
+ *     sweeps    sweepDirect · sweepSeparable · sweepDirectBytes · sweepSeparableBytes                      units: result rows
+ *               sweepIntegerSums · sweepRunningSum
  *     FFT       enterStrip (rows) → forwardColumns (floats) → filterRows (groups of rows) → inverseColumns (floats) → leaveStrip (rows)
  */
+import { sweepDirectBytes as sweepDirectBytesOf } from "./bytes/direct";
+import { sweepSeparableBytes as sweepSeparableBytesOf } from "./bytes/separable";
 import { decodeTable } from "./curve";
 import { enterConstants as enterConstantsOf } from "./enter";
 import { enterStrip as enterStripOf, leaveStrip as leaveStripOf } from "./fft/strips";
@@ -35,6 +38,16 @@ export function sweepDirect(job: usize, from: i32, to: i32): void {
 export function sweepSeparable(job: usize, from: i32, to: i32): void {
   if (ASC_FEATURE_SIMD) sweepSeparableOf<v128>(job, from, to);
   else sweepSeparableOf<f32>(job, from, to);
+}
+
+export function sweepDirectBytes(job: usize, from: i32, to: i32): void {
+  if (ASC_FEATURE_SIMD) sweepDirectBytesOf<v128>(job, from, to);
+  else sweepDirectBytesOf<i32>(job, from, to);
+}
+
+export function sweepSeparableBytes(job: usize, from: i32, to: i32): void {
+  if (ASC_FEATURE_SIMD) sweepSeparableBytesOf<v128>(job, from, to);
+  else sweepSeparableBytesOf<i32>(job, from, to);
 }
 
 export function sweepIntegerSums(job: usize, from: i32, to: i32): void {

@@ -280,3 +280,78 @@ export function addDifference8_u16<V>(sums: usize, incoming: usize, outgoing: us
     }
   }
 }
+
+// ---- 32-bit integers: V is v128 (four of them) or i32 ----
+
+// @ts-ignore: decorator
+@inline
+export function splatInteger<V>(value: i32): V {
+  if (isVector<V>()) return changetype<V>(i32x4.splat(value));
+  return <V>value;
+}
+
+/** sum + tap₀ · x₀ + tap₁ · x₁ in each lane: taps and samples are pairs of signed 16-bit integers. */
+// @ts-ignore: decorator
+@inline
+export function dotAdd<V>(sum: V, taps: V, pairs: V): V {
+  if (isVector<V>()) return changetype<V>(i32x4.add(changetype<v128>(sum), i32x4.dot_i16x8_s(changetype<v128>(taps), changetype<v128>(pairs))));
+  const low = <i32>(<i16>(<i32>taps)) * <i32>(<i16>(<i32>pairs));
+  return <V>((<i32>sum) + low + ((<i32>taps) >> 16) * ((<i32>pairs) >> 16));
+}
+
+/** ⌊sum ÷ 2^shift⌋ held within 0 … 255: four vectors of sums to as many bytes. */
+// @ts-ignore: decorator
+@inline
+export function storeBytes<V>(out: usize, a: V, b: V, c: V, d: V, shift: i32): void {
+  if (isVector<V>()) {
+    const low = i16x8.narrow_i32x4_s(i32x4.shr_s(changetype<v128>(a), shift), i32x4.shr_s(changetype<v128>(b), shift));
+    const high = i16x8.narrow_i32x4_s(i32x4.shr_s(changetype<v128>(c), shift), i32x4.shr_s(changetype<v128>(d), shift));
+    v128.store(out, i8x16.narrow_i16x8_u(low, high));
+  } else {
+    store<u8>(out, heldByte((<i32>a) >> shift));
+    store<u8>(out, heldByte((<i32>b) >> shift), 1);
+    store<u8>(out, heldByte((<i32>c) >> shift), 2);
+    store<u8>(out, heldByte((<i32>d) >> shift), 3);
+  }
+}
+
+// @ts-ignore: decorator
+@inline
+function heldByte(value: i32): i32 {
+  return max<i32>(0, min<i32>(255, value));
+}
+
+/** ⌊sum ÷ 2^shift⌋ as signed 16-bit integers, which they fit: two vectors of sums. */
+// @ts-ignore: decorator
+@inline
+export function storeWords<V>(out: usize, a: V, b: V, shift: i32): void {
+  if (isVector<V>()) {
+    v128.store(out, i16x8.narrow_i32x4_s(i32x4.shr_s(changetype<v128>(a), shift), i32x4.shr_s(changetype<v128>(b), shift)));
+  } else {
+    store<i16>(out, (<i32>a) >> shift);
+    store<i16>(out, (<i32>b) >> shift, 2);
+  }
+}
+
+/** Pairs of 16-bit integers (a[k], b[k]) from eight bytes of each. */
+// @ts-ignore: decorator
+@inline
+export function pairBytes8<V>(out: usize, a: usize, b: usize): void {
+  if (isVector<V>()) storePairs(out, v128.load_ext<u8>(a), v128.load_ext<u8>(b));
+  else for (let k: usize = 0; k < 8; k++) store<i32>(out + (k << 2), <i32>load<u8>(a + k) | (<i32>load<u8>(b + k) << 16));
+}
+
+/** Pairs of 16-bit integers (a[k], b[k]) from eight of each. */
+// @ts-ignore: decorator
+@inline
+export function pairWords8<V>(out: usize, a: usize, b: usize): void {
+  if (isVector<V>()) storePairs(out, v128.load(a), v128.load(b));
+  else for (let k: usize = 0; k < 8; k++) store<i32>(out + (k << 2), <i32>load<u16>(a + (k << 1)) | (<i32>load<u16>(b + (k << 1)) << 16));
+}
+
+// @ts-ignore: decorator
+@inline
+function storePairs(out: usize, a: v128, b: v128): void {
+  v128.store(out, v128.shuffle<i16>(a, b, 0, 8, 1, 9, 2, 10, 3, 11));
+  v128.store(out, v128.shuffle<i16>(a, b, 4, 12, 5, 13, 6, 14, 7, 15), 16);
+}

@@ -21,6 +21,9 @@ export const ROW_MAP = 24;
 /** Staged source rows, one after the other, and the bytes from one to the next. */
 export const STAGING = 28;
 export const STAGING_STRIDE = 32;
+/** Where source rows are read in place instead of STAGING (else 0): source row 0's first staged column, and the bytes from row to row. */
+export const SOURCE_ROWS = 304;
+export const SOURCE_ROW_STRIDE = 308;
 /** The longest stretch of extended columns that are neighbours in the source: first staged column, first extended column, columns. */
 export const RUN_SOURCE = 36;
 export const RUN_COLUMN = 40;
@@ -77,6 +80,9 @@ export const OUTPUT_ROWS = 152;
 /** Staged output rows, and the bytes from one to the next. */
 export const OUTPUT = 156;
 export const OUTPUT_STRIDE = 160;
+/** Where result rows are written in place instead of OUTPUT (else 0): result row 0, and the bytes from row to row. */
+export const RESULT_ROWS = 312;
+export const RESULT_ROW_STRIDE = 316;
 /** f32 */
 export const GAIN = 164;
 export const OFFSET = 168;
@@ -129,4 +135,12 @@ export const MARK_ROW = 284;
 /** f32. FFT: 1 ÷ (tile rows · tile columns). Running sums of floats: the power of two that keeps sums over the window finite. */
 export const SCALE = 288;
 
-export const RECORD_BYTES = 320;
+// ---- fixed point ----
+/** i32: what the sums start from (the offset and half a unit, so that shifting rounds), and by how many bits they are shifted at the end. */
+export const SUM_BIAS = 336;
+export const SUM_SHIFT = 340;
+/** The same for the column sums of the separable method, which end as 16-bit integers. */
+export const COLUMN_BIAS = 344;
+export const COLUMN_SHIFT = 348;
+
+export const RECORD_BYTES = 384;

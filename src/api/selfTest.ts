@@ -45,9 +45,15 @@ const kernels = {
   ]),
 };
 
-/** Runs every method on a small problem with a known, exact answer; tells the first one that is wrong. */
+/** What is written: floats as they are; of bytes a 64th and 3, which is exact, rounded half up. */
+const outputs = { floats: { sample: "f32", gain: 1, offset: 0 }, bytes: { sample: "u8", gain: 1 / 64, offset: 3 } } as const;
+
+const written = (kind: keyof typeof outputs, sum: number): number => (kind === "floats" ? sum : Math.max(0, Math.min(255, Math.floor(sum / 64 + 3.5))));
+
+/** Runs every form of every method on a small problem with a known, exact answer; tells the first one that is wrong. */
 export function failedAnswer(routines: Routines, memory: EngineMemory, build: Build): string | undefined {
   for (const plan of methods) {
+    const kind = plan.variant === "bytes" ? "bytes" : "floats";
     const request: Request = {
       kernel: kernels[plan.name],
       correlate: false,
@@ -63,15 +69,15 @@ export function failedAnswer(routines: Routines, memory: EngineMemory, build: Bu
       tolerance: 0,
       alpha: "none",
       light: "encoded",
-      output: { sample: "f32", gain: 1, offset: 0 },
+      output: outputs[kind],
     };
     const installed = install([plan.program(problemOf(request, build, Infinity))], memory, routines);
-    const found = new Float32Array(width * height);
+    const found = kind === "bytes" ? new Uint8Array(width * height) : new Float32Array(width * height);
     execute(new Execution(installed, memory, routines), { data, stride: width }, { data: found, stride: width });
     memory.release(installed.address, installed.byteLength);
-    const expected = answers(kernels[plan.name].taps);
+    const expected = answers(kernels[plan.name].taps).map((sum) => written(kind, sum));
     const wrong = found.findIndex((value, k) => value !== expected[k]);
-    if (wrong >= 0) return `${plan.name} gives ${found[wrong]} at sample ${wrong} instead of ${expected[wrong]}`;
+    if (wrong >= 0) return `${plan.name} (${plan.variant}) gives ${found[wrong]} at sample ${wrong} instead of ${expected[wrong]}`;
   }
   return undefined;
 }

@@ -1,6 +1,6 @@
 import type { Kernel } from "../kernels/index.js";
 import type { Work } from "../planning/method.js";
-import { methods } from "../planning/methods.js";
+import { variantFor } from "../planning/methods.js";
 import { problemOf } from "../planning/problem.js";
 import type { Build, Layout, Method, PrepareOptions } from "../types.js";
 import { checkedLayout, checkedRequest } from "./validate/request.js";
@@ -12,6 +12,6 @@ import { checkedLayout, checkedRequest } from "./validate/request.js";
  */
 export function workOf(method: Method, build: Build, kernel: Kernel, layout: Layout, options?: PrepareOptions): Work | undefined {
   const problem = problemOf(checkedRequest("work", kernel, checkedLayout("work", layout), options), build, Infinity);
-  const plan = methods.find(({ name }) => name === method)!;
+  const plan = variantFor(method, problem);
   return plan.applicable(problem) === true ? plan.work(problem) : undefined;
 }

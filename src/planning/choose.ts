@@ -2,7 +2,7 @@ import { ConvolutionError } from "../errors.js";
 import type { Candidate, HardwareProfile, Method } from "../types.js";
 import { priceOf, type Prices } from "./cost.js";
 import type { MethodPlan } from "./method.js";
-import { methods } from "./methods.js";
+import { methodNames, variantFor } from "./methods.js";
 import { panelsOf } from "./panels.js";
 import type { Problem } from "./problem.js";
 
@@ -58,7 +58,10 @@ function better(a: Priced, b: Priced, once: boolean): Priced {
  * @throws ConvolutionError `method-not-applicable` for a forced method, `memory-limit` where none fits
  */
 export function choose(problem: Problem, profile: HardwareProfile, once: boolean): Choice {
-  const all: Priced[] = methods.map((plan) => ({ plan, candidate: price(plan, problem, profile) }));
+  const all: Priced[] = methodNames.map((name) => {
+    const plan = variantFor(name, problem);
+    return { plan, candidate: price(plan, problem, profile) };
+  });
   const candidates = all.map(({ candidate }) => candidate);
   const { method } = problem.request;
   if (method !== "auto") return { ...forced(all, method, problem), candidates };

@@ -33,6 +33,7 @@ function error(problem: Problem): MethodError {
 
 export const direct: MethodPlan = {
   name: "direct",
+  variant: "floats",
 
   applicable: () => true,
 

@@ -202,6 +202,7 @@ function setupSteps(problem: Problem, tiling: Tiling): Step[] {
 
 export const fft: MethodPlan = {
   name: "fft",
+  variant: "tiles",
 
   applicable(problem) {
     const { horizontal, vertical } = problem;

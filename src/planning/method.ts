@@ -15,6 +15,8 @@ export interface Work {
 /** The cast of every method, in this order; planning/methods is the table of them. */
 export interface MethodPlan {
   readonly name: Method;
+  /** Which form of the method this is: its word in tests and benchmarks. */
+  readonly variant: string;
   /** True, or the sentence that `explain` prints. */
   applicable(problem: Problem): true | string;
   work(problem: Problem): Work;

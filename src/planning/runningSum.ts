@@ -75,6 +75,7 @@ const phase = (first: number, taps: number): number => ((first % taps) + taps) %
 
 export const runningSum: MethodPlan = {
   name: "running-sum",
+  variant: "sums",
 
   applicable: (problem) => problem.analysis.constant || "The taps are not all the same number.",
 

@@ -34,7 +34,7 @@ function termsNeeded(problem: Problem): number | undefined {
   return count > 0 ? count : residuals[0] === 0 ? 0 : undefined;
 }
 
-function termsOf(problem: Problem): SeparableTerm[] {
+export function termsOf(problem: Problem): SeparableTerm[] {
   const { terms } = problem.analysis.separation();
   const count = termsNeeded(problem)!;
   if (count > 0) return terms.slice(0, count);
@@ -82,6 +82,7 @@ function stacked(problem: Problem, part: "row" | "column"): Float32Array<ArrayBu
 
 export const separable: MethodPlan = {
   name: "separable",
+  variant: "floats",
 
   applicable(problem) {
     if (termsNeeded(problem) !== undefined) return true;

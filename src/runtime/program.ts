@@ -4,6 +4,8 @@ import type { SampleType } from "../types.js";
 export type RoutineName =
   | "sweepDirect"
   | "sweepSeparable"
+  | "sweepDirectBytes"
+  | "sweepSeparableBytes"
   | "sweepIntegerSums"
   | "sweepRunningSum"
   | "enterConstants"

@@ -8,6 +8,8 @@ export type Routines = Record<RoutineName, Routine> & { vectorFloats(): number }
 const names: readonly RoutineName[] = [
   "sweepDirect",
   "sweepSeparable",
+  "sweepDirectBytes",
+  "sweepSeparableBytes",
   "sweepIntegerSums",
   "sweepRunningSum",
   "enterConstants",

@@ -2,7 +2,7 @@ import { ConvolutionError } from "../../errors.js";
 import { asKernel, readTaps, type Kernel } from "../../kernels/kernel.js";
 import { checkedNumber, checkOptionNames, chosenWord } from "../../kernels/options.js";
 import { analyse } from "../../planning/analysis.js";
-import { methods } from "../../planning/methods.js";
+import { methodNames } from "../../planning/methods.js";
 import { anchorOf, extentOf, type Request } from "../../planning/problem.js";
 import type { Alpha, BorderRule, Channels, Extent, Light, Method, Region, SampleType } from "../../types.js";
 import { checkedBorder } from "./border.js";
@@ -10,7 +10,7 @@ import { checkedChannels, checkedSide } from "./raster.js";
 
 const sampleNames = ["u8", "u16", "f32"] as const satisfies SampleType[];
 const extents = ["same", "full", "valid"] as const satisfies Extent[];
-const methodNames: (Method | "auto")[] = ["auto", ...methods.map(({ name }) => name)];
+const methodChoices: (Method | "auto")[] = ["auto", ...methodNames];
 const alphas = ["straight", "premultiplied", "keep", "none"] as const satisfies Alpha[];
 const lights = ["encoded", "linear"] as const satisfies Light[];
 const optionNames = ["border", "extent", "method", "tolerance", "region", "alpha", "light", "output"];
@@ -140,7 +140,7 @@ export function checkedRequest(where: string, kernelGiven: unknown, shape: Image
     ...border,
     extent,
     region: checkedRegion(where, options["region"], wholeOutput(where, extent, shape, kernel, reversedNot)),
-    method: wordOr(where, "method", options["method"], methodNames, "auto"),
+    method: wordOr(where, "method", options["method"], methodChoices, "auto"),
     tolerance:
       tolerance === undefined
         ? output.sample === "u8"

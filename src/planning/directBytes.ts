@@ -1,0 +1,106 @@
+import * as field from "../generated/record.js";
+import { rowStride } from "./arrangement.js";
+import { biasOf, bytesThroughout, fixedKernel, offsetError, pairsOfRows, tapsByPairs, type FixedTaps } from "./fixedPoint.js";
+import { frameCounts, frameOf, programOf } from "./frame.js";
+import type { MethodPlan } from "./method.js";
+import type { Problem } from "./problem.js";
+import { pairBlocks, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
+
+/** A ring of pairs of rows: a dot product of two taps where the float form has one multiply–add. */
+export interface PairFrame extends SweepFrame {
+  taps: number;
+  bytes: number;
+  byteStride: number;
+}
+
+function frame(problem: Problem): PairFrame {
+  const { horizontal, vertical, channels } = problem;
+  const ringRows = pairsOfRows(vertical.taps);
+  const base = frameOf(problem, sweepStagedRows(problem, horizontal.taps * ringRows * horizontal.count * channels));
+  const { arrangement } = base;
+  const byteStride = rowStride(horizontal.extended * channels + 16);
+  return {
+    ...base,
+    ringRows,
+    ringStride: base.extendedStride,
+    byteStride,
+    taps: arrangement.take(horizontal.taps * ringRows * 8),
+    ring: arrangement.take(ringRows * base.extendedStride),
+    table: arrangement.take(2 * ringRows * 4),
+    bytes: arrangement.take(2 * byteStride),
+    results: arrangement.take(base.resultStride),
+  };
+}
+
+function fixed(problem: Problem): FixedTaps {
+  return fixedKernel(problem.request) as FixedTaps;
+}
+
+/** Counts of entering and leaving bytes that stay bytes. */
+export function byteCounts(problem: Problem, layout: PairFrame): ReturnType<typeof frameCounts> {
+  const { horizontal, vertical, channels, request } = problem;
+  const results = horizontal.count * vertical.count;
+  return {
+    ...frameCounts(problem, vertical.extended, sweepCalls(problem, layout)),
+    enter_u8: 0,
+    leave_u8: 0,
+    alphaPixel: 0,
+    pairSample: vertical.extended * horizontal.extended * channels,
+    byteResult: results * channels,
+    keptPixel: request.alpha === "keep" ? results : 0,
+  };
+}
+
+/** In output units, gain and offset included. */
+function error(problem: Problem): number {
+  const { offset } = problem.request.output;
+  const { error: ofTaps, shift } = fixed(problem);
+  return 255 * ofTaps + offsetError(offset, shift);
+}
+
+export const directBytes: MethodPlan = {
+  name: "direct",
+  variant: "bytes",
+
+  applicable(problem) {
+    if (!bytesThroughout(problem)) return "Samples and results are not bytes throughout.";
+    const taps = fixedKernel(problem.request);
+    return typeof taps === "string" ? taps : true;
+  },
+
+  work(problem) {
+    const { horizontal, vertical } = problem;
+    const layout = frame(problem);
+    const { blocks, floats } = pairBlocks(problem, layout);
+    return {
+      setup: { setup: 1, setupTap: horizontal.taps * vertical.taps, setupByte: layout.arrangement.byteLength },
+      run: { ...byteCounts(problem, layout), pairTap: floats * horizontal.taps * layout.ringRows, pairLoop: blocks * layout.ringRows },
+      bytes: layout.arrangement.byteLength,
+    };
+  },
+
+  errorBound: error,
+
+  arithmetic: (problem) => `fixed point: 8-bit samples × 16-bit taps ÷ 2^${fixed(problem).shift}, exact 32-bit sums`,
+
+  program(problem) {
+    const { horizontal, vertical, request, reversed } = problem;
+    const layout = frame(problem);
+    const { integers, shift } = fixed(problem);
+    const inOrder = reversed ? integers.slice().reverse() : integers;
+    return programOf(problem, layout, {
+      fields: (job) =>
+        sweepFields(job, layout)
+          .pointer(field.TAPS, layout.taps)
+          .pointer(field.ENTERED, layout.bytes)
+          .integer(field.ENTERED_STRIDE, layout.byteStride)
+          .integer(field.SUM_BIAS, biasOf(request.output.offset, shift))
+          .integer(field.SUM_SHIFT, shift),
+      tables: [{ offset: layout.taps, data: tapsByPairs(inOrder, vertical.taps, horizontal.taps) }, ringTables(layout, 1)],
+      setup: [],
+      steps: sweepSteps(problem, layout, "sweepDirectBytes"),
+      error: { relative: 0, absolute: error(problem) },
+      round: false,
+    });
+  },
+};
