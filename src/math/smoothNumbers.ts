@@ -22,6 +22,8 @@ export function radicesOf(points: number): Radix[] | undefined {
 /** All multiples of four up to `most` of the form 2^a·3^b·5^c, ascending. */
 export function smoothMultiplesOfFour(most: number): number[] {
   const numbers: number[] = [];
-  for (let n = 4; n <= most; n += 4) if (radicesOf(n)) numbers.push(n);
-  return numbers;
+  for (let fives = 4; fives <= most; fives *= 5) {
+    for (let threes = fives; threes <= most; threes *= 3) for (let n = threes; n <= most; n *= 2) numbers.push(n);
+  }
+  return numbers.sort((a, b) => a - b);
 }

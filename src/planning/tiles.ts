@@ -48,12 +48,35 @@ const bytesToDouble = 200_000_000;
 /** Points of the longest transforms that are considered. */
 const mostPoints = 4096;
 
-const sizes = smoothMultiplesOfFour(mostPoints).map((points) => ({
-  points,
-  weight: radicesOf(points)!.reduce((sum, radix) => sum + passWeight[radix], 0),
-}));
+interface Size {
+  points: number;
+  weight: number;
+}
 
-type Size = (typeof sizes)[number];
+let known: readonly Size[] | undefined;
+
+/** Transforms to choose from, found when the first FFT is considered. */
+function sizes(): readonly Size[] {
+  return (known ??= smoothMultiplesOfFour(mostPoints).map((points) => ({
+    points,
+    weight: radicesOf(points)!.reduce((sum, radix) => sum + passWeight[radix], 0),
+  })));
+}
+
+/** Lengths of one axis that are worth a look: long enough for the kernel, and the first that holds the whole image is the last. */
+function lengths(least: number, whole: number): readonly Size[] {
+  const enough = sizes().filter(({ points }) => points >= least);
+  const last = enough.findIndex(({ points }) => points >= whole);
+  return last < 0 ? enough : enough.slice(0, last + 1);
+}
+
+const rowLengths = ({ vertical }: Problem): readonly Size[] => lengths(vertical.taps, vertical.extended + 3);
+const columnLengths = ({ horizontal }: Problem): readonly Size[] => lengths(horizontal.taps + 3, horizontal.extended + 3);
+
+/** How much slower passes are where planes and spectrum leave the cache. */
+function spillingOf({ pairs, planeBytes, spectrumBytes }: Pick<Tiling, "pairs" | "planeBytes" | "spectrumBytes">): number {
+  return 1 + Math.max(0, 2 * pairs * planeBytes + spectrumBytes - cachedBytes) / bytesToDouble;
+}
 
 function tilingOf(problem: Problem, rows: Size, columns: Size): Tiling {
   const { horizontal, vertical, channels } = problem;
@@ -67,7 +90,7 @@ function tilingOf(problem: Problem, rows: Size, columns: Size): Tiling {
   const planeStride = rowStride(Math.max(horizontal.extended + 3, columns.points) * 4);
   const planeBytes = rows.points * planeStride;
   const spectrumBytes = rows.points * columns.points * 8;
-  const spilling = 1 + Math.max(0, 2 * pairs * planeBytes + spectrumBytes - cachedBytes) / bytesToDouble;
+  const spilling = spillingOf({ pairs, planeBytes, spectrumBytes });
   const rowSlowness = spilling * (columns.points > cachedPoints ? uncachedRow : 1);
   const touched = 16 * (Math.ceil(horizontal.extended / 16) + Math.ceil(horizontal.count / 16));
   return {
@@ -93,18 +116,38 @@ const pointsPerGroup = 500;
 
 const costOf = (tiling: Tiling): number => tiling.columnPasses + tiling.rowPasses + pointsPerGroup * tiling.groups * tiling.stripsPerGroup;
 
-/** Every tiling worth a look: transforms long enough for the kernel and no longer than the image needs. */
-function* tilings(problem: Problem): Generator<Tiling> {
-  const { horizontal, vertical } = problem;
-  for (const rows of sizes) {
-    if (rows.points < vertical.taps) continue;
-    for (const columns of sizes) {
-      if (columns.points < horizontal.taps + 3) continue;
-      yield tilingOf(problem, rows, columns);
-      if (columns.points >= horizontal.extended + 3) break;
-    }
-    if (rows.points >= vertical.extended + 3) break;
-  }
+/** Every tiling worth a look. */
+function* tilings(problem: Problem, rowChoices = rowLengths(problem)): Generator<Tiling> {
+  const columnChoices = columnLengths(problem);
+  for (const rows of rowChoices) for (const columns of columnChoices) yield tilingOf(problem, rows, columns);
+}
+
+/**
+ * The cheapest tiling without trying all pairs: with the rows' length given no cost is below that of passes in the cache with the columns
+ * that suit the image best, which do not depend on the rows. Rows whose bound is above the cost of the most promising ones are left out.
+ */
+function cheapestTiling(problem: Problem): Tiling | undefined {
+  const rowChoices = rowLengths(problem);
+  const [smallest] = columnLengths(problem);
+  if (!smallest || rowChoices.length === 0) return undefined;
+  const first = rowChoices[0]!;
+  const inCache = (tiling: Tiling): number => tiling.rowPasses / spillingOf(tiling) / (tiling.groups * tiling.pairs * tiling.rows);
+  let rowPoint = Infinity;
+  for (const tiling of tilings(problem, [first])) rowPoint = Math.min(rowPoint, inCache(tiling));
+  const bounds = rowChoices.map((rows) => {
+    const { columnPasses, groups, pairs, stripsPerGroup, ...sizeOf } = tilingOf(problem, rows, smallest);
+    const passes = columnPasses / spillingOf({ pairs, ...sizeOf }) + groups * pairs * rows.points * rowPoint;
+    return passes + pointsPerGroup * groups * stripsPerGroup;
+  });
+  const promising = rowChoices[bounds.indexOf(Math.min(...bounds))]!;
+  const limit = costOf(leastOf(tilings(problem, [promising]), costOf)!) * (1 + 1e-9);
+  return leastOf(
+    tilings(
+      problem,
+      rowChoices.filter((_, k) => bounds[k]! <= limit),
+    ),
+    costOf,
+  );
 }
 
 /**
@@ -114,20 +157,14 @@ function* tilings(problem: Problem): Generator<Tiling> {
  * It depends on the problem and on what fits, never on a profile, so that a forced FFT gives the same bytes everywhere.
  */
 export function planTiles(problem: Problem, fits: (tiling: Tiling) => boolean): Tiling | undefined {
-  const cheapest = leastOf(problem, costOf, () => true);
+  const cheapest = cheapestTiling(problem);
   if (!cheapest || fits(cheapest)) return cheapest;
-  return (
-    leastOf(problem, costOf, fits) ??
-    leastOf(
-      problem,
-      (tiling) => 2 * tiling.pairs * tiling.planeBytes + tiling.spectrumBytes,
-      () => true,
-    )
-  );
+  const memory = (tiling: Tiling): number => 2 * tiling.pairs * tiling.planeBytes + tiling.spectrumBytes;
+  return leastOf(tilings(problem), costOf, fits) ?? leastOf(tilings(problem), memory);
 }
 
-function leastOf(problem: Problem, measure: (tiling: Tiling) => number, allowed: (tiling: Tiling) => boolean): Tiling | undefined {
+function leastOf(all: Iterable<Tiling>, measure: (tiling: Tiling) => number, allowed: (tiling: Tiling) => boolean = () => true): Tiling | undefined {
   let best: Tiling | undefined;
-  for (const tiling of tilings(problem)) if ((!best || measure(tiling) < measure(best)) && allowed(tiling)) best = tiling;
+  for (const tiling of all) if ((!best || measure(tiling) < measure(best)) && allowed(tiling)) best = tiling;
   return best;
 }
