@@ -3,6 +3,8 @@ export interface Contender {
   readonly name: string;
   /** Filters one of the case's planes and resolves with milliseconds of processor time. */
   run(plane: number): Promise<number> | number;
+  /** Largest difference of its result from the definition, where it can be told; throws where it is more than allowed. */
+  verify?(): Promise<number> | number;
 }
 
 /** Times of each contender, in the order in which the contenders were given. */
@@ -31,4 +33,18 @@ export async function inTurns(contenders: readonly Contender[], planes: number, 
     for (const one of order) times[one]!.push(await contenders[one]!.run(turn % planes));
   }
   return times;
+}
+
+/** The fastest of many by the better of two runs after a first one: those worth a longer look. */
+export async function fastest(contenders: readonly Contender[], planes: number, count: number): Promise<Contender[]> {
+  if (contenders.length <= count) return contenders.slice();
+  const looks: { contender: Contender; milliseconds: number }[] = [];
+  for (const contender of contenders) {
+    await contender.run(0);
+    looks.push({ contender, milliseconds: Math.min(await contender.run(1 % planes), await contender.run(2 % planes)) });
+  }
+  return looks
+    .toSorted((a, b) => a.milliseconds - b.milliseconds)
+    .slice(0, count)
+    .map(({ contender }) => contender);
 }

@@ -2,8 +2,9 @@ import { spawnSync } from "node:child_process";
 import { fileURLToPath } from "node:url";
 import type { Kernel } from "../../src/index.js";
 import { firstLineOf } from "../host.js";
+import { factorsOf } from "./factors.js";
 import { YardstickProcess } from "./process.js";
-import { freshPath, writeFloats } from "./workFolder.js";
+import { freshPath, writeSamples } from "./workFolder.js";
 
 const compiler = "gcc";
 export const flags = ["-O3", "-msse4.2"];
@@ -23,32 +24,18 @@ function compile(folder: string, loops: PlainLoops, columns: number, rows: numbe
   return binary;
 }
 
-/** The middle row and column of an outer product whose factors add up to 1. */
-function factors(kernel: Kernel): { row: number[]; column: number[] } {
-  const { taps, width, height } = kernel;
-  const row = Array.from({ length: width }, (_, i) => sumOf(height, (j) => taps[j * width + i]!));
-  const column = Array.from({ length: height }, (_, j) => sumOf(width, (i) => taps[j * width + i]!));
-  return { row, column };
-}
-
-function sumOf(count: number, term: (index: number) => number): number {
-  let sum = 0;
-  for (let index = 0; index < count; index += 1) sum += term(index);
-  return sum;
-}
-
 /** Starts plain loops over one-channel planes: replicate border, extent `same`. A separable kernel must be of unit gain. */
 export function startPlainC(folder: string, loops: PlainLoops, kernel: Kernel, planes: readonly Float32Array[], width: number): YardstickProcess {
   const { width: m, height: n } = kernel;
-  const { row, column } = factors(kernel);
+  const { row, column } = factorsOf(kernel);
   // The loops lay taps on the image as they stand: reversed for a convolution.
   const taps = loops === "direct" ? kernel.taps.toReversed() : [...row.toReversed(), ...column.toReversed()];
   const parameters = [
     String(width),
     String(planes[0]!.length / width),
     String(planes.length),
-    writeFloats(folder, "planes.f32", planes),
-    writeFloats(folder, `${loops}-taps.f32`, [Float32Array.from(taps)]),
+    writeSamples(folder, "planes.f32", planes),
+    writeSamples(folder, `${loops}-taps.f32`, [Float32Array.from(taps)]),
   ];
   return new YardstickProcess(compile(folder, loops, m, n), parameters, freshPath(folder, `${loops}-result.f32`));
 }

@@ -2,7 +2,7 @@ import { fileURLToPath } from "node:url";
 import type { Kernel } from "../../src/index.js";
 import { firstLineOf } from "../host.js";
 import { YardstickProcess } from "./process.js";
-import { freshPath, writeFloats } from "./workFolder.js";
+import { freshPath, writeSamples } from "./workFolder.js";
 
 /** The first of them that has SciPy is used: a system's own Python may have it where another one on the path does not. */
 const interpreters = ["python3", "/usr/bin/python3"];
@@ -29,10 +29,10 @@ export function startScipy(folder: string, kernel: Kernel, planes: readonly Floa
     String(width),
     String(planes[0]!.length / width),
     String(planes.length),
-    writeFloats(folder, "planes.f32", planes),
+    writeSamples(folder, "planes.f32", planes),
     String(m),
     String(n),
-    writeFloats(folder, "scipy-taps.f32", [Float32Array.from(kernel.taps)]),
+    writeSamples(folder, "scipy-taps.f32", [Float32Array.from(kernel.taps)]),
   ];
   return new YardstickProcess(findInterpreter() ?? "python3", parameters, freshPath(folder, "scipy-result.f32"), oneThread);
 }

@@ -1,6 +1,7 @@
 import { mkdtempSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
+import type { Samples } from "../../src/index.js";
 
 /** A folder for what yardsticks read and write, removed when this process ends. */
 export function makeWorkFolder(): string {
@@ -17,7 +18,8 @@ export function freshPath(folder: string, name: string): string {
   return join(folder, `${fileCount}-${name}`);
 }
 
-export function writeFloats(folder: string, name: string, values: readonly Float32Array[]): string {
+/** Writes arrays one after the other, byte by byte. */
+export function writeSamples(folder: string, name: string, values: readonly Samples[]): string {
   const path = freshPath(folder, name);
   writeFileSync(path, Buffer.concat(values.map(({ buffer, byteOffset, byteLength }) => Buffer.from(buffer, byteOffset, byteLength))));
   return path;
