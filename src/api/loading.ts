@@ -3,6 +3,7 @@ import { code as simdCode } from "../generated/simd.js";
 import { EngineMemory } from "../runtime/memory.js";
 import { link, type Routines } from "../runtime/routines.js";
 import type { Build } from "../types.js";
+import { bytesOfBase64 } from "./base64.js";
 import { failedAnswer } from "./selfTest.js";
 import type { CheckedEngineOptions } from "./validate/engineOptions.js";
 
@@ -11,10 +12,6 @@ export interface Core {
   build: Build;
   memory: EngineMemory;
   routines: Routines;
-}
-
-function decoded(base64: string): Uint8Array<ArrayBuffer> {
-  return Uint8Array.from(atob(base64), (character) => character.charCodeAt(0));
 }
 
 /** The default page loads the SIMD binary with the package; the scalar one comes only when it is needed. */
@@ -31,7 +28,7 @@ function hostError(code: "webassembly-missing" | "webassembly-blocked", message:
 }
 
 async function compile(build: Build): Promise<WebAssembly.Module> {
-  const bytes = decoded(await codeOf(build));
+  const bytes = bytesOfBase64(await codeOf(build));
   try {
     return await WebAssembly.compile(bytes);
   } catch (cause) {
