@@ -25,6 +25,71 @@ export function structureless(width: number, height = width): Kernel {
 /** A Gaussian of that many taps on each axis. */
 const bell = (taps: number): Kernel => gaussian({ sigma: taps / 6, radius: (taps - 1) / 2 });
 
+/** Layouts that are measured at 1080p, by channels of floats. */
+const floats = (channels: 1 | 4): Case["layout"] => ({ ...plane, channels });
+const channelsName = (channels: 1 | 4): string => `${channels} channel${channels === 1 ? "" : "s"}`;
+
+/** Direct, of floats, without alpha: what the C yardsticks do too. */
+export const directFloats = (taps: number, channels: 1 | 4): Case => ({
+  name: `direct f32 ${taps}×${taps}, ${channelsName(channels)}`,
+  layout: floats(channels),
+  kernel: structureless(taps),
+  options: { method: "direct", alpha: "none" },
+});
+
+export const separableFloats = (taps: number, channels: 1 | 4): Case => ({
+  name: `separable f32 ${taps} taps, ${channelsName(channels)}`,
+  layout: floats(channels),
+  kernel: bell(taps),
+  options: { method: "separable", alpha: "none" },
+});
+
+/** The border is zero, as SciPy's transforms have it. */
+export const fftFloats = (taps: number): Case => ({
+  name: `FFT f32 ${taps}×${taps}`,
+  layout: plane,
+  kernel: structureless(taps),
+  options: { method: "fft", border: "zero" },
+});
+
+export const fftBytes = (taps: number): Case => ({
+  name: `FFT RGBA bytes ${taps}×${taps}`,
+  layout: photograph,
+  kernel: structureless(taps),
+  options: { method: "fft", alpha: "none", border: "zero" },
+});
+
+export const directBytes = (taps: number): Case => ({
+  name: `direct RGBA bytes ${taps}×${taps}`,
+  layout: photograph,
+  kernel: structureless(taps),
+  options: { method: "direct", alpha: "none" },
+});
+
+export const separableBytes = (taps: number): Case => ({
+  name: `separable RGBA bytes ${taps} taps`,
+  layout: photograph,
+  kernel: bell(taps),
+  options: { method: "separable", alpha: "none" },
+});
+
+export const boxBytes = (taps: number): Case => ({
+  name: `running sums RGBA bytes box ${taps}`,
+  layout: photograph,
+  kernel: box(taps),
+  options: { method: "running-sum", alpha: "none" },
+});
+
+/** The same work on an image of another shape. */
+export const resized = (one: Case, width: number, height: number): Case => ({
+  ...one,
+  name: `${one.name}, ${width}×${height}`,
+  layout: { ...one.layout, width, height },
+});
+
+/** The same work on floats: what the working floats of a byte path cost without its conversions of arithmetic. */
+export const inFloats = (one: Case): Case => ({ ...one, name: `${one.name}, in floats`, options: { ...one.options, tolerance: 0 } });
+
 const listed = {
   direct3: { name: "direct f32 3×3", layout: plane, kernel: structureless(3), options: { method: "direct" } },
   direct9: { name: "direct f32 9×9", layout: plane, kernel: structureless(9), options: { method: "direct" } },

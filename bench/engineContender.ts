@@ -35,6 +35,15 @@ export class EngineContender implements Contender {
   /** Largest difference from the definition; throws where it is above the filter's own bound. */
   verify(): number {
     this.filter.run(this.planes[0]!, this.target);
-    return verify(this.case, this.planes[0]!, this.target.data, this.filter.explanation.errorBound);
+    return this.verified(this.target.data);
+  }
+
+  verified(result: ArrayLike<number>): number {
+    return verify(this.case, this.planes[0]!, result, this.filter.explanation.errorBound);
+  }
+
+  /** Other ways to run the same filter. */
+  asides(): Contender[] {
+    return [];
   }
 }

@@ -1,4 +1,4 @@
-import { mkdirSync, writeFileSync } from "node:fs";
+import { existsSync, mkdirSync, readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import type { Host } from "./host.js";
@@ -25,10 +25,30 @@ function laidOut(value: unknown, indent = ""): string {
   return `${open}\n${deeper}${parts.join(`,\n${deeper}`)}\n${indent}${close}`;
 }
 
+/** The file of a kind of result on this processor and runtime. */
+const nameOf = (what: string, { processor, versions }: Host): string => `${what}-${plain(processor)}-${runtimeOf(versions)}.json`;
+
+/** node-20.20.2, chromium-156.0 … */
+const runtimeOf = (versions: Host["versions"]): string => {
+  const [runtime, version] = Object.entries(versions).find(([name]) => name === "chromium") ?? ["node", versions["node"] ?? ""];
+  return `${runtime}-${plain(version)}`;
+};
+
 /** Writes bench/results/<what>-<processor>-<runtime>.json and says where. */
 export function writeResult(what: string, host: Host, content: Record<string, unknown>): void {
   mkdirSync(folder, { recursive: true });
-  const name = `${what}-${plain(host.processor)}-node-${plain(host.versions["node"] ?? "")}.json`;
+  const name = nameOf(what, host);
   writeFileSync(join(folder, name), `${laidOut({ what, host, ...content })}\n`);
   console.log(`\nwritten: bench/results/${name}`);
+}
+
+/**
+ * The same where parts are measured in runs of their own: parts that were not measured now stay as they are in the file.
+ *
+ * @param under the property that holds the parts by name; each says itself when and with what it was measured
+ */
+export function mergeResult(what: string, host: Host, under: string, parts: Record<string, unknown>): void {
+  const path = join(folder, nameOf(what, host));
+  const known = existsSync(path) ? (JSON.parse(readFileSync(path, "utf8")) as Record<string, unknown>)[under] : {};
+  writeResult(what, host, { [under]: { ...(known as Record<string, unknown>), ...parts } });
 }

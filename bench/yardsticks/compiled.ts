@@ -42,6 +42,8 @@ export function compiled(source: string, flags: readonly string[], constants: Re
 
 /** Whether a program that includes this header and links this library compiles. */
 export function hasLibrary(header: string, library: string): boolean {
-  const { status } = spawnSync(compiler, ["-x", "c", "-", "-o", "/dev/null", `-l${library}`], { input: `#include <${header}>\nint main(void) { return 0; }\n` });
+  const { status } = spawnSync(compiler, ["-x", "c", "-", "-o", "/dev/null", `-l${library}`], {
+    input: `#include <${header}>\nint main(void) { return 0; }\n`,
+  });
   return status === 0;
 }
