@@ -20,7 +20,7 @@ export function correlateRow<V>(out: usize, row: usize, taps: usize, m: i32, ste
   let x: usize = 0;
   const half: usize = 4 * laneBytes<V>();
   const lag = half / step;
-  if (lag * step == half && 2 * lag <= <usize>m) for (; x + 2 * half <= bytes; x += 2 * half) twoBlocks<V>(out + x, row + x, taps, m, lag, step);
+  if (lag * step == half && lag << 1 <= <usize>m) for (; x + 2 * half <= bytes; x += 2 * half) twoBlocks<V>(out + x, row + x, taps, m, lag, step);
   for (; x + block <= bytes; x += block) rowBlock<V>(out + x, row + x, taps, m, step);
   if (x == bytes) return;
   if (bytes >= block) {
