@@ -6,7 +6,8 @@ import { leaveRow } from "./leave";
 import { assertSweep, assertTerms } from "./promises";
 import {
   ALPHA, ANCHOR_ROW, CHANNELS, COLUMN_TAPS, ENTERED, KEEP_ROW, KEEP_STAGING, KERNEL_COLUMNS, KERNEL_ROWS,
-  OUTPUT, OUTPUT_STRIDE, RESULT, RESULT_FLOATS, RESULT_STRIDE, RING_ROWS, ROW_TABLE, STAGING, STAGING_STRIDE, TAPS, TERMS,
+  OUTPUT, OUTPUT_STRIDE, RESULT, RESULT_FLOATS, RESULT_ROWS, RESULT_ROW_STRIDE, RESULT_STRIDE, RING_ROWS, ROW_MAP, ROW_TABLE, SOURCE_ROWS,
+  SOURCE_ROW_STRIDE, STAGING, STAGING_STRIDE, TAPS, TERMS,
 } from "./record";
 
 /*
@@ -29,11 +30,20 @@ export function firstResultRow(from: i32): i32 {
   return max<i32>(from, 0);
 }
 
-/** Staged samples of an extended row. */
+/** The samples of extended row `row`: where they lie in the source, or staged as row `place`. Anywhere where the row map says "outside". */
+// @ts-ignore: decorator
+@inline
+function sourceRow(job: usize, row: i32, staging: usize, place: i32): usize {
+  const rows = load<usize>(job, SOURCE_ROWS);
+  if (rows) return rows + <usize>load<i32>(load<usize>(job, ROW_MAP) + (<usize>row << 2)) * load<usize>(job, SOURCE_ROW_STRIDE);
+  return staging + <usize>place * load<usize>(job, STAGING_STRIDE);
+}
+
+/** Samples of an extended row. */
 // @ts-ignore: decorator
 @inline
 export function stagedRow(job: usize, row: i32, firstStaged: i32): usize {
-  return load<usize>(job, STAGING) + <usize>(row - firstStaged) * load<usize>(job, STAGING_STRIDE);
+  return sourceRow(job, row, load<usize>(job, STAGING), row - firstStaged);
 }
 
 /** Pointer table of the ring of one term, turned so that `row` comes first. */
@@ -44,17 +54,19 @@ function ringFrom(job: usize, term: i32, row: i32): usize {
   return load<usize>(job, ROW_TABLE) + (<usize>(term * 2 * ringRows + (row % ringRows)) << 2);
 }
 
-/** Staged samples of the extended row that alpha is kept from. */
+/** Samples of the extended row that a result row's alpha is kept from. */
 // @ts-ignore: decorator
 @inline
 export function keptRow(job: usize, row: i32, from: i32): usize {
-  return load<usize>(job, KEEP_STAGING) + <usize>(row - firstResultRow(from)) * load<usize>(job, STAGING_STRIDE);
+  return sourceRow(job, row + load<i32>(job, ANCHOR_ROW), load<usize>(job, KEEP_STAGING), row - firstResultRow(from));
 }
 
-/** Where a result row goes. */
+/** Where a result row goes. No byte past its last sample may be written. */
 // @ts-ignore: decorator
 @inline
 export function outputRow(job: usize, row: i32, from: i32): usize {
+  const rows = load<usize>(job, RESULT_ROWS);
+  if (rows) return rows + <usize>row * load<usize>(job, RESULT_ROW_STRIDE);
   return load<usize>(job, OUTPUT) + <usize>(row - firstResultRow(from)) * load<usize>(job, OUTPUT_STRIDE);
 }
 

@@ -24,6 +24,8 @@ export type {
   Region,
   ResultArray,
   ResultRaster,
+  RunOptions,
   Samples,
   SampleType,
+  ViewArray,
 } from "./types.js";

@@ -58,14 +58,20 @@ type OwnArray<S extends Samples> = S extends Uint8ClampedArray
         : never;
 
 /** The shape of the images that a prepared filter takes. */
-export interface Layout {
+export interface Layout<S extends SampleType = SampleType> {
   width: number;
   height: number;
   /** @defaultValue 1 */
   channels?: Channels;
   /** @defaultValue `"u8"` */
-  sample?: SampleType;
+  sample?: S;
 }
+
+/**
+ * The array of a view of engine memory: bytes in the array that `new ImageData(…)` takes. In an engine with threads that share memory it
+ * lies on a `SharedArrayBuffer`, which browsers refuse in `ImageData`: use a target there.
+ */
+export type ViewArray<S extends SampleType> = S extends "u8" ? Uint8ClampedArray<ArrayBuffer> : S extends "u16" ? Uint16Array<ArrayBuffer> : Float32Array<ArrayBuffer>;
 
 /**
  * What the image is outside itself, on one axis.
@@ -201,19 +207,58 @@ export interface EngineOptions {
   module?: WebAssembly.Module;
 }
 
-/** A prepared filter: the plan, the tables and the scratch for one kernel and one layout. */
-export interface Filter<T extends SampleType = never> {
+/** Options of `runAsync`. */
+export interface RunOptions<R extends Raster = Raster> {
+  /** Receives the result; as in `run`. @defaultValue a new raster, made when the job begins; `result` where there is no image either */
+  target?: R;
+  /** Ends the job when it is aborted: the promise is rejected with its reason. @defaultValue none */
+  signal?: AbortSignal;
+  /**
+   * Called after each slice with the part of the work that is done, never less than before, and with 1 at the end. What it throws ends the
+   * job. @defaultValue none
+   */
+  onProgress?: (progress: number) => void;
+}
+
+/** A prepared filter: the plan, the tables and the scratch for one kernel and one layout. T: the sample type that `output` asks for; S: the layout's. */
+export interface Filter<T extends SampleType = never, S extends SampleType = SampleType> {
   /**
    * Filters one image of the prepared layout.
    *
-   * @param image the layout's width, height, channels and sample type; any stride
-   * @param target receives the result; its size, channels and sample type must be the result's. A new raster where absent
-   * @throws ConvolutionError `disposed`, `invalid-raster`, `layout-mismatch`, `invalid-target`, `overlapping-target`, …
+   * @param image the layout's width, height, channels and sample type; any stride. `source` where absent
+   * @param target receives the result; its size, channels and sample type must be the result's. A new raster where absent, or `result` where
+   * there is no image either
+   * @throws ConvolutionError `disposed`, `filter-busy`, `invalid-raster`, `layout-mismatch`, `invalid-target`, `overlapping-target`, `array-in-use`, …
    */
-  run<S extends Samples>(image: Raster<S>): ResultRaster<ResultArray<S, T>>;
-  run<R extends Raster>(image: Raster, target: R): R;
+  run(): ResultRaster<ViewArray<[T] extends [never] ? S : T>>;
+  run<A extends Samples>(image: Raster<A>): ResultRaster<ResultArray<A, T>>;
+  run<R extends Raster>(image: Raster | undefined, target: R): R;
+  /**
+   * The same in slices of at most 8 milliseconds, between which the host handles events, timers and drawing. The filter does one job at a time: later
+   * ones wait in order. The image is read, and the target written, while the job runs: leave both alone until it is over. After a failure the target holds undefined samples, and
+   * the next run is right.
+   *
+   * Rejects with the signal's reason, with what `onProgress` throws, or with a ConvolutionError: those of `run`, `samples-changed` (an array was detached or made
+   * shorter during the run), `disposed` (the filter or its engine was, while the job waited or ran).
+   *
+   * @example
+   * const blurred = await filter.runAsync(image, { onProgress: (done) => console.log(`${Math.round(100 * done)} %`) });
+   */
+  runAsync(image?: undefined, options?: RunOptions<never>): Promise<ResultRaster<ViewArray<[T] extends [never] ? S : T>>>;
+  runAsync<A extends Samples>(image: Raster<A>, options?: RunOptions<never>): Promise<ResultRaster<ResultArray<A, T>>>;
+  runAsync<R extends Raster>(image: Raster | undefined, options: RunOptions<R> & { target: R }): Promise<R>;
+  /**
+   * The image that `run()` reads: a view of engine memory in tight rows, reserved at first use. Fill it, call `run()`, read `result`: nothing is copied.
+   * Take both anew each time, as memory that grows (at `prepare`, or when a view is reserved) leaves old arrays behind. Any filter of the engine reads it in place.
+   * It ends with the filter: do not touch it after `dispose`.
+   */
+  readonly source: ResultRaster<ViewArray<S>>;
+  /** The image that `run()` writes; as `source`. */
+  readonly result: ResultRaster<ViewArray<[T] extends [never] ? S : T>>;
+  /** Bytes of engine memory that `source` and `result` take, on top of `explanation.bytes`. */
+  readonly viewBytes: number;
   readonly explanation: Explanation;
-  /** Gives the filter's memory back. Safe to call twice. */
+  /** Gives the filter's memory back, and rejects its unfinished jobs. Safe to call twice. */
   dispose(): void;
 }
 
@@ -223,7 +268,7 @@ export interface Engine {
   convolve<S extends Samples, T extends SampleType = never>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions<T>): ResultRaster<ResultArray<S, T>>;
   /** Correlates (taps as written) and returns a new raster. */
   correlate<S extends Samples, T extends SampleType = never>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions<T>): ResultRaster<ResultArray<S, T>>;
-  prepare<T extends SampleType = never>(kernel: Kernel, layout: Layout, options?: PrepareOptions<T>): Filter<T>;
+  prepare<T extends SampleType = never, S extends SampleType = "u8">(kernel: Kernel, layout: Layout<S>, options?: PrepareOptions<T>): Filter<T, S>;
   /** Says what `prepare` would choose and why; allocates nothing in the engine. */
   explain(kernel: Kernel, layout: Layout, options?: PrepareOptions): Explanation;
   dispose(): void;

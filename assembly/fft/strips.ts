@@ -3,10 +3,10 @@ import { anyNonFinite, deinterleave4, loadLanes } from "../lanes";
 import { assertEnterStrip, assertLeaveStrip } from "../promises";
 import {
   CHANNELS, ENTERED, EXTENDED_COLUMNS, EXTENDED_ROWS, KERNEL_COLUMNS, KERNEL_ROWS, MARKS, MARK_COUNTS, MARK_ROW, MARK_STRIDE, OUTPUT_COLUMNS,
-  PLANES, PLANE_BYTES, PLANE_STRIDE, RESULT, STAGING, STAGING_STRIDE, STRIP_ROWS, TILE_ROWS,
+  PLANES, PLANE_BYTES, PLANE_STRIDE, RESULT, STRIP_ROWS, TILE_ROWS,
 } from "../record";
 import { scaleRow } from "../rows";
-import { leaveStaged } from "../sweep";
+import { leaveStaged, stagedRow } from "../sweep";
 
 /*
  * A strip is TILE_ROWS extended rows, of which STRIP_ROWS result rows come. With an even number of channels a complex plane holds two
@@ -107,7 +107,7 @@ export function enterStrip<V>(job: usize, from: i32, to: i32, strip: i32): void 
       clearRow(job, row, half);
       continue;
     }
-    enterRow<V>(job, entered, top + row, load<usize>(job, STAGING) + <usize>(row - from) * load<usize>(job, STAGING_STRIDE));
+    enterRow<V>(job, entered, top + row, stagedRow(job, top + row, top + from));
     if (load<usize>(job, MARKS)) tameFloats<V>(job, entered, load<i32>(job, EXTENDED_COLUMNS) * load<i32>(job, CHANNELS), row, half);
     spread<V>(job, entered, row, half);
   }

@@ -20,6 +20,10 @@ import type {
   Samples,
   SampleType,
 } from "../types.js";
+import { hostPacing, type Pacing } from "../runtime/pacing.js";
+import { Turns } from "../runtime/turns.js";
+import { ViewMemory } from "../runtime/viewMemory.js";
+import type { EngineParts } from "./engineParts.js";
 import { PreparedFilter } from "./filter.js";
 import { loadCore, type Core } from "./loading.js";
 import { checkedEngineOptions, profileForBuild } from "./validate/engineOptions.js";
@@ -28,12 +32,14 @@ import { checkedLayout, checkedRequest } from "./validate/request.js";
 
 class ConvolutionEngine implements Engine {
   readonly #core: Core;
+  readonly #parts: EngineParts;
   readonly #profile: HardwareProfile;
   readonly #filters = new Set<{ dispose(): void }>();
   #disposed = false;
 
-  constructor(core: Core, profile: HardwareProfile) {
+  constructor(core: Core, profile: HardwareProfile, pacing: Pacing) {
     this.#core = core;
+    this.#parts = { core, turns: new Turns(pacing), views: new ViewMemory(core.memory) };
     this.#profile = profile;
   }
 
@@ -49,7 +55,7 @@ class ConvolutionEngine implements Engine {
     return this.#once("correlate", image, kernel, options, true);
   }
 
-  prepare<T extends SampleType = never>(kernel: Kernel, layout: Layout, options?: PrepareOptions<T>): Filter<T> {
+  prepare<T extends SampleType = never, S extends SampleType = "u8">(kernel: Kernel, layout: Layout<S>, options?: PrepareOptions<T>): Filter<T, S> {
     this.#usable("prepare");
     return this.#prepared(checkedRequest("prepare", kernel, checkedLayout("prepare", layout), options), false);
   }
@@ -81,7 +87,7 @@ class ConvolutionEngine implements Engine {
   ): ResultRaster<ResultArray<S, T>> {
     this.#usable(call);
     const { width, height, channels, sample } = checkedRaster(`${call}: image`, image);
-    const filter = this.#prepared<T>(checkedRequest(call, kernel, { width, height, channels, sample }, options, correlate), true);
+    const filter = this.#prepared<T, SampleType>(checkedRequest(call, kernel, { width, height, channels, sample }, options, correlate), true);
     try {
       return filter.run(image);
     } finally {
@@ -94,13 +100,21 @@ class ConvolutionEngine implements Engine {
     return { problem, choice: choose(problem, this.#profile, once) };
   }
 
-  #prepared<T extends SampleType>(request: Request, once: boolean): PreparedFilter<T> {
+  #prepared<T extends SampleType, S extends SampleType>(request: Request, once: boolean): PreparedFilter<T, S> {
     const { problem, choice } = this.#chosen(request, once);
     const explanation = explanationOf(choice, problem, this.#profile, once);
-    const filter: PreparedFilter<T> = new PreparedFilter<T>(problem, choice, explanation, this.#core, () => this.#filters.delete(filter));
+    const filter: PreparedFilter<T, S> = new PreparedFilter<T, S>(problem, choice, explanation, this.#parts, () => this.#filters.delete(filter));
     this.#filters.add(filter);
     return filter;
   }
+}
+
+/** As `createEngine`, with another clock and another way to yield. */
+export async function engineWithPacing(options: EngineOptions | undefined, pacing: Pacing): Promise<Engine> {
+  const checked = checkedEngineOptions(options);
+  const core = await loadCore(checked);
+  const shipped = shippedProfiles.find(({ build }) => build === core.build)!;
+  return new ConvolutionEngine(core, checked.profile ? profileForBuild(checked.profile, core.build) : shipped, pacing);
 }
 
 /**
@@ -113,8 +127,5 @@ class ConvolutionEngine implements Engine {
  * const blurred = engine.convolve({ data: photo, width: 640, height: 480 }, gaussian({ sigma: 2 }));
  */
 export async function createEngine(options?: EngineOptions): Promise<Engine> {
-  const checked = checkedEngineOptions(options);
-  const core = await loadCore(checked);
-  const shipped = shippedProfiles.find(({ build }) => build === core.build)!;
-  return new ConvolutionEngine(core, checked.profile ? profileForBuild(checked.profile, core.build) : shipped);
+  return engineWithPacing(options, hostPacing());
 }

@@ -1,13 +1,18 @@
 import { ConvolutionError } from "../errors.js";
 import type { Choice } from "../planning/choose.js";
-import { programsOf } from "../planning/panels.js";
+import { panelsOf } from "../planning/panels.js";
 import type { Problem } from "../planning/problem.js";
 import { execute, install, type Installed } from "../runtime/execute.js";
-import { Execution } from "../runtime/execution.js";
-import type { Explanation, Filter, Raster, ResultArray, ResultRaster, Samples, SampleType } from "../types.js";
-import type { Core } from "./loading.js";
+import { Execution, samplesChanged } from "../runtime/execution.js";
+import type { Explanation, Filter, Raster, ResultArray, ResultRaster, RunOptions, Samples, SampleType, ViewArray } from "../types.js";
+import { anyClaims, checkUnclaimed, samplesStretch } from "./claims.js";
+import type { EngineParts } from "./engineParts.js";
+import { JobQueue, type Order } from "./jobs.js";
 import type { CheckedRaster } from "./validate/raster.js";
+import type { ImageShape } from "./validate/request.js";
+import { checkedRunOptions, type CheckedRunOptions } from "./validate/runOptions.js";
 import { checkedSource, checkedTarget } from "./validate/target.js";
+import { View } from "./views.js";
 
 /** An array for results: the source's own kind where the sample type is the same, else what `ImageData` and the like take. */
 function newSamples(sample: SampleType, source: CheckedRaster, length: number): Samples {
@@ -22,51 +27,159 @@ function newSamples(sample: SampleType, source: CheckedRaster, length: number): 
   }
 }
 
-/** A plan with its memory in the engine. */
-export class PreparedFilter<T extends SampleType = never> implements Filter<T> {
-  readonly explanation: Explanation;
-  readonly #problem: Problem;
-  readonly #core: Core;
-  readonly #leave: () => void;
-  #installed: Installed | undefined;
-  #execution: Execution | undefined;
+function disposedError(call: string): ConvolutionError {
+  const message = `${call}: the filter was disposed, by itself or with its engine, and its memory is given back. Prepare it anew on an engine that is not disposed.`;
+  return new ConvolutionError("disposed", message, { expected: "a filter that is not disposed", received: "a disposed filter" });
+}
 
-  constructor(problem: Problem, choice: Choice, explanation: Explanation, core: Core, leave: () => void) {
+function busyError(call: string): ConvolutionError {
+  const message = `${call}: the filter has unfinished runAsync jobs, and does one at a time. Wait for them, abort them, or prepare another filter.`;
+  return new ConvolutionError("filter-busy", message, { expected: "a filter without unfinished jobs", received: "a busy filter" });
+}
+
+/** A plan with its memory in the engine. */
+export class PreparedFilter<T extends SampleType = never, S extends SampleType = SampleType> implements Filter<T, S> {
+  readonly explanation: Explanation;
+  readonly #engine: EngineParts;
+  readonly #leave: () => void;
+  readonly #installed: Installed;
+  readonly #execution: Execution;
+  readonly #jobs: JobQueue;
+  readonly #layout: ImageShape;
+  readonly #result: ImageShape;
+  readonly #views: { source: View; result: View };
+  #disposed = false;
+
+  constructor(problem: Problem, choice: Choice, explanation: Explanation, engine: EngineParts, leave: () => void) {
+    const { memory, routines } = engine.core;
+    const { request, horizontal, vertical } = problem;
     this.explanation = explanation;
-    this.#problem = problem;
-    this.#core = core;
+    this.#engine = engine;
     this.#leave = leave;
-    this.#installed = install(programsOf(choice.plan, problem), core.memory, core.routines);
-    this.#execution = new Execution(this.#installed, core.memory, core.routines);
+    this.#layout = request;
+    this.#result = { width: horizontal.count, height: vertical.count, channels: request.channels, sample: request.output.sample };
+    this.#views = { source: new View(this.#layout, memory, engine.views), result: new View(this.#result, memory, engine.views) };
+    const programs = panelsOf(choice.plan, problem).problems.map((part) => choice.plan.program(part));
+    this.#installed = install(programs, memory, routines);
+    this.#execution = new Execution(this.#installed, memory, routines);
+    this.#jobs = new JobQueue(this.#execution, engine.turns);
   }
 
-  run<S extends Samples>(image: Raster<S>): ResultRaster<ResultArray<S, T>>;
-  run<R extends Raster>(image: Raster, target: R): R;
-  run(image: Raster, target?: Raster): Raster {
-    const execution = this.#execution;
-    if (!execution) {
-      const message =
-        "run: the filter was disposed, by itself or with its engine, and its memory is given back. Prepare it anew on an engine that is not disposed.";
-      throw new ConvolutionError("disposed", message, { expected: "a filter that is not disposed", received: "a disposed filter" });
-    }
-    const { request, horizontal, vertical } = this.#problem;
-    const source = checkedSource(image, request);
-    const result = { width: horizontal.count, height: vertical.count, channels: request.channels, sample: request.output.sample };
-    if (target !== undefined) {
-      execute(execution, source, checkedTarget(target, source, result));
-      return target;
-    }
-    const { width, height, channels } = result;
-    const data = newSamples(result.sample, source, width * height * channels);
-    execute(execution, source, { data, stride: width * channels });
-    return { data, width, height, channels, ...(source.colorSpace === undefined ? {} : { colorSpace: source.colorSpace }) };
+  get source(): ResultRaster<ViewArray<S>> {
+    this.#usable("source");
+    return this.#views.source.raster as ResultRaster<ViewArray<S>>;
+  }
+
+  get result(): ResultRaster<ViewArray<[T] extends [never] ? S : T>> {
+    this.#usable("result");
+    return this.#views.result.raster as ResultRaster<ViewArray<[T] extends [never] ? S : T>>;
+  }
+
+  get viewBytes(): number {
+    return this.#views.source.byteLength + this.#views.result.byteLength;
+  }
+
+  run(): ResultRaster<ViewArray<[T] extends [never] ? S : T>>;
+  run<A extends Samples>(image: Raster<A>): ResultRaster<ResultArray<A, T>>;
+  run<R extends Raster>(image: Raster | undefined, target: R): R;
+  run(image?: Raster, target?: Raster): Raster {
+    this.#usable("run");
+    if (this.#jobs.busy) throw busyError("run");
+    const source = this.#source("run", image);
+    const given = this.#target("run", image, target, source);
+    if (anyClaims()) checkUnclaimed({ owner: this, ...this.#stretches(source, given?.checked) });
+    const { checked, raster } = given ?? this.#ownTarget(source);
+    execute(this.#execution, source, checked);
+    return raster;
+  }
+
+  async runAsync(image?: Raster, given?: RunOptions<Raster>): Promise<never> {
+    this.#usable("runAsync");
+    const options = checkedRunOptions(given);
+    const source = this.#source("runAsync", image);
+    const target = this.#target("runAsync", image, options.target, source);
+    if (options.signal?.aborted) return Promise.reject(options.signal.reason);
+    return this.#jobs.add(this.#order(options, source, target)) as Promise<never>;
   }
 
   dispose(): void {
-    const installed = this.#installed;
-    if (!installed) return;
-    this.#installed = this.#execution = undefined;
-    this.#core.memory.release(installed.address, installed.byteLength);
+    if (this.#disposed) return;
+    this.#disposed = true;
+    this.#jobs.dispose(disposedError("runAsync"));
+    this.#engine.core.memory.release(this.#installed.address, this.#installed.byteLength);
+    this.#views.source.dispose();
+    this.#views.result.dispose();
     this.#leave();
   }
+
+  #usable(call: string): void {
+    if (this.#disposed) throw disposedError(call);
+  }
+
+  #source(call: string, image: Raster | undefined): CheckedRaster {
+    const source = checkedSource(call, image === undefined ? this.source : image, this.#layout);
+    this.#checkLive(call, source);
+    return source;
+  }
+
+  /** The caller's target, or the view where there is neither image nor target; nothing where the result is a raster of its own. */
+  #target(call: string, image: unknown, target: unknown, source: CheckedRaster): Target | undefined {
+    if (target === undefined && image !== undefined) return undefined;
+    const raster = target === undefined ? this.result : target;
+    const checked = checkedTarget(call, raster, source, this.#engine.core.memory, this.#result);
+    this.#checkLive(call, checked);
+    return { checked, raster: raster as Raster, isView: target === undefined };
+  }
+
+  /** @throws ConvolutionError `detached-samples` for a view whose filter is gone */
+  #checkLive(call: string, { data }: CheckedRaster): void {
+    if (this.#engine.views.isLive(data)) return;
+    const message = `${call}: the array is a view of a filter that was disposed, and its memory is given back. Take source and result from a filter that is not disposed.`;
+    throw new ConvolutionError("detached-samples", message, { expected: "a view of a filter in use", received: "a view of a disposed filter" });
+  }
+
+  #ownTarget(source: CheckedRaster): Target {
+    const { width, height, channels, sample } = this.#result;
+    const data = newSamples(sample, source, width * height * channels);
+    const { colorSpace } = source;
+    const checked: CheckedRaster = { data, sample, width, height, channels, stride: width * channels, colorSpace };
+    return { checked, raster: { data, width, height, channels, ...(colorSpace === undefined ? {} : { colorSpace }) }, isView: false };
+  }
+
+  #stretches(source: CheckedRaster, target: CheckedRaster | undefined) {
+    const { memory } = this.#engine.core;
+    return { source: samplesStretch(source.data, memory), target: target && samplesStretch(target.data, memory) };
+  }
+
+  #order(options: CheckedRunOptions, source: CheckedRaster, target: Target | undefined): Order {
+    const sourceLater = this.#later("image", source);
+    const targetLater = target && this.#later("target", target.checked);
+    const begin = (): (() => Raster) => {
+      const { checked, raster } = targetLater ? { checked: targetLater(), raster: target!.raster } : this.#ownTarget(source);
+      this.#execution.begin(sourceLater(), checked);
+      return () => (target?.isView ? this.#views.result.raster : raster);
+    };
+    return { claim: { owner: this, ...this.#stretches(source, target?.checked) }, options, begin };
+  }
+
+  /** A raster as it will be when its job begins: views of the memory anew, other arrays only if they are as long as they were. */
+  #later(what: string, raster: CheckedRaster): () => CheckedRaster {
+    const { memory } = this.#engine.core;
+    const { data, sample } = raster;
+    const { length } = data;
+    const address = memory.addressOf(data);
+    if (address !== undefined) return () => ({ ...raster, data: memory.samplesAt(sample, address, length) });
+    return () => {
+      if (data.length < length) throw samplesChanged(what);
+      return raster;
+    };
+  }
+}
+
+/** Where results go: what is written, and the raster that the caller gets. */
+interface Target {
+  checked: CheckedRaster;
+  raster: Raster;
+  /** It is the filter's own view, which has to be taken anew afterwards. */
+  isView: boolean;
 }

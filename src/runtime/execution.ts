@@ -1,3 +1,5 @@
+import { ConvolutionError } from "../errors.js";
+import { RESULT_ROWS, RESULT_ROW_STRIDE, SOURCE_ROWS, SOURCE_ROW_STRIDE } from "../generated/record.js";
 import type { Installed } from "./execute.js";
 import type { EngineMemory } from "./memory.js";
 import type { Program, Step } from "./program.js";
@@ -21,6 +23,12 @@ export class Execution {
   readonly #stepsInAll: number;
   #source: Plane | undefined;
   #target: Plane | undefined;
+  /** Samples that the arrays had at the start: fewer now, and they were detached or resized. */
+  #sourceLength = 0;
+  #targetLength = 0;
+  /** Addresses of arrays that lie in the engine's memory, where rows are read and written in place; else nothing. */
+  #sourceAddress: number | undefined;
+  #targetAddress: number | undefined;
   #program = 0;
   #step = 0;
   #stepsDone: number;
@@ -50,8 +58,13 @@ export class Execution {
   begin(source: Plane, target: Plane): void {
     this.#source = source;
     this.#target = target;
+    this.#sourceLength = source.data.length;
+    this.#targetLength = target.data.length;
+    this.#sourceAddress = this.#memory.addressOf(source.data);
+    this.#targetAddress = this.#memory.addressOf(target.data);
     this.#stepsDone = 0;
     this.#beginProgram(0);
+    if (!this.#sharing) this.#placeRows(this.#installed.programs[0]!);
   }
 
   /** Lets go of the arrays of a run that ends before its time. */
@@ -72,11 +85,38 @@ export class Execution {
     const { setup, steps } = program;
     const step = this.#step++;
     if (step >= 0) this.#execute(program, steps[step]!);
-    else if (step < -setup.length) this.#memory.writeTables(program.tables, this.#installed.address);
+    else if (step < -setup.length) this.#writeTables(program);
     else this.#call(program, setup[setup.length + step]!);
     this.#stepsDone++;
     if (this.done) this.abandon();
     else if (this.#step === steps.length) this.#beginProgram(this.#program + 1);
+  }
+
+  #writeTables(program: Program): void {
+    this.#memory.writeTables(program.tables, this.#installed.address);
+    this.#placeRows(program);
+  }
+
+  /** Tells the core where it reads and writes in place; 0 where rows are staged. */
+  #placeRows({ record, intake, outlet }: Program): void {
+    const source = this.#source!;
+    const target = this.#target!;
+    const { BYTES_PER_ELEMENT: sourceBytes } = source.data;
+    const { BYTES_PER_ELEMENT: targetBytes } = target.data;
+    const sourceStart = intake.firstColumn * intake.channels * sourceBytes;
+    const sourceRows = this.#sourceAddress === undefined ? 0 : this.#sourceAddress + sourceStart;
+    const targetRows = this.#targetAddress === undefined ? 0 : this.#targetAddress + outlet.firstSample * targetBytes;
+    const job = this.#installed.address + record;
+    this.#memory.storeInteger(job + SOURCE_ROWS, sourceRows);
+    this.#memory.storeInteger(job + SOURCE_ROW_STRIDE, source.stride * sourceBytes);
+    this.#memory.storeInteger(job + RESULT_ROWS, targetRows);
+    this.#memory.storeInteger(job + RESULT_ROW_STRIDE, target.stride * targetBytes);
+  }
+
+  /** Arrays in the memory lie where they lay; others may have been taken away between two steps. */
+  #checkArrays(): void {
+    if (this.#sourceAddress === undefined && this.#source!.data.length < this.#sourceLength) throw samplesChanged("image");
+    if (this.#targetAddress === undefined && this.#target!.data.length < this.#targetLength) throw samplesChanged("target");
   }
 
   #call(program: Program, { routine, from, to, strip }: Step): void {
@@ -87,9 +127,16 @@ export class Execution {
   #execute(program: Program, step: Step): void {
     const { address } = this.#installed;
     const traffic = this.#traffic[this.#program]!;
-    if (step.read) traffic.stage(this.#source!, step.read, address + program.intake.offset);
-    if (step.keep) traffic.stage(this.#source!, step.keep, address + program.intake.keepOffset);
+    this.#checkArrays();
+    if (step.read && this.#sourceAddress === undefined) traffic.stage(this.#source!, step.read, address + program.intake.offset);
+    if (step.keep && this.#sourceAddress === undefined) traffic.stage(this.#source!, step.keep, address + program.intake.keepOffset);
     this.#call(program, step);
-    if (step.write) traffic.takeOut(this.#target!, step.write, address + program.outlet.offset);
+    if (step.write && this.#targetAddress === undefined) traffic.takeOut(this.#target!, step.write, address + program.outlet.offset);
   }
+}
+
+/** For arrays that are no longer what they were when a run was asked for. */
+export function samplesChanged(what: string): ConvolutionError {
+  const message = `The array of the ${what} was detached or made shorter during the run, which ends here. Leave it alone until the run is over, or pass a copy.`;
+  return new ConvolutionError("samples-changed", message, { expected: "the array as it was at the start", received: "a shorter array" });
 }

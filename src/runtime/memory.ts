@@ -1,5 +1,5 @@
 import { ConvolutionError } from "../errors.js";
-import type { Samples } from "../types.js";
+import type { Samples, SampleType } from "../types.js";
 import type { Table } from "./program.js";
 
 export const pageBytes = 65536;
@@ -31,6 +31,9 @@ export class EngineMemory {
   #bytes: Uint8Array;
   #words: Uint16Array;
   #floats: Float32Array;
+  #integers: Int32Array;
+  /** The buffers that the memory had: shared ones that it has outgrown still show it. */
+  readonly #buffers = new WeakSet<ArrayBufferLike>();
 
   constructor(limit: number) {
     this.limit = limit;
@@ -39,6 +42,8 @@ export class EngineMemory {
     this.#bytes = new Uint8Array(this.#buffer);
     this.#words = new Uint16Array(this.#buffer);
     this.#floats = new Float32Array(this.#buffer);
+    this.#integers = new Int32Array(this.#buffer);
+    this.#buffers.add(this.#buffer);
   }
 
   /** Bytes of the memory as the host sees it. */
@@ -117,6 +122,8 @@ export class EngineMemory {
     this.#bytes = new Uint8Array(this.#buffer);
     this.#words = new Uint16Array(this.#buffer);
     this.#floats = new Float32Array(this.#buffer);
+    this.#integers = new Int32Array(this.#buffer);
+    this.#buffers.add(this.#buffer);
   }
 
   #clear(address: number, byteLength: number): void {
@@ -138,6 +145,31 @@ export class EngineMemory {
   window(like: Samples, address: number, count: number): Samples {
     const start = address / like.BYTES_PER_ELEMENT;
     return this.#viewFor(like).subarray(start, start + count);
+  }
+
+  /** A view of `count` samples of a type, as `window`. */
+  samplesAt(sample: SampleType, address: number, count: number): Samples {
+    this.#refresh();
+    const view = sample === "u8" ? this.#bytes : sample === "u16" ? this.#words : this.#floats;
+    const start = address / view.BYTES_PER_ELEMENT;
+    return view.subarray(start, start + count);
+  }
+
+  /** The same as an image: bytes in the array that `ImageData` takes. */
+  imageAt(sample: SampleType, address: number, count: number): Samples {
+    this.#refresh();
+    return sample === "u8" ? new Uint8ClampedArray(this.#buffer, address, count) : this.samplesAt(sample, address, count);
+  }
+
+  /** Where an array lies in the memory; nothing where it lies elsewhere. */
+  addressOf(samples: Samples): number | undefined {
+    this.#refresh();
+    return this.#buffers.has(samples.buffer) ? samples.byteOffset : undefined;
+  }
+
+  storeInteger(address: number, value: number): void {
+    this.#refresh();
+    this.#integers[address >>> 2] = value;
   }
 
   /** Writes a program's tables for a filter whose block starts at `base`. */

@@ -6,9 +6,10 @@ import { images, kernelsAndBorders, namesAndNumbers, targets } from "./callerCas
 import { commandLine } from "./commandLineCases.js";
 import type { ErrorCase } from "./errorCase.js";
 import { states } from "./hostCases.js";
+import { jobs } from "./jobCases.js";
 
 /** A code without a row does not compile. */
-const table: Record<ErrorCode, ErrorCase[]> = { ...namesAndNumbers, ...images, ...targets, ...kernelsAndBorders, ...states, ...commandLine };
+const table: Record<ErrorCode, ErrorCase[]> = { ...namesAndNumbers, ...images, ...targets, ...kernelsAndBorders, ...states, ...jobs, ...commandLine };
 
 async function errorOf(act: () => unknown): Promise<unknown> {
   try {

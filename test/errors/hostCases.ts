@@ -115,6 +115,35 @@ export const states: Pick<
       },
     },
     {
+      title: "runAsync after the filter is disposed",
+      act: ({ filter, image }) => {
+        const made = filter();
+        made.dispose();
+        return made.runAsync(image);
+      },
+      says: [/runAsync/],
+    },
+    {
+      title: "a filter that is disposed while it runs and while others wait",
+      act: async ({ filter, image }) => {
+        const made = filter();
+        const jobs = [made.runAsync(image), made.runAsync(image)];
+        made.dispose();
+        const ends = await Promise.allSettled(jobs);
+        if (ends.some(({ status }) => status === "fulfilled")) return;
+        throw (ends[1] as PromiseRejectedResult).reason;
+      },
+    },
+    {
+      title: "an engine that is disposed while a filter runs",
+      act: async ({ image, kernel: taps }) => {
+        const engine = await createEngine();
+        const running = engine.prepare(taps, { width: 6, height: 5 }).runAsync(image);
+        engine.dispose();
+        return running;
+      },
+    },
+    {
       title: "explain after the engine is disposed",
       act: async ({ kernel: taps }) => {
         const engine = await createEngine();

@@ -1,0 +1,46 @@
+import type { EngineMemory } from "../runtime/memory.js";
+import type { ViewMemory } from "../runtime/viewMemory.js";
+import type { ResultRaster, SampleType } from "../types.js";
+import { whenUnclaimed } from "./claims.js";
+import type { ImageShape } from "./validate/request.js";
+
+/** One image in the engine's memory, reserved when it is first asked for. */
+export class View {
+  readonly #shape: ImageShape;
+  readonly #memory: EngineMemory;
+  readonly #blocks: ViewMemory;
+  #address: number | undefined;
+
+  constructor(shape: ImageShape, memory: EngineMemory, blocks: ViewMemory) {
+    this.#shape = shape;
+    this.#memory = memory;
+    this.#blocks = blocks;
+  }
+
+  get byteLength(): number {
+    return this.#address === undefined ? 0 : this.#blocks.byteLengthAt(this.#address);
+  }
+
+  /**
+   * The image, in an array made anew: an older one is gone where the memory has grown.
+   *
+   * @throws ConvolutionError `memory-limit`, `memory-exhausted`
+   */
+  get raster(): ResultRaster {
+    const { width, height, channels, sample } = this.#shape;
+    const samples = width * height * channels;
+    this.#address ??= this.#blocks.take(samples * bytesOf[sample]);
+    return { data: this.#memory.imageAt(sample, this.#address, samples), width, height, channels };
+  }
+
+  /** Gives the memory back, as soon as no unfinished job needs it. */
+  dispose(): void {
+    const address = this.#address;
+    if (address === undefined) return;
+    const stretch = { of: this.#memory, first: address, end: address + this.byteLength };
+    this.#address = undefined;
+    whenUnclaimed(stretch, () => this.#blocks.release(address));
+  }
+}
+
+const bytesOf: Record<SampleType, number> = { u8: 1, u16: 2, f32: 4 };
