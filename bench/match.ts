@@ -49,7 +49,7 @@ export class Match {
     const planes = this.#subject.planes.map(({ data }) => data as Float32Array);
     const { kernel, layout } = figure.subject;
     const process =
-      against.kind === "SciPy" ? startScipy(folder, kernel, planes, layout.width) : startPlainC(folder, against.loops, kernel, planes, layout.width);
+      against.kind === "SciPy" ? startScipy(folder, figure.subject, this.#subject.planes) : startPlainC(folder, against.loops, kernel, planes, layout.width);
     const forms = against.kind === "SciPy" ? scipyForms : formsOf[against.loops];
     const part = against.kind === "plain C" && !against.padding ? "loopMilliseconds" : "milliseconds";
     this.#process = process;

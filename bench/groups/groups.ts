@@ -1,5 +1,9 @@
+import { box } from "./box.js";
+import { bytes } from "./bytes.js";
+import { fft } from "./fft.js";
 import { direct, separable } from "./floats.js";
 import type { Group } from "./group.js";
+import { transforms } from "./transforms.js";
 
 /** Every group of lines, in the order in which they are printed. */
-export const groups: readonly Group[] = [direct, separable];
+export const groups: readonly Group[] = [direct, separable, transforms, fft, bytes, box];

@@ -1,6 +1,9 @@
 import { fileURLToPath } from "node:url";
-import type { Kernel } from "../../src/index.js";
+import type { Raster } from "../../src/index.js";
+import type { Case } from "../cases.js";
+import type { Contender } from "../contender.js";
 import { firstLineOf } from "../host.js";
+import { verify, yardstickTolerance } from "../verify.js";
 import { YardstickProcess } from "./process.js";
 import { freshPath, writeSamples } from "./workFolder.js";
 
@@ -21,18 +24,31 @@ export function scipyVersion(): string | undefined {
   return interpreter === undefined ? undefined : versionOf(interpreter);
 }
 
-/** Starts SciPy's convolutions over one-channel planes: 32-bit floats, zero border, mode "same", one thread. */
-export function startScipy(folder: string, kernel: Kernel, planes: readonly Float32Array[], width: number): YardstickProcess {
-  const { width: m, height: n } = kernel;
-  const parameters = [
-    fileURLToPath(new URL("scipy_fft.py", import.meta.url)),
-    String(width),
-    String(planes[0]!.length / width),
-    String(planes.length),
-    writeSamples(folder, "planes.f32", planes),
-    String(m),
-    String(n),
-    writeSamples(folder, "scipy-taps.f32", [Float32Array.from(kernel.taps)]),
-  ];
-  return new YardstickProcess(findInterpreter() ?? "python3", parameters, freshPath(folder, "scipy-result.f32"), oneThread);
+/** Starts SciPy over a case's images, with one thread: see scipy_fft.py. */
+export function startScipy(folder: string, { kernel, layout }: Case, planes: readonly Raster[]): YardstickProcess {
+  const images = writeSamples(
+    folder,
+    "planes",
+    planes.map(({ data }) => data),
+  );
+  const taps = writeSamples(folder, "taps", [Float32Array.from(kernel.taps)]);
+  const { width, height, channels, sample } = layout;
+  const parameters = [width, height, channels, sample, planes.length, images, kernel.width, kernel.height, taps].map(String);
+  const script = fileURLToPath(new URL("scipy_fft.py", import.meta.url));
+  return new YardstickProcess(findInterpreter() ?? "python3", [script, ...parameters], freshPath(folder, "result"), oneThread);
+}
+
+/** Forms of a started SciPy as contenders that verify their results. */
+export function scipyContenders(process: YardstickProcess, one: Case, planes: readonly Raster[], forms: readonly string[] = scipyForms): Contender[] {
+  return forms.map((form) => {
+    const contender = process.contender(`SciPy ${form}`, form);
+    const check = async (): Promise<number> => {
+      await contender.run(0);
+      const bytes = await process.resultBytes();
+      // Single precision, as in the other yardsticks, of values up to 255 for bytes.
+      const floats = one.layout.sample === "f32";
+      return verify(one, planes[0]!, floats ? new Float32Array(bytes.buffer) : bytes, yardstickTolerance * (floats ? 1 : 255));
+    };
+    return { ...contender, verify: check };
+  });
 }

@@ -2,7 +2,7 @@
  * Batches of complex transforms by FFTW, single precision, planned with FFTW_MEASURE. One line of JSON to each line read:
  *
  *     <layout> <place> <direction> <points> <batch>    one batch, from fresh numbers   →  {"milliseconds": of processor time}
- *     error  <layout> <place> <direction> <points> <batch>    largest difference from the definition over the largest result, at some places
+ *     error  <layout> <place> <direction> <points> <batch>    largest difference from the definition, at some places, over the root mean square of all results
  *     plan   <layout> <place> <direction> <points> <batch>    →  {"plan": "what FFTW prints of its plan"}
  *
  * layout      columns: point r of transform c lies at r · batch + c; rows: at c · points + r
@@ -61,22 +61,24 @@ static Transform *transform_of(const char *layout, const char *place, const char
 }
 
 static double error_of(const Transform *one) {
-  double worst = 0, largest = 0;
+  double worst = 0;
   fill(one);
   fftwf_execute(one->plan);
   for (int c = 0; c < one->batch; c += one->batch / 3 + 1)
     for (int k = 0; k < one->points; k += one->points / 7 + 1) {
       double complex sum = 0;
+      double squares = 0;
       for (int r = 0; r < one->points; r++) {
         const size_t at = one->columns ? (size_t)r * one->batch + c : (size_t)c * one->points + r;
         const double angle = one->sign * 2 * M_PI * (double)((long)k * r % one->points) / one->points;
-        sum += (number(2 * at) + I * number(2 * at + 1)) * (cos(angle) + I * sin(angle));
+        const double complex x = number(2 * at) + I * number(2 * at + 1);
+        sum += x * (cos(angle) + I * sin(angle));
+        squares += creal(x) * creal(x) + cimag(x) * cimag(x);
       }
       const fftwf_complex *got = &one->to[one->columns ? (size_t)k * one->batch + c : (size_t)c * one->points + k];
-      worst = fmax(worst, cabs(sum - *got));
-      largest = fmax(largest, cabs(sum));
+      worst = fmax(worst, cabs(sum - *got) / sqrt(squares)); /* Parseval: the mean square of N results is the sum of squares of N points */
     }
-  return worst / largest;
+  return worst;
 }
 
 static void print_plan(const Transform *one) {
