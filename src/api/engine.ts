@@ -29,6 +29,7 @@ import { loadCore, type Core } from "./loading.js";
 import { checkedEngineOptions, profileForBuild } from "./validate/engineOptions.js";
 import { checkedRaster } from "./validate/raster.js";
 import { checkedLayout, checkedRequest } from "./validate/request.js";
+import { warmUp } from "./warming.js";
 
 class ConvolutionEngine implements Engine {
   readonly #core: Core;
@@ -102,6 +103,7 @@ class ConvolutionEngine implements Engine {
 
   #prepared<T extends SampleType, S extends SampleType>(request: Request, once: boolean): PreparedFilter<T, S> {
     const { problem, choice } = this.#chosen(request, once);
+    if (!once) warmUp(this.#core, choice.plan, problem);
     const explanation = explanationOf(choice, problem, this.#profile, once);
     const filter: PreparedFilter<T, S> = new PreparedFilter<T, S>(problem, choice, explanation, this.#parts, () => this.#filters.delete(filter));
     this.#filters.add(filter);
