@@ -6,7 +6,7 @@ import { mkdirSync, readFileSync, renameSync, writeFileSync } from "node:fs";
 import { dirname, join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { fingerprintOf } from "./fingerprint.mjs";
-import { withoutCustomSections } from "./sections.mjs";
+import { dataSection, sectionIds, withoutCustomSections } from "./sections.mjs";
 
 const root = join(dirname(fileURLToPath(import.meta.url)), "..");
 const generated = join(root, "src", "generated");
@@ -55,9 +55,15 @@ async function compile(asc, target) {
   return shipped.has(target) ? withoutCustomSections(binary) : binary;
 }
 
-/** The host owns every byte: a core that imports more than its memory, or brings a memory of its own, is refused. */
+/**
+ * The host owns every byte: a core that imports more than its memory, or brings a memory of its own, is refused; so is one with data
+ * segments, which every thread that links the core with a shared memory would write anew over what the others use.
+ */
 function checkImports(target, binary) {
-  const imports = WebAssembly.Module.imports(new WebAssembly.Module(binary)).map(({ module, name, kind }) => `${module}.${name} (${kind})`);
+  const module = new WebAssembly.Module(binary);
+  const imports = WebAssembly.Module.imports(module).map(({ module: from, name, kind }) => `${from}.${name} (${kind})`);
+  if (shipped.has(target) && sectionIds(binary).includes(dataSection))
+    throw new Error(`The target ${target} has data segments, which threads with one memory cannot have.`);
   if (imports.join() !== "env.memory (memory)")
     throw new Error(`The core may import env.memory only; the target ${target} imports: ${imports.join(", ") || "nothing"}.`);
 }

@@ -8,18 +8,29 @@ function readUnsigned(bytes, position) {
   }
 }
 
+/** Every section of a WebAssembly binary: its id, and where it starts and ends. */
+function* sectionsOf(bytes) {
+  for (let start = 8; start < bytes.length;) {
+    const header = readUnsigned(bytes, start + 1);
+    const end = header.position + header.value;
+    yield { id: bytes[start], start, end };
+    start = end;
+  }
+}
+
+/** The data section's id. */
+export const dataSection = 11;
+
+export function sectionIds(bytes) {
+  return [...sectionsOf(bytes)].map(({ id }) => id);
+}
+
 /**
  * Leaves the custom sections (names, producers, source map address) out of a WebAssembly binary.
  *
  * Source    WebAssembly Core Specification 2.0, §5.5.2 (section = id byte, size as LEB128, contents), §5.5.3 (custom sections have id 0)
  */
 export function withoutCustomSections(bytes) {
-  const kept = [bytes.subarray(0, 8)];
-  for (let start = 8; start < bytes.length;) {
-    const header = readUnsigned(bytes, start + 1);
-    const end = header.position + header.value;
-    if (bytes[start] !== 0) kept.push(bytes.subarray(start, end));
-    start = end;
-  }
-  return Buffer.concat(kept);
+  const kept = [...sectionsOf(bytes)].filter(({ id }) => id !== 0).map(({ start, end }) => bytes.subarray(start, end));
+  return Buffer.concat([bytes.subarray(0, 8), ...kept]);
 }

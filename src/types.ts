@@ -158,6 +158,8 @@ export interface Candidate {
   arithmetic?: string;
   /** Number of separable terms that are summed, for `separable`. */
   terms?: number;
+  /** Threads that a run uses, the calling one included: fewer than the engine has where handing over would not pay. */
+  threads?: number;
   /** Why the method does not apply, as a sentence. */
   refused?: string;
 }
@@ -172,6 +174,8 @@ export interface Explanation {
   because: string;
   errorBound: number;
   bytes: number;
+  /** Threads that a run uses, the calling one included. */
+  threads: number;
   /** Predicted time of one run. */
   milliseconds: number;
   setupMilliseconds: number;
@@ -196,6 +200,12 @@ export interface HardwareProfile {
   nanoseconds: Record<string, number>;
 }
 
+/** As much of a worker as an engine uses: a page's `Worker` and one of Node's `worker_threads` both fit. */
+export interface EngineWorker {
+  postMessage(message: unknown, transfer?: readonly Transferable[]): void;
+  terminate(): unknown;
+}
+
 export interface EngineOptions {
   /** @defaultValue `"auto"`: SIMD where the host has it and it passes the known-answer test, else scalar */
   build?: Build | "auto";
@@ -205,6 +215,13 @@ export interface EngineOptions {
   memoryLimit?: number;
   /** A compiled module to use instead of the bundled one. */
   module?: WebAssembly.Module;
+  /** Threads, the calling one included, 1…64: the others are workers. A run uses as many of them as pay. @defaultValue 1 */
+  threads?: number;
+  /**
+   * Makes a worker of this package's worker script (`tapwise/worker`), where the bundler or the page needs it from elsewhere than beside the
+   * package. Called for each further thread. @defaultValue a module worker, or one of Node's `worker_threads`
+   */
+  createWorker?: () => EngineWorker | undefined;
 }
 
 /** Options of `runAsync`. */
@@ -264,6 +281,8 @@ export interface Filter<T extends SampleType = never, S extends SampleType = Sam
 
 export interface Engine {
   readonly build: Build;
+  /** Threads that are there now, the calling one included: fewer than asked for where the host lets none start, or where workers were lost. */
+  readonly threads: number;
   /** Convolves (taps reversed) and returns a new raster. */
   convolve<S extends Samples, T extends SampleType = never>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions<T>): ResultRaster<ResultArray<S, T>>;
   /** Correlates (taps as written) and returns a new raster. */

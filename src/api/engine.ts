@@ -24,6 +24,7 @@ import { hostPacing, type Pacing } from "../runtime/pacing.js";
 import { Turns } from "../runtime/turns.js";
 import { ViewMemory } from "../runtime/viewMemory.js";
 import type { EngineParts } from "./engineParts.js";
+import { Crew } from "../runtime/workers/crew.js";
 import { PreparedFilter } from "./filter.js";
 import { loadCore, type Core } from "./loading.js";
 import { checkedEngineOptions, profileForBuild } from "./validate/engineOptions.js";
@@ -38,14 +39,18 @@ class ConvolutionEngine implements Engine {
   readonly #filters = new Set<{ dispose(): void }>();
   #disposed = false;
 
-  constructor(core: Core, profile: HardwareProfile, pacing: Pacing) {
+  constructor(core: Core, profile: HardwareProfile, pacing: Pacing, crew: Crew | undefined) {
     this.#core = core;
-    this.#parts = { core, turns: new Turns(pacing), views: new ViewMemory(core.memory) };
+    this.#parts = { core, turns: new Turns(pacing), views: new ViewMemory(core.memory), crew };
     this.#profile = profile;
   }
 
   get build(): Build {
     return this.#core.build;
+  }
+
+  get threads(): number {
+    return 1 + (this.#parts.crew?.ready.length ?? 0);
   }
 
   convolve<S extends Samples, T extends SampleType = never>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions<T>): ResultRaster<ResultArray<S, T>> {
@@ -71,6 +76,7 @@ class ConvolutionEngine implements Engine {
   dispose(): void {
     this.#disposed = true;
     for (const filter of this.#filters) filter.dispose();
+    this.#parts.crew?.dispose();
   }
 
   #usable(call: string): void {
@@ -97,7 +103,8 @@ class ConvolutionEngine implements Engine {
   }
 
   #chosen(request: Request, once: boolean): { problem: Problem; choice: Choice } {
-    const problem = problemOf(request, this.#core.build, this.#core.memory.largestBlock);
+    const crew = { threads: this.threads, shared: this.#core.shared };
+    const problem = problemOf(request, this.#core.build, this.#core.memory.largestBlock, crew);
     return { problem, choice: choose(problem, this.#profile, once) };
   }
 
@@ -116,7 +123,9 @@ export async function engineWithPacing(options: EngineOptions | undefined, pacin
   const checked = checkedEngineOptions(options);
   const core = await loadCore(checked);
   const shipped = shippedProfiles.find(({ build }) => build === core.build)!;
-  return new ConvolutionEngine(core, checked.profile ? profileForBuild(checked.profile, core.build) : shipped, pacing);
+  const profile = checked.profile ? profileForBuild(checked.profile, core.build) : shipped;
+  const crew = checked.threads > 1 ? await Crew.start(checked.threads - 1, core, checked.createWorker) : undefined;
+  return new ConvolutionEngine(core, profile, pacing, crew);
 }
 
 /**

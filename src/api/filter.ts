@@ -1,13 +1,12 @@
 import { ConvolutionError } from "../errors.js";
 import type { Choice } from "../planning/choose.js";
-import { panelsOf } from "../planning/panels.js";
 import type { Problem } from "../planning/problem.js";
-import { execute, install, type Installed } from "../runtime/execute.js";
-import { Execution, samplesChanged } from "../runtime/execution.js";
+import { samplesChanged } from "../runtime/execution.js";
 import type { Explanation, Filter, Raster, ResultArray, ResultRaster, RunOptions, Samples, SampleType, ViewArray } from "../types.js";
 import { anyClaims, checkUnclaimed, samplesStretch } from "./claims.js";
 import type { EngineParts } from "./engineParts.js";
 import { JobQueue, type Order } from "./jobs.js";
+import { runnerOf, type Runner } from "./runner.js";
 import type { CheckedRaster } from "./validate/raster.js";
 import type { ImageShape } from "./validate/request.js";
 import { checkedRunOptions, type CheckedRunOptions } from "./validate/runOptions.js";
@@ -42,8 +41,7 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
   readonly explanation: Explanation;
   readonly #engine: EngineParts;
   readonly #leave: () => void;
-  readonly #installed: Installed;
-  readonly #execution: Execution;
+  readonly #runner: Runner;
   readonly #jobs: JobQueue;
   readonly #layout: ImageShape;
   readonly #result: ImageShape;
@@ -51,7 +49,7 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
   #disposed = false;
 
   constructor(problem: Problem, choice: Choice, explanation: Explanation, engine: EngineParts, leave: () => void) {
-    const { memory, routines } = engine.core;
+    const { memory } = engine.core;
     const { request, horizontal, vertical } = problem;
     this.explanation = explanation;
     this.#engine = engine;
@@ -59,10 +57,8 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
     this.#layout = request;
     this.#result = { width: horizontal.count, height: vertical.count, channels: request.channels, sample: request.output.sample };
     this.#views = { source: new View(this.#layout, memory, engine.views), result: new View(this.#result, memory, engine.views) };
-    const programs = panelsOf(choice.plan, problem).problems.map((part) => choice.plan.program(part));
-    this.#installed = install(programs, memory, routines);
-    this.#execution = new Execution(this.#installed, memory, routines);
-    this.#jobs = new JobQueue(this.#execution, engine.turns);
+    this.#runner = runnerOf(choice, problem, engine.core, engine.crew);
+    this.#jobs = new JobQueue(this.#runner, engine.turns);
   }
 
   get source(): ResultRaster<ViewArray<S>> {
@@ -89,7 +85,7 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
     const given = this.#target("run", image, target, source);
     if (anyClaims()) checkUnclaimed({ owner: this, ...this.#stretches(source, given?.checked) });
     const { checked, raster } = given ?? this.#ownTarget(source);
-    execute(this.#execution, source, checked);
+    this.#runner.run(source, checked);
     return raster;
   }
 
@@ -106,7 +102,7 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
     if (this.#disposed) return;
     this.#disposed = true;
     this.#jobs.dispose(disposedError("runAsync"));
-    this.#engine.core.memory.release(this.#installed.address, this.#installed.byteLength);
+    this.#runner.dispose();
     this.#views.source.dispose();
     this.#views.result.dispose();
     this.#leave();
@@ -156,7 +152,7 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
     const targetLater = target && this.#later("target", target.checked);
     const begin = (): (() => Raster) => {
       const { checked, raster } = targetLater ? { checked: targetLater(), raster: target!.raster } : this.#ownTarget(source);
-      this.#execution.begin(sourceLater(), checked);
+      this.#runner.begin(sourceLater(), checked);
       return () => (target?.isView ? this.#views.result.raster : raster);
     };
     return { claim: { owner: this, ...this.#stretches(source, target?.checked) }, options, begin };

@@ -1,8 +1,8 @@
 import { ConvolutionError } from "../errors.js";
-import type { Execution } from "../runtime/execution.js";
 import type { Stepwise, Turns } from "../runtime/turns.js";
 import type { Raster } from "../types.js";
 import { claim, unclaim, type Claim } from "./claims.js";
+import type { Runner } from "./runner.js";
 import type { CheckedRunOptions } from "./validate/runOptions.js";
 
 /** What a filter is asked to do when its turn has come. */
@@ -24,12 +24,12 @@ interface Job extends Order {
 
 /** The jobs of one filter, one after the other, in slices: what begins is the first of them. */
 export class JobQueue implements Stepwise {
-  readonly #execution: Execution;
+  readonly #runner: Runner;
   readonly #turns: Turns;
   readonly #jobs: Job[] = [];
 
-  constructor(execution: Execution, turns: Turns) {
-    this.#execution = execution;
+  constructor(runner: Runner, turns: Turns) {
+    this.#runner = runner;
     this.#turns = turns;
   }
 
@@ -63,36 +63,38 @@ export class JobQueue implements Stepwise {
     const job = this.#jobs[0];
     if (!job) return false;
     try {
-      if (job.result) this.#execution.advance();
+      if (job.result) this.#runner.advance();
       else job.result = job.begin();
     } catch (error) {
       this.#fail(job, error);
       return false;
     }
-    return !this.#execution.done;
+    return !this.#runner.done && !this.#runner.idle;
   }
 
   rest(): boolean {
     const job = this.#jobs[0];
     if (job?.result) this.#report(job, job.result);
-    return this.busy;
+    if (!this.busy || !this.#runner.idle || this.#runner.done) return this.busy;
+    void this.#runner.moved().then(() => this.#turns.add(this));
+    return false;
   }
 
   /** Tells the progress; the caller's function may throw, abort the job, or dispose the filter. */
   #report(job: Job, result: () => Raster): void {
     try {
-      job.options.onProgress?.(this.#execution.progress);
+      job.options.onProgress?.(this.#runner.progress);
     } catch (error) {
       return this.#fail(job, error);
     }
-    if (this.#jobs[0] !== job || !this.#execution.done) return;
+    if (this.#jobs[0] !== job || !this.#runner.done) return;
     this.#leave(job);
     job.resolve(result());
   }
 
   #fail(job: Job, reason: unknown): void {
     if (!this.#jobs.includes(job)) return;
-    if (job.result) this.#execution.abandon();
+    if (job.result) this.#runner.abandon();
     this.#leave(job);
     job.reject(reason);
   }

@@ -1,7 +1,8 @@
 import { ConvolutionError } from "../errors.js";
 import { code as simdCode } from "../generated/simd.js";
-import { EngineMemory } from "../runtime/memory.js";
+import { EngineMemory, sharedMemory } from "../runtime/memory.js";
 import { link, type Routines } from "../runtime/routines.js";
+import { sharedForm } from "../runtime/sharedForm.js";
 import type { Build } from "../types.js";
 import { bytesOfBase64 } from "./base64.js";
 import { failedAnswer } from "./selfTest.js";
@@ -12,6 +13,9 @@ export interface Core {
   build: Build;
   memory: EngineMemory;
   routines: Routines;
+  /** What was linked, for other threads, and whether they can share the memory. */
+  module: WebAssembly.Module;
+  shared: boolean;
 }
 
 /** The default page loads the SIMD binary with the package; the scalar one comes only when it is needed. */
@@ -27,10 +31,10 @@ function hostError(code: "webassembly-missing" | "webassembly-blocked", message:
   return new ConvolutionError(code, message, { expected, received: cause instanceof Error ? cause.message : "none", cause });
 }
 
-async function compile(build: Build): Promise<WebAssembly.Module> {
+async function compile(build: Build, shared: boolean): Promise<WebAssembly.Module> {
   const bytes = bytesOfBase64(await codeOf(build));
   try {
-    return await WebAssembly.compile(bytes);
+    return await WebAssembly.compile(shared ? sharedForm(bytes) : bytes);
   } catch (cause) {
     if (/content security policy|unsafe-eval|\bcsp\b/i.test(String(cause))) {
       const message =
@@ -52,12 +56,11 @@ function answered(routines: Routines, memory: EngineMemory, build: Build): strin
 }
 
 /** @throws ConvolutionError `self-test-failed` with the answer that was wrong */
-async function start(wanted: Build | "auto", module: WebAssembly.Module, limit: number): Promise<Core> {
-  const memory = new EngineMemory(limit);
+async function start(wanted: Build | "auto", module: WebAssembly.Module, memory: EngineMemory, shared: boolean): Promise<Core> {
   const linked = await link(module, memory.memory);
   const build: Build = "missing" in linked || linked.vectorFloats() === 4 ? "simd" : "scalar";
   const failure = "missing" in linked ? linked.missing : wanted !== "auto" && wanted !== build ? `it is a ${build} core` : answered(linked, memory, build);
-  if (failure === undefined) return { build, memory, routines: linked as Routines };
+  if (failure === undefined) return { build, memory, routines: linked as Routines, module, shared };
   const message = `The ${wanted} core fails its known-answer test: ${failure}. Try another build; if you passed a module, compile it from this package's own core.`;
   throw new ConvolutionError("self-test-failed", message, { expected: "the known answers", received: failure });
 }
@@ -71,15 +74,18 @@ export async function loadCore(options: CheckedEngineOptions): Promise<Core> {
   if (typeof WebAssembly !== "object") {
     throw hostError("webassembly-missing", "This host has no WebAssembly, and the package has no other core. Use a current browser or Node 20 and later.");
   }
-  const { build, memoryLimit, module } = options;
-  if (module) return start(build, module, memoryLimit);
+  const { build, memoryLimit, module, threads } = options;
+  if (module) return start(build, module, new EngineMemory(memoryLimit), false);
+  const forAll = threads > 1 ? sharedMemory(memoryLimit) : undefined;
+  const startOwn = async (own: Build): Promise<Core> =>
+    start(own, await compile(own, forAll !== undefined), new EngineMemory(memoryLimit, forAll), forAll !== undefined);
   const simd = WebAssembly.validate(simdProbe);
-  if (build === "scalar" || (build === "auto" && !simd)) return start("scalar", await compile("scalar"), memoryLimit);
+  if (build === "scalar" || (build === "auto" && !simd)) return startOwn("scalar");
   if (!simd) throw hostError("webassembly-missing", 'This host\'s WebAssembly has no SIMD. Use build "auto" or "scalar".');
   try {
-    return await start("simd", await compile("simd"), memoryLimit);
+    return await startOwn("simd");
   } catch (cause) {
     if (build === "simd" || !(cause instanceof ConvolutionError) || cause.code !== "self-test-failed") throw cause;
-    return start("scalar", await compile("scalar"), memoryLimit);
+    return startOwn("scalar");
   }
 }

@@ -52,7 +52,7 @@ export function transparentBound(problem: Problem, { noise = 0 }: MethodError): 
 
 /** The smallest inside weight as a part of Σh; 1 but for the renormalised border. */
 export function leastWeight(problem: Problem): number {
-  return problem.renormalised ? smallestWeight(problem) / problem.analysis.sum : 1;
+  return problem.renormalised ? smallestWeight(problem.whole ?? problem) / problem.analysis.sum : 1;
 }
 
 function weighted(problem: Problem, { relative, absolute }: MethodError): number {

@@ -17,10 +17,17 @@ export function rowStride(bytes: number): number {
 /** Lays blocks one after the other; what it hands out are offsets, so planning needs no memory. */
 export class Arrangement {
   byteLength = 0;
+  readonly #bytesAt = new Map<number, number>();
 
   take(bytes: number): number {
     const offset = this.byteLength;
+    this.#bytesAt.set(offset, bytes);
     this.byteLength += alignedTo(bytes, alignment);
     return offset;
+  }
+
+  /** Another block as large as the one at `offset`. */
+  takeAgain(offset: number): number {
+    return this.take(this.#bytesAt.get(offset)!);
   }
 }

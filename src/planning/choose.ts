@@ -1,9 +1,9 @@
 import { ConvolutionError } from "../errors.js";
 import type { Candidate, HardwareProfile, Method } from "../types.js";
+import { divisionOf, type Division } from "./bands.js";
 import { priceOf, type Prices } from "./cost.js";
 import type { MethodPlan } from "./method.js";
 import { methodNames, variantFor } from "./methods.js";
-import { panelsOf } from "./panels.js";
 import type { Problem } from "./problem.js";
 
 /** A candidate with the numbers that the choice is made by. */
@@ -17,6 +17,7 @@ export interface Choice {
   plan: MethodPlan;
   chosen: Candidate;
   candidates: Candidate[];
+  division: Division;
 }
 
 /** Two costs nearer than a hundredth, or than a microsecond, are a tie: no profile predicts better. */
@@ -25,9 +26,10 @@ const tie = { share: 0.01, milliseconds: 0.001 };
 function price(plan: MethodPlan, problem: Problem, profile: HardwareProfile): Candidate {
   const applies = plan.applicable(problem);
   if (applies !== true) return { method: plan.name, refused: applies };
-  const { problems, work } = panelsOf(plan, problem);
-  const { setup, run, bytes } = work;
   const prices = profile.nanoseconds as Prices;
+  const { blocks, work, threads } = divisionOf(plan, problem, prices);
+  const { setup, run, bytes } = work;
+  const problems = blocks.flat();
   const candidate: Candidate = {
     method: plan.name,
     milliseconds: priceOf(run, prices) / 1e6,
@@ -36,6 +38,7 @@ function price(plan: MethodPlan, problem: Problem, profile: HardwareProfile): Ca
     errorBound: problems.reduce((most, part) => Math.max(most, plan.errorBound(part)), 0),
     arithmetic: [...new Set(problems.map((part) => plan.arithmetic(part)))].join("; "),
   };
+  if (problem.crew.threads > 1) candidate.threads = threads;
   if (plan.terms) candidate.terms = plan.terms(problem);
   if (bytes <= problem.bytesAvailable) return candidate;
   return { ...candidate, refused: `It needs ${bytes} bytes of engine memory, ${Math.floor(problem.bytesAvailable)} are to be had.` };
@@ -64,18 +67,25 @@ export function choose(problem: Problem, profile: HardwareProfile, once: boolean
   });
   const candidates = all.map(({ candidate }) => candidate);
   const { method } = problem.request;
-  if (method !== "auto") return { ...forced(all, method, problem), candidates };
+  const outcome = ({ plan, candidate }: Priced): Choice => ({
+    plan,
+    chosen: candidate,
+    candidates,
+    division: divisionOf(plan, problem, profile.nanoseconds as Prices),
+  });
+  if (method !== "auto") return outcome(forced(all, method, problem));
   const open = all.filter(({ candidate }) => candidate.refused === undefined);
   if (open.length === 0) throw outOfMemory(candidates, problem);
   const close = open.filter(({ candidate }) => candidate.errorBound! <= 1);
   const integers = problem.request.output.sample !== "f32" && close.length > 0;
   const winner = (integers ? close : open).reduce((a, b) => better(a, b, once));
-  return { plan: winner.plan, chosen: winner.candidate, candidates };
+  return outcome(winner);
 }
 
-function forced(all: Priced[], method: Method, problem: Problem): { plan: MethodPlan; chosen: Candidate } {
-  const { plan, candidate } = all.find(({ plan: { name } }) => name === method)!;
-  if (candidate.refused === undefined) return { plan, chosen: candidate };
+function forced(all: Priced[], method: Method, problem: Problem): Priced {
+  const asked = all.find(({ plan: { name } }) => name === method)!;
+  const { candidate } = asked;
+  if (candidate.refused === undefined) return asked;
   if (candidate.bytes !== undefined) throw outOfMemory([candidate], problem);
   const others = all.filter((other) => other.candidate.refused === undefined).map((other) => other.plan.name);
   throw new ConvolutionError("method-not-applicable", candidate.refused, { expected: ["auto", ...others], received: method });

@@ -3,8 +3,9 @@ import type { Choice } from "./choose.js";
 import type { Problem } from "./problem.js";
 
 /** Columns of the printed table: a title and what stands below it. */
-const columns: readonly [title: string, cell: (candidate: Candidate) => string][] = [
+const allColumns: readonly [title: string, cell: (candidate: Candidate) => string][] = [
   ["method", ({ method, terms }) => (terms !== undefined && terms > 1 ? `${method} (${terms} terms)` : method)],
+  ["threads", ({ threads }) => (threads === undefined ? "" : String(threads))],
   ["each run", ({ milliseconds }) => (milliseconds === undefined ? "" : `${threeDigits(milliseconds)} ms`)],
   ["set-up", ({ setupMilliseconds }) => (setupMilliseconds === undefined ? "" : `${threeDigits(setupMilliseconds)} ms`)],
   ["memory", ({ bytes }) => (bytes === undefined ? "" : memory(bytes))],
@@ -22,6 +23,7 @@ function memory(bytes: number): string {
 
 /** The first column is set left, the others right; a refusal takes the rest of its line. */
 function printed(explanation: Explanation): string {
+  const columns = allColumns.filter(([, cell]) => explanation.candidates.some((candidate) => cell(candidate) !== ""));
   const open = explanation.candidates.filter(({ refused }) => refused === undefined);
   const cells = [columns.map(([title]) => title), ...open.map((candidate) => columns.map(([, cell]) => cell(candidate)))];
   const widths = columns.map((_, c) => Math.max(...cells.map((row) => row[c]!.length)));
@@ -40,7 +42,9 @@ function printed(explanation: Explanation): string {
 /** Why the method was taken, in one sentence. */
 function reason(choice: Choice, problem: Problem, once: boolean): string {
   const { chosen, candidates } = choice;
-  const what = `${chosen.method} for ${problem.horizontal.taps}×${problem.vertical.taps} taps on ${problem.horizontal.count}×${problem.vertical.count}×${problem.channels} results`;
+  const threads = (chosen.threads ?? 1) > 1 ? ` on ${chosen.threads} threads` : "";
+  const what = `${chosen.method}${threads} for ${problem.horizontal.taps}×${problem.vertical.taps} taps on ${problem.horizontal.count}×${problem.vertical.count}×${problem.channels} results`;
+  if (problem.like) return `${what}: the method that the filter was prepared with.`;
   if (problem.request.method !== "auto") return `${what}: asked for by name.`;
   const time = (candidate: Candidate): number => candidate.milliseconds! + (once ? candidate.setupMilliseconds! : 0);
   const others = candidates.filter((candidate) => candidate.refused === undefined && candidate !== chosen);
@@ -64,6 +68,7 @@ export function explanationOf(choice: Choice, problem: Problem, profile: Hardwar
     because: reason(choice, problem, once),
     errorBound: chosen.errorBound!,
     bytes: chosen.bytes!,
+    threads: chosen.threads ?? 1,
     milliseconds: chosen.milliseconds!,
     setupMilliseconds: chosen.setupMilliseconds!,
     build,

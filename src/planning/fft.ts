@@ -2,7 +2,7 @@ import * as field from "../generated/record.js";
 import { transformError } from "../math/rounding.js";
 import { rootsOfUnity } from "../math/rootsOfUnity.js";
 import { radicesOf } from "../math/smoothNumbers.js";
-import type { Step, Table } from "../runtime/program.js";
+import type { Lane, Program, Step, Table } from "../runtime/program.js";
 import { integerResults, leastWeight, outputBound, underflow, type MethodError } from "./accuracy.js";
 import { frameCounts, frameOf, plainStep, programOf, writing, type Frame } from "./frame.js";
 import type { MethodPlan } from "./method.js";
@@ -27,7 +27,12 @@ interface FftFrame extends Frame {
   markStride: number;
   markCounts: number;
   markRow: number;
+  /** The further threads' own blocks. */
+  further: OwnBlocks[];
 }
+
+/** What each thread needs of its own: blocks that one step fills and reads again. */
+type OwnBlocks = Record<"record" | "intake" | "keep" | "outlet" | "keepRow" | "entered" | "result" | "scratch" | "markRow", number>;
 
 /** With the renormalised border the error is divided by the inside weight: a smaller share than this is no longer worth a transform. */
 const leastShare = 0.001;
@@ -37,8 +42,9 @@ const pointsPerCall = 1_500_000;
 
 const tilings = new WeakMap<Problem, Tiling>();
 
-function tilingOf(problem: Problem): Tiling | undefined {
-  let tiling = tilings.get(problem);
+function tilingOf(given: Problem): Tiling | undefined {
+  const problem = given.together?.alone ?? given;
+  let tiling = tilings.get(problem) ?? (problem.like && tilingOf(problem.like));
   if (!tiling) {
     tiling = planTiles(problem, (candidate) => frameFor(problem, candidate).arrangement.byteLength <= problem.bytesAvailable);
     if (tiling) tilings.set(problem, tiling);
@@ -71,7 +77,7 @@ function frameFor(problem: Problem, tiling: Tiling): FftFrame {
   const { arrangement } = base;
   const markStride = markRowBytes(problem);
   const markRows = marksNeeded(problem) ? tiling.rows * tiling.stripsPerGroup : 0;
-  return {
+  const layout: FftFrame = {
     ...base,
     tiling,
     markStride,
@@ -88,6 +94,46 @@ function frameFor(problem: Problem, tiling: Tiling): FftFrame {
     marks: arrangement.take(markRows * markStride),
     markCounts: arrangement.take(markRows * 4),
     markRow: arrangement.take(markStride),
+    further: [],
+  };
+  for (let thread = 1; thread < (problem.together?.threads ?? 1); thread++) layout.further.push(ownBlocksAgain(layout));
+  return layout;
+}
+
+function ownBlocks({ record, intake, outlet, offsets, entered, result, scratch, markRow }: FftFrame): OwnBlocks {
+  const { keepRow } = offsets;
+  return { record, intake: intake.offset, keep: intake.keepOffset, outlet: outlet.offset, keepRow, entered, result, scratch, markRow };
+}
+
+function ownBlocksAgain(layout: FftFrame): OwnBlocks {
+  const own = Object.entries(ownBlocks(layout)).map(([name, offset]) => [name, layout.arrangement.takeAgain(offset)]);
+  return Object.fromEntries(own) as OwnBlocks;
+}
+
+/** The record again, with the further thread's own blocks in it. */
+function furtherRecord({ data, addresses }: Table, layout: FftFrame, blocks: OwnBlocks): Table {
+  const mine = ownBlocks(layout);
+  const places = { intake: field.STAGING, keep: field.KEEP_STAGING, outlet: field.OUTPUT, keepRow: field.KEEP_ROW, entered: field.ENTERED };
+  const scratch = { result: field.RESULT, scratch: field.ROW_SCRATCH, markRow: field.MARK_ROW };
+  const integers = data.slice() as Int32Array<ArrayBuffer>;
+  for (const [name, place] of Object.entries({ ...places, ...scratch }) as [keyof OwnBlocks, number][]) {
+    const pointers = addresses as readonly number[];
+    if (pointers.includes(place >> 2) && integers[place >> 2] === mine[name]) integers[place >> 2] = blocks[name];
+  }
+  return { offset: blocks.record, data: integers, addresses: addresses! };
+}
+
+const laneOf = ({ record, intake, keep, outlet }: OwnBlocks): Lane => ({ record, intake, keep, outlet });
+
+/** A program that several threads work on together; as it is where there is one. */
+function withLanes(program: Program, layout: FftFrame, phases: number[]): Program {
+  if (layout.further.length === 0) return program;
+  const record = program.tables[0]!;
+  return {
+    ...program,
+    tables: [...program.tables, ...layout.further.map((blocks) => furtherRecord(record, layout, blocks))],
+    lanes: [ownBlocks(layout), ...layout.further].map(laneOf),
+    phases,
   };
 }
 
@@ -157,28 +203,42 @@ function leaveSteps(problem: Problem, layout: FftFrame, strip: number): Step[] {
   return steps;
 }
 
+/** Each thread takes at least this many calls of a phase, so that all end at about the same time. */
+const callsOfEach = 4;
+
 /** Floats of columns and groups of rows that one call transforms. */
 function grains(problem: Problem, tiling: Tiling): { columns: number; groups: number } {
+  const shareOf = (units: number): number => (problem.together ? units / (problem.together.threads * callsOfEach) : Infinity);
+  const columns = unitsPerCall(5 * tiling.rows * tiling.pairs, 16);
+  const groups = unitsPerCall(12 * vectorFloats(problem) * tiling.tiles * tiling.columns * tiling.pairs, 1);
   return {
-    columns: unitsPerCall(5 * tiling.rows * tiling.pairs, 16),
-    groups: unitsPerCall(12 * vectorFloats(problem) * tiling.tiles * tiling.columns * tiling.pairs, 1),
+    columns: Math.min(columns, Math.max(16, 16 * Math.ceil(shareOf(problem.horizontal.count) / 16))),
+    groups: Math.min(groups, Math.max(1, Math.ceil(shareOf(tiling.rows / vectorFloats(problem))))),
   };
 }
 
-/** Enter, columns, rows, columns back, leave: group after group of strips. */
-function runSteps(problem: Problem, layout: FftFrame): Step[] {
+/** Enter, columns, rows, columns back, leave: group after group of strips. Each is a phase, whose steps do not depend on each other. */
+function runPhases(problem: Problem, layout: FftFrame): Step[][] {
   const { tiling } = layout;
   const { columns, groups } = grains(problem, tiling);
-  const steps: Step[] = [];
+  const phases: Step[][] = [];
   for (let group = 0; group < tiling.groups; group++) {
     const strips = Array.from({ length: tiling.stripsPerGroup }, (_, k) => group * tiling.stripsPerGroup + k);
-    steps.push(...strips.flatMap((strip) => enterSteps(problem, layout, strip)));
-    steps.push(...chunks("forwardColumns", roundedToFour(problem.horizontal.extended), columns));
-    steps.push(...chunks("filterRows", tiling.rows / vectorFloats(problem), groups));
-    steps.push(...chunks("inverseColumns", roundedToFour(problem.horizontal.count), columns));
-    steps.push(...strips.flatMap((strip) => leaveSteps(problem, layout, strip)));
+    phases.push(
+      strips.flatMap((strip) => enterSteps(problem, layout, strip)),
+      chunks("forwardColumns", roundedToFour(problem.horizontal.extended), columns),
+      chunks("filterRows", tiling.rows / vectorFloats(problem), groups),
+      chunks("inverseColumns", roundedToFour(problem.horizontal.count), columns),
+      strips.flatMap((strip) => leaveSteps(problem, layout, strip)),
+    );
   }
-  return steps;
+  return phases;
+}
+
+/** The number of each phase's first step. */
+function startsOf(phases: Step[][]): number[] {
+  let start = 0;
+  return phases.map((steps) => (start += steps.length) - steps.length);
 }
 
 /** How many steps those are. */
@@ -238,6 +298,8 @@ export const fft: MethodPlan = {
 
   errorBound: (problem) => outputBound(problem, error(problem)),
 
+  phases: (problem) => 5 * tilingOf(problem)!.groups,
+
   arithmetic(problem) {
     const { rows, columns } = tilingOf(problem)!;
     return `float32 FFT, tiles of ${columns}×${rows}${roundable(problem) ? ", rounded to the exact integers" : ""}`;
@@ -246,7 +308,8 @@ export const fft: MethodPlan = {
   program(problem) {
     const layout = frame(problem);
     const { tiling } = layout;
-    return programOf(problem, layout, {
+    const phases = runPhases(problem, layout);
+    const program = programOf(problem, layout, {
       fields(job) {
         job
           .pointer(field.TAPS, layout.taps)
@@ -278,9 +341,10 @@ export const fft: MethodPlan = {
         ...transformTables(tiling.columns, layout.rowPlan, layout.rowTurns),
       ],
       setup: setupSteps(problem, tiling),
-      steps: runSteps(problem, layout),
+      steps: phases.flat(),
       error: error(problem),
       round: roundable(problem),
     });
+    return withLanes(program, layout, startsOf(phases));
   },
 };

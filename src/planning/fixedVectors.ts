@@ -84,7 +84,8 @@ function findVectors(problem: Problem): FixedVectors | string {
   const { column, row } = term;
   const dropped = 255 * Math.abs(output.gain) * problem.analysis.separation().residuals[1]!;
   let best: FixedVectors | undefined;
-  for (const split of splits({ column, row: scaledBy(row, output.gain) }, output.offset, dropped)) if (split && (!best || split.error < best.error)) best = split;
+  for (const split of splits({ column, row: scaledBy(row, output.gain) }, output.offset, dropped))
+    if (split && (!best || split.error < best.error)) best = split;
   if (!best) return "The taps do not fit into 16 bits.";
   if (best.error > tolerance) return `Taps and column sums of 16 bits would be off by ${best.error.toPrecision(2)} of a level, ${tolerance} is allowed.`;
   if (best.error > 0 && exactInFloats(column, absoluteSum(integersOf(row) ?? Float64Array.of(Infinity)) * 255))

@@ -143,6 +143,7 @@ export function frameOf(problem: Problem, mostRows: (affordable: number) => numb
   const outlet: Outlet = {
     offset: arrangement.take(stagedRows * outputRowBytes + 16),
     sample: request.output.sample,
+    firstRow: problem.row,
     firstSample: problem.column * channels,
     rowSamples: resultFloats,
   };

@@ -24,6 +24,8 @@ export interface MethodPlan {
   errorBound(problem: Problem): number;
   /** What decides the bytes of the result, in words. */
   arithmetic(problem: Problem): string;
+  /** Phases of a run, where several threads can work on one program together: see Program. Other methods are cut into bands. */
+  phases?(problem: Problem): number;
   /** Separable terms that are summed, where the method has any. */
   terms?(problem: Problem): number;
   program(problem: Problem): Program;

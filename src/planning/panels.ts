@@ -1,7 +1,6 @@
-import type { Program } from "../runtime/program.js";
 import type { Counts, Operation } from "./cost.js";
 import type { MethodPlan, Work } from "./method.js";
-import type { Axis, Problem } from "./problem.js";
+import { cutAxis, type Problem } from "./problem.js";
 
 /**
  * Engine memory that a filter takes without need, 64 MiB. Rings and planes are as wide as the image; where they would take more, results
@@ -18,13 +17,8 @@ export interface Panels {
   work: Work;
 }
 
-function cutAxis(axis: Axis, start: number, count: number): Axis {
-  const extended = count + axis.taps - 1;
-  return { ...axis, count, first: axis.first + start, extended, map: axis.map.subarray(start, start + extended) };
-}
-
 function panel(problem: Problem, start: number, count: number, bytesAvailable: number): Problem {
-  return { ...problem, column: start, horizontal: cutAxis(problem.horizontal, start, count), bytesAvailable };
+  return { ...problem, whole: problem.whole ?? problem, column: start, horizontal: cutAxis(problem.horizontal, start, count), bytesAvailable };
 }
 
 /** The first panel's work stands for all, being of one width; the memory is that of the neediest: one inside stages more columns than one at the edge. */
@@ -82,9 +76,4 @@ export function panelsOf(plan: MethodPlan, problem: Problem): Panels {
   if (!known.has(problem)) known.set(problem, new Map());
   known.get(problem)!.set(plan, panels);
   return panels;
-}
-
-/** Programs of all panels, left to right. */
-export function programsOf(plan: MethodPlan, problem: Problem): Program[] {
-  return panelsOf(plan, problem).problems.map((part) => plan.program(part));
 }

@@ -59,6 +59,8 @@ export interface Problem {
   vertical: Axis;
   /** Result column of the whole where these results begin: 0 but for a panel (planning/panels). */
   column: number;
+  /** And the row: 0 but for a band (planning/bands). */
+  row: number;
   channels: number;
   /** Channels that are colours; the others are alpha. */
   colours: number;
@@ -68,7 +70,23 @@ export interface Problem {
   build: Build;
   /** Bytes that a filter may still take from the engine. */
   bytesAvailable: number;
+  /** Threads that may work on it. */
+  crew: Crew;
+  /** Where taps were replaced, the problem with the taps before: tiles are taken over from it. */
+  like?: Problem;
+  /** Of a part (planning/panels, planning/bands) the problem that it was cut from: what decides bytes of results is decided for the whole. */
+  whole?: Problem;
+  /** Where several threads work on one program together: how many, and the problem as one thread has it, which decides the tiles. */
+  together?: { threads: number; alone: Problem };
 }
+
+/** The threads of an engine, the calling one included, and whether they share its memory. */
+export interface Crew {
+  threads: number;
+  shared: boolean;
+}
+
+const oneThread: Crew = { threads: 1, shared: false };
 
 const indexRule = (rule: BorderRule): IndexRule => (typeof rule === "object" || rule === "zero" || rule === "renormalised" ? "outside" : rule);
 
@@ -91,7 +109,7 @@ function axis(request: Request, rule: BorderRule, samples: number, taps: number,
   return { rule, count: cut.count, taps, first, extended, anchor, map: indexMap(indexRule(rule), first, extended, samples) };
 }
 
-export function problemOf(request: Request, build: Build, bytesAvailable: number): Problem {
+export function problemOf(request: Request, build: Build, bytesAvailable: number, crew = oneThread): Problem {
   const { kernel, region } = request;
   const vertical = axis(request, request.rows, request.height, kernel.height, kernel.origin.y, { start: region.y, count: region.height });
   const horizontal = axis(request, request.columns, request.width, kernel.width, kernel.origin.x, { start: region.x, count: region.width });
@@ -102,13 +120,21 @@ export function problemOf(request: Request, build: Build, bytesAvailable: number
     horizontal,
     vertical,
     column: 0,
+    row: 0,
     channels: request.channels,
     colours: request.alpha === "none" ? request.channels : request.channels - 1,
     workingFull: request.light === "linear" ? 1 : sampleFacts[request.sample].full,
     renormalised: request.rows === "renormalised" || request.columns === "renormalised",
     build,
     bytesAvailable,
+    crew,
   };
+}
+
+/** Results start … start + count − 1 of an axis. */
+export function cutAxis(axis: Axis, start: number, count: number): Axis {
+  const extended = count + axis.taps - 1;
+  return { ...axis, count, first: axis.first + start, extended, map: axis.map.subarray(start, start + extended) };
 }
 
 /** The taps in correlation order. */

@@ -11,16 +11,27 @@ export interface Installed {
   byteLength: number;
 }
 
+/** Bytes that programs need which take turns in one block. */
+export function blockBytesOf(programs: readonly Program[]): number {
+  return programs.reduce((most, program) => Math.max(most, program.byteLength), 0);
+}
+
 /** Takes memory for programs; a single one is set up here and now. */
 export function install(programs: readonly Program[], memory: EngineMemory, routines: Routines): Installed {
-  const byteLength = programs.reduce((most, program) => Math.max(most, program.byteLength), 0);
+  const byteLength = blockBytesOf(programs);
   const address = memory.take(byteLength);
+  const installed = { programs, address, byteLength };
+  setUpAlone(installed, memory, routines);
+  return installed;
+}
+
+/** Sets a single program up; several do it themselves at each run. */
+export function setUpAlone({ programs, address }: Installed, memory: EngineMemory, routines: Routines): void {
   if (programs.length === 1) setUp(programs[0]!, address, memory, routines);
-  return { programs, address, byteLength };
 }
 
 /** Writes a program's tables and makes its set-up calls. */
-function setUp(program: Program, address: number, memory: EngineMemory, routines: Routines): void {
+export function setUp(program: Program, address: number, memory: EngineMemory, routines: Routines): void {
   memory.writeTables(program.tables, address);
   for (const step of program.setup) routines[step.routine](address + program.record, step.from, step.to, step.strip);
 }

@@ -92,25 +92,33 @@ export class Execution {
     else if (this.#step === steps.length) this.#beginProgram(this.#program + 1);
   }
 
+  /** One step of the only program, out of turn: for threads that take steps from a list. Requires `begin`, and that what the step needs is done. */
+  perform(step: number): void {
+    const program = this.#installed.programs[0]!;
+    this.#execute(program, program.steps[step]!);
+  }
+
   #writeTables(program: Program): void {
     this.#memory.writeTables(program.tables, this.#installed.address);
     this.#placeRows(program);
   }
 
   /** Tells the core where it reads and writes in place; 0 where rows are staged. */
-  #placeRows({ record, intake, outlet }: Program): void {
+  #placeRows({ record, lanes, intake, outlet }: Program): void {
     const source = this.#source!;
     const target = this.#target!;
     const { BYTES_PER_ELEMENT: sourceBytes } = source.data;
     const { BYTES_PER_ELEMENT: targetBytes } = target.data;
-    const sourceStart = intake.firstColumn * intake.channels * sourceBytes;
+    const sourceStart = (intake.firstColumn * intake.channels - (source.firstRow ?? 0) * source.stride) * sourceBytes;
     const sourceRows = this.#sourceAddress === undefined ? 0 : this.#sourceAddress + sourceStart;
-    const targetRows = this.#targetAddress === undefined ? 0 : this.#targetAddress + outlet.firstSample * targetBytes;
-    const job = this.#installed.address + record;
-    this.#memory.storeInteger(job + SOURCE_ROWS, sourceRows);
-    this.#memory.storeInteger(job + SOURCE_ROW_STRIDE, source.stride * sourceBytes);
-    this.#memory.storeInteger(job + RESULT_ROWS, targetRows);
-    this.#memory.storeInteger(job + RESULT_ROW_STRIDE, target.stride * targetBytes);
+    const targetRows = this.#targetAddress === undefined ? 0 : this.#targetAddress + (outlet.firstRow * target.stride + outlet.firstSample) * targetBytes;
+    for (let lane = 0; lane < (lanes?.length ?? 1); lane++) {
+      const job = this.#installed.address + (lanes?.[lane]!.record ?? record);
+      this.#memory.storeInteger(job + SOURCE_ROWS, sourceRows);
+      this.#memory.storeInteger(job + SOURCE_ROW_STRIDE, source.stride * sourceBytes);
+      this.#memory.storeInteger(job + RESULT_ROWS, targetRows);
+      this.#memory.storeInteger(job + RESULT_ROW_STRIDE, target.stride * targetBytes);
+    }
   }
 
   /** Arrays in the memory lie where they lay; others may have been taken away between two steps. */

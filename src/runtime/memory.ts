@@ -10,6 +10,25 @@ export const mostBytes = 65536 * pageBytes - pageBytes;
 /** The first bytes stay empty: 0 stands for "no table" in the core. */
 const firstAddress = 64;
 
+/** Pages of the largest memory; a core that is linked with a shared one must name a maximum (runtime/sharedForm), and this is it. */
+export const mostPages = 65536;
+
+/**
+ * A memory that threads share. Its room is reserved at once, which not every host can do for all that can be addressed: then the half, and so on.
+ * Nothing where the host lets nobody share memory: a page that is not cross-origin isolated, for one.
+ */
+export function sharedMemory(limit: number): WebAssembly.Memory | undefined {
+  if (typeof SharedArrayBuffer !== "function") return undefined;
+  for (let maximum = Math.min(mostPages, Math.ceil(limit / pageBytes) + 1); maximum > 1; maximum = Math.floor(maximum / 2)) {
+    try {
+      return new WebAssembly.Memory({ initial: 1, maximum, shared: true });
+    } catch {
+      continue;
+    }
+  }
+  return undefined;
+}
+
 interface Block {
   address: number;
   byteLength: number;
@@ -35,9 +54,9 @@ export class EngineMemory {
   /** The buffers that the memory had: shared ones that it has outgrown still show it. */
   readonly #buffers = new WeakSet<ArrayBufferLike>();
 
-  constructor(limit: number) {
+  constructor(limit: number, memory = new WebAssembly.Memory({ initial: 1 })) {
     this.limit = limit;
-    this.memory = new WebAssembly.Memory({ initial: 1 });
+    this.memory = memory;
     this.#buffer = this.memory.buffer;
     this.#bytes = new Uint8Array(this.#buffer);
     this.#words = new Uint16Array(this.#buffer);

@@ -67,9 +67,18 @@ export interface Intake {
 export interface Outlet {
   offset: number;
   sample: SampleType;
-  /** Where in a row of the target they go, and how many there are. */
+  /** The target's row where row 0 goes, where in a row samples go, and how many there are. */
+  firstRow: number;
   firstSample: number;
   rowSamples: number;
+}
+
+/** What one thread has to itself where several work on one program: its record, and where its rows are staged. */
+export interface Lane {
+  record: number;
+  intake: number;
+  keep: number;
+  outlet: number;
 }
 
 /** A plan as data: what stands in memory, and the calls to make. Nothing here depends on where the memory lies. */
@@ -82,4 +91,8 @@ export interface Program {
   steps: Step[];
   intake: Intake;
   outlet: Outlet;
+  /** Where several threads may work on it together: a lane for each. */
+  lanes?: readonly Lane[];
+  /** And the steps that begin a phase: those of one phase do not depend on each other, and need all of the phases before. */
+  phases?: readonly number[];
 }

@@ -3,7 +3,10 @@ import type { EngineMemory } from "./memory.js";
 import type { Program, RowSpan } from "./program.js";
 
 /** Samples and the distance of their rows: all that a run needs of a raster. */
-export type Plane = Required<Pick<Raster, "data" | "stride">>;
+export interface Plane extends Required<Pick<Raster, "data" | "stride">> {
+  /** The raster's row that lies at the start, where it is not the first. */
+  firstRow?: number;
+}
 
 /**
  * Brings rows of one program between arrays and the memory. The parts of an array that were copied once are remembered with it, so that the
@@ -39,7 +42,7 @@ export class RowTraffic {
   }
 
   /** Stages source rows: neighbours in one copy where they lie side by side in both places. */
-  stage({ data, stride }: Plane, rows: RowSpan, address: number): void {
+  stage({ data, stride, firstRow = 0 }: Plane, rows: RowSpan, address: number): void {
     const { firstColumn, columns, channels, rowMap } = this.#program.intake;
     const rowSamples = columns * channels;
     if (rowSamples === 0) return;
@@ -48,7 +51,7 @@ export class RowTraffic {
       const row = rowMap[rows.first + k]!;
       let run = 1;
       if (stride === rowSamples) while (k + run < rows.count && row >= 0 && rowMap[rows.first + k + run] === row + run) run++;
-      if (row >= 0) this.#memory.stage(this.#part(data, row * stride + firstColumn * channels, run * rowSamples), address + k * rowBytes);
+      if (row >= 0) this.#memory.stage(this.#part(data, (row - firstRow) * stride + firstColumn * channels, run * rowSamples), address + k * rowBytes);
       k += run;
     }
   }
@@ -56,11 +59,12 @@ export class RowTraffic {
   /** Takes result rows out. */
   takeOut(target: Plane, rows: RowSpan, address: number): void {
     const { data, stride } = target;
-    const { firstSample, rowSamples } = this.#program.outlet;
-    if (stride === rowSamples) return data.set(this.#window(data, rows.count, rows.count * rowSamples, address), rows.first * stride);
+    const { firstRow, firstSample, rowSamples } = this.#program.outlet;
+    const first = firstRow + rows.first;
+    if (stride === rowSamples) return data.set(this.#window(data, rows.count, rows.count * rowSamples, address), first * stride);
     const rowBytes = rowSamples * data.BYTES_PER_ELEMENT;
     for (let k = 0; k < rows.count; k++) {
-      data.set(this.#window(data, -1 - k, rowSamples, address + k * rowBytes), (rows.first + k) * stride + firstSample);
+      data.set(this.#window(data, -1 - k, rowSamples, address + k * rowBytes), (first + k) * stride + firstSample);
     }
   }
 

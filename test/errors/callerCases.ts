@@ -41,6 +41,11 @@ export const namesAndNumbers: Pick<Record<ErrorCode, ErrorCase[]>, "unknown-opti
     { title: "an option of a kernel", act: () => kernel([[1]], untyped({ orign: { x: 0, y: 0 } })), says: ["orign", "origin"] },
   ],
   "unknown-value": [
+    {
+      title: "a createWorker that is no function",
+      act: () => createEngine(untyped({ threads: 2, createWorker: "worker.js" })),
+      says: ["createWorker", "string"],
+    },
     { title: "a border rule", act: convolve({ border: "replicat" }), says: ["replicat", '"replicate"'] },
     { title: "a border rule of one axis", act: convolve({ border: { rows: "periodical" } }), says: ['"periodic"'] },
     { title: "an extent", act: convolve({ extent: "ful" }), says: ['"full"'] },
@@ -60,8 +65,13 @@ export const namesAndNumbers: Pick<Record<ErrorCode, ErrorCase[]>, "unknown-opti
     { title: "an offset in words", act: convolve({ output: { offset: "128" } }), says: ["offset", "128"] },
     { title: "a memory limit below zero", act: () => createEngine({ memoryLimit: -1 }), says: ["-1"] },
     { title: "a memory limit that is no number", act: () => createEngine({ memoryLimit: Number.NaN }), says: ["NaN"] },
+    ...[0, -1, 1.5, 1e9, Number.NaN, Infinity, "2", 65].map((threads) => ({
+      title: `${typeof threads === "string" ? `"${threads}"` : threads} threads`,
+      act: () => createEngine(untyped({ threads })),
+      says: ["threads", String(threads), "1…64"],
+    })),
   ],
-  "not-supported": [{ title: "more than one thread", act: () => createEngine(untyped({ threads: 4 })), says: ["threads", "4"] }],
+  "not-supported": [{ title: "a build with fused multiply–add", act: () => createEngine(untyped({ build: "relaxed-simd" })), says: ["relaxed-simd"] }],
 };
 
 const target = (change: object) => (bench: Bench) =>

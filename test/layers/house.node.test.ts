@@ -86,8 +86,10 @@ describe("the house is as drawn", () => {
     expect(bags.map(({ path }) => path)).toEqual([]);
   });
 
-  test("importing the library does nothing", () => {
-    expect(library.flatMap(loadTimeEffects)).toEqual([]);
+  test("importing the library does nothing; the script of a worker listens, and nobody imports it", () => {
+    const script = "src/runtime/workers/worker.ts";
+    expect(library.flatMap(loadTimeEffects).map((found) => found.split(":")[0])).toEqual([script]);
+    expect(library.flatMap(importsOf).filter(({ to }) => to === script)).toEqual([]);
     expect(loadTimeEffects(parse("src/index.ts", "register();"))).toEqual(["src/index.ts:1"]);
   });
 

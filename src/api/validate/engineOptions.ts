@@ -1,8 +1,8 @@
-import { ConvolutionError } from "../../errors.js";
+import { ConvolutionError, shown } from "../../errors.js";
 import { checkedNumber, checkOptionNames, chosenWord } from "../../kernels/options.js";
 import { operationNames } from "../../planning/cost.js";
 import { mostBytes, pageBytes } from "../../runtime/memory.js";
-import type { Build, HardwareProfile } from "../../types.js";
+import type { Build, EngineOptions, HardwareProfile } from "../../types.js";
 
 /** Checked options of `createEngine`. */
 export interface CheckedEngineOptions {
@@ -10,21 +10,29 @@ export interface CheckedEngineOptions {
   memoryLimit: number;
   profile: HardwareProfile | undefined;
   module: WebAssembly.Module | undefined;
+  threads: number;
+  createWorker: EngineOptions["createWorker"];
 }
 
-const notYet: Record<string, string> = {
-  threads: "This release runs on the calling thread. Leave threads out.",
-  createWorker: "This release runs on the calling thread. Leave createWorker out.",
-};
+/** More threads than this are refused: no image has work for them, and each takes memory. */
+const mostThreads = 64;
+
+/** A whole number of threads. */
+function checkedThreads(value: unknown): number {
+  if (value === undefined) return 1;
+  if (Number.isInteger(value) && (value as number) >= 1 && (value as number) <= mostThreads) return value as number;
+  const expected = `a whole number 1…${mostThreads}`;
+  const message = `createEngine: threads is ${shown(value)}. Needed: ${expected}, the calling thread included. Use navigator.hardwareConcurrency or less.`;
+  throw new ConvolutionError("invalid-number", message, { expected, received: value });
+}
+
+function checkedCreateWorker(value: unknown): EngineOptions["createWorker"] {
+  if (value === undefined || typeof value === "function") return value as EngineOptions["createWorker"];
+  const message = `createEngine: createWorker is ${typeof value}. Needed: a function that returns a new Worker of this package's worker script.`;
+  throw new ConvolutionError("unknown-value", message, { expected: "a function", received: typeof value });
+}
 
 function refuseNotYet(options: Record<string, unknown>): void {
-  for (const [name, advice] of Object.entries(notYet)) {
-    if (options[name] === undefined) continue;
-    throw new ConvolutionError("not-supported", `createEngine: option ${name} (${String(options[name])}) is not supported. ${advice}`, {
-      expected: "no such option",
-      received: options[name],
-    });
-  }
   if (options["build"] !== "relaxed-simd") return;
   const message = 'createEngine: build "relaxed-simd" is not supported. Use "auto", "simd" or "scalar".';
   throw new ConvolutionError("not-supported", message, { expected: ["auto", "simd", "scalar"], received: "relaxed-simd" });
@@ -47,6 +55,8 @@ export function checkedEngineOptions(given: unknown): CheckedEngineOptions {
     memoryLimit: options["memoryLimit"] === undefined ? mostBytes : checkedNumber("createEngine", "memoryLimit", options["memoryLimit"], limit),
     profile: options["profile"] === undefined ? undefined : checkedProfile(options["profile"]),
     module: module as WebAssembly.Module | undefined,
+    threads: checkedThreads(options["threads"]),
+    createWorker: checkedCreateWorker(options["createWorker"]),
   };
 }
 

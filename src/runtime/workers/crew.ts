@@ -1,0 +1,151 @@
+import type { EngineWorker } from "../../types.js";
+import type { EngineMemory } from "../memory.js";
+import { keepsProcess, listenTo, nodeThreads } from "./ports.js";
+import type { FromWorker, SentBand, ToWorker } from "./protocol.js";
+
+/** Workers that have not answered by then do not hold an engine up: they may still come later. */
+const startMilliseconds = 4000;
+
+/** One worker. */
+export class Hand {
+  readonly worker: EngineWorker;
+  ready = false;
+  gone = false;
+  /** Settles when the worker is known to have ended; never where the host does not tell. */
+  readonly ended: Promise<void>;
+  readonly confirm: () => void;
+
+  constructor(worker: EngineWorker) {
+    this.worker = worker;
+    let confirm = (): void => {};
+    this.ended = new Promise((resolve) => (confirm = resolve));
+    this.confirm = confirm;
+  }
+
+  post(message: ToWorker, transfer: Transferable[] = []): void {
+    this.worker.postMessage(message, transfer);
+  }
+
+  end(): void {
+    this.gone = true;
+    const ending = this.worker.terminate();
+    if (ending instanceof Promise) void ending.then(this.confirm, this.confirm);
+  }
+}
+
+/** What workers link: a core, and its memory where they share it. */
+interface Linked {
+  module: WebAssembly.Module;
+  memory: EngineMemory;
+  shared: boolean;
+}
+
+/** Who wants to know what workers say and when one is lost. */
+export interface Foreman {
+  readonly assignment: ToWorker | undefined;
+  lost(hand: Hand): void;
+  returned?(band: SentBand, hand: Hand): void;
+}
+
+/** A worker of the host's own kind. Bundlers know the literal with `import.meta.url` and pack the script that it names. */
+function hostWorker(): EngineWorker | undefined {
+  const threads = nodeThreads();
+  const here = import.meta.url;
+  if (threads) return new threads.Worker(new URL("./worker.js", here));
+  return typeof Worker === "function" ? new Worker(new URL("./worker.js", import.meta.url), { type: "module" }) : undefined;
+}
+
+/**
+ * The workers of one engine. All of them together are its threads, less the calling one. A worker that is lost is not replaced: the others
+ * and the calling thread do its work.
+ */
+export class Crew {
+  readonly shared: boolean;
+  readonly #hands: Hand[] = [];
+  readonly #foremen = new Map<number, Foreman>();
+  #nextId = 0;
+
+  private constructor(shared: boolean) {
+    this.shared = shared;
+  }
+
+  /** Starts `count` workers, or as many as the host lets start. Does not wait long for any of them. */
+  static async start(count: number, { module, memory, shared }: Linked, createWorker: (() => EngineWorker | undefined) | undefined): Promise<Crew> {
+    const crew = new Crew(shared);
+    const start: ToWorker = { kind: "start", module, ...(shared ? { memory: memory.memory } : {}) };
+    const starts = Array.from({ length: count }, () => crew.#hire(start, createWorker ?? hostWorker));
+    let timer: ReturnType<typeof setTimeout> | undefined;
+    await Promise.race([Promise.all(starts), new Promise((resolve) => (timer = setTimeout(resolve, startMilliseconds)))]);
+    clearTimeout(timer);
+    for (const { worker } of crew.#hands) keepsProcess(worker, false);
+    return crew;
+  }
+
+  /** Settles when the worker is ready, or will never be. */
+  #hire(start: ToWorker, createWorker: () => EngineWorker | undefined): Promise<void> {
+    return new Promise((settle) => {
+      try {
+        const worker = createWorker();
+        if (!worker) return settle();
+        const hand = new Hand(worker);
+        this.#hands.push(hand);
+        listenTo(worker, {
+          heard: (message) => this.#heard(hand, message as FromWorker, settle),
+          gone: () => {
+            hand.confirm();
+            this.dismiss(hand);
+            settle();
+          },
+        });
+        hand.post(start);
+      } catch {
+        settle();
+      }
+    });
+  }
+
+  #heard(hand: Hand, message: FromWorker, settle: () => void): void {
+    if (hand.gone) return;
+    if (message.kind === "band") return this.#foremen.get(message.id)?.returned?.(message, hand);
+    if (message.kind === "ready") {
+      hand.ready = true;
+      for (const { assignment } of this.#foremen.values()) if (assignment) hand.post(assignment);
+    } else this.dismiss(hand);
+    settle();
+  }
+
+  /** Workers that can be given work now. */
+  get ready(): Hand[] {
+    return this.#hands.filter(({ ready }) => ready);
+  }
+
+  nextId(): number {
+    return this.#nextId++;
+  }
+
+  /** Tells all workers of a filter. */
+  enlist(id: number, foreman: Foreman): void {
+    this.#foremen.set(id, foreman);
+    for (const hand of this.ready) hand.post(foreman.assignment!);
+  }
+
+  /** Lets all workers forget a filter. */
+  release(id: number): void {
+    this.#foremen.delete(id);
+    for (const hand of this.ready) hand.post({ kind: "drop", id });
+  }
+
+  /** Ends a worker that does not answer, or is gone already. */
+  dismiss(hand: Hand): void {
+    const index = this.#hands.indexOf(hand);
+    if (index < 0) return;
+    this.#hands.splice(index, 1);
+    hand.end();
+    for (const foreman of this.#foremen.values()) foreman.lost(hand);
+  }
+
+  dispose(): void {
+    this.#foremen.clear();
+    while (this.#hands.length > 0) this.dismiss(this.#hands[0]!);
+  }
+}
