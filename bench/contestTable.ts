@@ -20,7 +20,7 @@ export function printContests({ contests, means }: { contests: readonly ContestR
         digits(rivals[0]!.milliseconds.median),
         ...verdictCells(ratio, bar, verdict),
         `${ratioByTurns[0].toFixed(2)}…${ratioByTurns[1].toFixed(2)}`,
-        asides.map(({ name, milliseconds }) => `${name} ${digits(milliseconds.median)}`).join("; "),
+        asides.map(({ name, milliseconds: { median } }) => `${name} ${digits(median)} (${(median / rivals[0]!.milliseconds.median).toFixed(2)})`).join("; "),
       ]),
       ...means.map(({ name, ratio, bar, verdict }) => [name, "", "", "", ...verdictCells(ratio, bar, verdict), "", ""]),
     ],

@@ -1,10 +1,27 @@
-import { COLUMN_PLAN, PAIRS, PLANES, PLANE_BYTES, PLANE_STRIDE } from "../src/generated/record.js";
+import type { Kernel } from "../src/index.js";
+import {
+  COLUMN_PLAN,
+  KERNEL_COLUMNS,
+  KERNEL_ROWS,
+  PAIRS,
+  PLANES,
+  PLANE_BYTES,
+  PLANE_STRIDE,
+  ROW_PLAN,
+  ROW_SCRATCH,
+  SCALE,
+  SPECTRUM,
+  TAPS,
+  TILE_COLUMNS,
+  TILE_ROWS,
+} from "../src/generated/record.js";
 import { code } from "../src/generated/simd.js";
 import { radicesOf } from "../src/math/smoothNumbers.js";
 import { rootsOfUnity } from "../src/math/rootsOfUnity.js";
 import { coreOf } from "../test/routines/bench.js";
 import { placePlan } from "../test/routines/transformPlan.js";
 import type { Contender } from "./contender.js";
+import type { Loop } from "./loops.js";
 import { processorMilliseconds } from "./processorTime.js";
 
 const pageBytes = 65536;
@@ -43,6 +60,39 @@ export async function coreTransform(points: number, batch: number): Promise<Cont
       floats.set(fresh);
       routines.forwardColumns(job.address, 0, batch, 0);
       return largestError(floats, fresh, points, batch, stride / 4);
+    },
+  };
+}
+
+/** One kernel transform by the compiled core's own routines: taps into the corner of a tile, its columns, its rows. */
+export async function kernelTransform({ taps, width, height }: Kernel, columns: number, rows: number): Promise<Loop> {
+  const { bench, routines } = await coreOf("simd", code);
+  const stride = 64 * (Math.ceil((columns * 4) / 64) | 1);
+  const planeBytes = rows * stride;
+  const spectrumBytes = rows * columns * 8;
+  bench.memory.grow(Math.ceil((2 * planeBytes + spectrumBytes) / pageBytes) + 16);
+  const job = bench.job();
+  job
+    .integer(TAPS, bench.place(Float32Array.from(taps)))
+    .integer(KERNEL_COLUMNS, width)
+    .integer(KERNEL_ROWS, height)
+    .integer(COLUMN_PLAN, placePlan(bench, radicesOf(rows)!))
+    .integer(ROW_PLAN, placePlan(bench, radicesOf(columns)!))
+    .integer(PLANES, bench.take(2 * planeBytes))
+    .integer(PLANE_STRIDE, stride)
+    .integer(PLANE_BYTES, planeBytes)
+    .integer(PAIRS, 1)
+    .integer(TILE_ROWS, rows)
+    .integer(TILE_COLUMNS, columns)
+    .integer(SPECTRUM, bench.take(spectrumBytes))
+    .integer(ROW_SCRATCH, bench.take(columns * 32))
+    .float(SCALE, 1 / (rows * columns));
+  return {
+    name: `transform of the kernel, ${columns}×${rows}`,
+    run() {
+      routines.placeTaps(job.address, 0, 0, 0);
+      routines.forwardColumns(job.address, 0, 4 * Math.ceil(width / 4), 0);
+      routines.takeSpectrum(job.address, 0, rows / 4, 0);
     },
   };
 }

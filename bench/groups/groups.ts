@@ -2,8 +2,11 @@ import { box } from "./box.js";
 import { bytes } from "./bytes.js";
 import { fft } from "./fft.js";
 import { direct, separable } from "./floats.js";
+import { large } from "./large.js";
+import { replace } from "./replace.js";
+import { small } from "./small.js";
 import type { Group } from "./group.js";
 import { transforms } from "./transforms.js";
 
 /** Every group of lines, in the order in which they are printed. */
-export const groups: readonly Group[] = [direct, separable, transforms, fft, bytes, box];
+export const groups: readonly Group[] = [direct, separable, transforms, fft, bytes, box, small, replace, large];
