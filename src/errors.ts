@@ -30,6 +30,7 @@ export const faultOfCode = {
   "usage": "caller",
   "array-in-use": "caller",
   "samples-changed": "caller",
+  "kernel-mismatch": "caller",
   "disposed": "state",
   "filter-busy": "state",
   "memory-limit": "capacity",

@@ -71,7 +71,11 @@ export interface Layout<S extends SampleType = SampleType> {
  * The array of a view of engine memory: bytes in the array that `new ImageData(…)` takes. In an engine with threads that share memory it
  * lies on a `SharedArrayBuffer`, which browsers refuse in `ImageData`: use a target there.
  */
-export type ViewArray<S extends SampleType> = S extends "u8" ? Uint8ClampedArray<ArrayBuffer> : S extends "u16" ? Uint16Array<ArrayBuffer> : Float32Array<ArrayBuffer>;
+export type ViewArray<S extends SampleType> = S extends "u8"
+  ? Uint8ClampedArray<ArrayBuffer>
+  : S extends "u16"
+    ? Uint16Array<ArrayBuffer>
+    : Float32Array<ArrayBuffer>;
 
 /**
  * What the image is outside itself, on one axis.
@@ -274,7 +278,21 @@ export interface Filter<T extends SampleType = never, S extends SampleType = Sam
   readonly result: ResultRaster<ViewArray<[T] extends [never] ? S : T>>;
   /** Bytes of engine memory that `source` and `result` take, on top of `explanation.bytes`. */
   readonly viewBytes: number;
+  /** What was chosen and why; after `replaceKernel`, how the method stands with the new taps. */
   readonly explanation: Explanation;
+  /**
+   * Takes other taps in place of the filter's own: the same width, height and origin, by the same method, in the memory that it has. The
+   * results are those of a new filter that is forced to this method. `explanation` tells the new error bound, and the arithmetic where the
+   * taps change it (the step of fixed-point taps, the number of separable terms).
+   *
+   * @throws ConvolutionError before anything is touched, so that the taps stay as they were: `disposed`, `filter-busy`, `invalid-kernel`,
+   * `kernel-mismatch` (another size or origin, or more memory needed), `method-not-applicable` (the method does not apply to these
+   * taps), `border-not-applicable`, `alpha-not-applicable`
+   * @example
+   * const filter = engine.prepare(gaussian({ sigma: 2, radius: 9 }), { width: 640, height: 480, channels: 4 });
+   * slider.oninput = () => filter.replaceKernel(gaussian({ sigma: slider.valueAsNumber, radius: 9 }));
+   */
+  replaceKernel(kernel: Kernel): void;
   /** Gives the filter's memory back, and rejects its unfinished jobs. Safe to call twice. */
   dispose(): void;
 }

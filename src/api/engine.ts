@@ -2,6 +2,7 @@ import { ConvolutionError } from "../errors.js";
 import type { Kernel } from "../kernels/index.js";
 import { choose, type Choice } from "../planning/choose.js";
 import { explanationOf } from "../planning/explanation.js";
+import { choiceExplained, type KernelChange } from "../planning/kernelChange.js";
 import { problemOf, type Problem, type Request } from "../planning/problem.js";
 import { shippedProfiles } from "../planning/profile.js";
 import type {
@@ -111,8 +112,9 @@ class ConvolutionEngine implements Engine {
   #prepared<T extends SampleType, S extends SampleType>(request: Request, once: boolean): PreparedFilter<T, S> {
     const { problem, choice } = this.#chosen(request, once);
     if (!once) warmUp(this.#core, choice.plan, problem);
-    const explanation = explanationOf(choice, problem, this.#profile, once);
-    const filter: PreparedFilter<T, S> = new PreparedFilter<T, S>(problem, choice, explanation, this.#parts, () => this.#filters.delete(filter));
+    const explain = (of: Problem, made: Choice, change?: KernelChange): Explanation =>
+      explanationOf(change ? choiceExplained(change, this.#profile) : made, of, this.#profile, once);
+    const filter: PreparedFilter<T, S> = new PreparedFilter<T, S>(problem, choice, explain, this.#parts, () => this.#filters.delete(filter));
     this.#filters.add(filter);
     return filter;
   }

@@ -1,5 +1,7 @@
 import { ConvolutionError } from "../errors.js";
+import type { Kernel } from "../kernels/index.js";
 import type { Choice } from "../planning/choose.js";
+import { changeKernel, type KernelChange } from "../planning/kernelChange.js";
 import type { Problem } from "../planning/problem.js";
 import { samplesChanged } from "../runtime/execution.js";
 import type { Explanation, Filter, Raster, ResultArray, ResultRaster, RunOptions, Samples, SampleType, ViewArray } from "../types.js";
@@ -8,7 +10,7 @@ import type { EngineParts } from "./engineParts.js";
 import { JobQueue, type Order } from "./jobs.js";
 import { runnerOf, type Runner } from "./runner.js";
 import type { CheckedRaster } from "./validate/raster.js";
-import type { ImageShape } from "./validate/request.js";
+import { checkedReplacement, type ImageShape } from "./validate/request.js";
 import { checkedRunOptions, type CheckedRunOptions } from "./validate/runOptions.js";
 import { checkedSource, checkedTarget } from "./validate/target.js";
 import { View } from "./views.js";
@@ -36,9 +38,15 @@ function busyError(call: string): ConvolutionError {
   return new ConvolutionError("filter-busy", message, { expected: "a filter without unfinished jobs", received: "a busy filter" });
 }
 
+/** Tells how a filter was chosen, or how it stands after its taps were replaced. */
+type Explain = (problem: Problem, choice: Choice, change?: KernelChange) => Explanation;
+
 /** A plan with its memory in the engine. */
 export class PreparedFilter<T extends SampleType = never, S extends SampleType = SampleType> implements Filter<T, S> {
-  readonly explanation: Explanation;
+  readonly #explain: Explain;
+  #explanation: (() => Explanation) | Explanation;
+  #problem: Problem;
+  #choice: Choice;
   readonly #engine: EngineParts;
   readonly #leave: () => void;
   readonly #runner: Runner;
@@ -48,10 +56,13 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
   readonly #views: { source: View; result: View };
   #disposed = false;
 
-  constructor(problem: Problem, choice: Choice, explanation: Explanation, engine: EngineParts, leave: () => void) {
+  constructor(problem: Problem, choice: Choice, explain: Explain, engine: EngineParts, leave: () => void) {
     const { memory } = engine.core;
     const { request, horizontal, vertical } = problem;
-    this.explanation = explanation;
+    this.#explain = explain;
+    this.#problem = problem;
+    this.#choice = choice;
+    this.#explanation = () => explain(problem, choice);
     this.#engine = engine;
     this.#leave = leave;
     this.#layout = request;
@@ -59,6 +70,12 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
     this.#views = { source: new View(this.#layout, memory, engine.views), result: new View(this.#result, memory, engine.views) };
     this.#runner = runnerOf(choice, problem, engine.core, engine.crew);
     this.#jobs = new JobQueue(this.#runner, engine.turns);
+  }
+
+  /** Put together when it is first asked for. */
+  get explanation(): Explanation {
+    if (typeof this.#explanation === "function") this.#explanation = this.#explanation();
+    return this.#explanation;
   }
 
   get source(): ResultRaster<ViewArray<S>> {
@@ -96,6 +113,17 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
     const target = this.#target("runAsync", image, options.target, source);
     if (options.signal?.aborted) return Promise.reject(options.signal.reason);
     return this.#jobs.add(this.#order(options, source, target)) as Promise<never>;
+  }
+
+  replaceKernel(given: Kernel): void {
+    this.#usable("replaceKernel");
+    if (this.#jobs.busy) throw busyError("replaceKernel");
+    const kernel = checkedReplacement("replaceKernel", given, this.#problem.request);
+    const change = changeKernel(this.#problem, this.#choice, this.#runner.blockBytes, kernel);
+    this.#runner.replace(change.blocks);
+    this.#problem = change.problem;
+    this.#choice = change.choice;
+    this.#explanation = () => this.#explain(change.problem, change.choice, change);
   }
 
   dispose(): void {

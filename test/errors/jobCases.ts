@@ -1,4 +1,5 @@
-import type { ErrorCode, RunOptions } from "../../src/index.js";
+import { box, delta, type ErrorCode, type RunOptions } from "../../src/index.js";
+import { noiseKernel } from "../support/kernels.js";
 import type { Bench } from "./bench.js";
 import { untyped, type ErrorCase } from "./errorCase.js";
 
@@ -25,7 +26,7 @@ async function withoutArray(
   return running;
 }
 
-export const jobs: Pick<Record<ErrorCode, ErrorCase[]>, "array-in-use" | "samples-changed" | "filter-busy"> = {
+export const jobs: Pick<Record<ErrorCode, ErrorCase[]>, "array-in-use" | "samples-changed" | "kernel-mismatch" | "filter-busy"> = {
   "array-in-use": [
     {
       title: "one target for two jobs",
@@ -68,7 +69,34 @@ export const jobs: Pick<Record<ErrorCode, ErrorCase[]>, "array-in-use" | "sample
       says: [/target/],
     },
   ],
+  "kernel-mismatch": [
+    { title: "a kernel of another size", act: ({ filter }) => filter().replaceKernel(box(5)), says: ["5×5", "3×3"] },
+    {
+      title: "a kernel with another origin",
+      act: ({ filter }) => filter().replaceKernel(delta({ width: 3, height: 3, origin: { x: 0, y: 2 } })),
+      says: ["(0, 2)", "(1, 1)"],
+    },
+    {
+      title: "taps with more separable terms than there is memory for",
+      act: ({ engine }) => {
+        const made = engine.prepare(box(3), { width: 64, height: 64 }, { method: "separable", tolerance: 0 });
+        try {
+          return made.replaceKernel(noiseKernel(3, 3, 5));
+        } finally {
+          made.dispose();
+        }
+      },
+      says: [/terms/],
+    },
+  ],
   "filter-busy": [
+    {
+      title: "replaceKernel while a job of the filter is unfinished",
+      act: ({ filter, image, kernel }) => {
+        const made = filter();
+        return second(made.runAsync(image), () => made.replaceKernel(kernel));
+      },
+    },
     {
       title: "run while a job of the same filter is unfinished",
       act: ({ filter, image }) => {

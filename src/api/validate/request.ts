@@ -38,12 +38,17 @@ export function checkedLayout(where: string, layout: unknown): ImageShape {
   };
 }
 
+/** Taps that sum to nothing but rounding. */
+function isSumless(kernel: Kernel): boolean {
+  const { sum, absoluteSum } = analyse(kernel);
+  return Math.abs(sum) <= 1e-9 * absoluteSum;
+}
+
 /**
  * Colours that are averaged by how much there is of them need taps with a sum to divide by.
  */
 function checkedAlpha(where: string, given: unknown, channels: number, kernel: Kernel): Alpha {
-  const { sum, absoluteSum } = analyse(kernel);
-  const sumless = Math.abs(sum) <= 1e-9 * absoluteSum;
+  const sumless = isSumless(kernel);
   const hasAlpha = channels === 2 || channels === 4;
   if (given === undefined) return !hasAlpha ? "none" : sumless ? "keep" : "straight";
   const alpha = chosenWord(where, "alpha", given, alphas);
@@ -51,10 +56,7 @@ function checkedAlpha(where: string, given: unknown, channels: number, kernel: K
     const message = `${where}: alpha "${alpha}" needs an alpha channel, the image has ${channels} ${channels === 1 ? "channel" : "channels"}. Use "none", or an image of 2 or 4 channels.`;
     throw new ConvolutionError("alpha-not-applicable", message, { expected: "none", received: alpha });
   }
-  if (alpha === "straight" && sumless) {
-    const message = `${where}: alpha "straight" divides by the sum of the taps, which is ${sum}. Use "keep" (alpha stays as it is) or "none".`;
-    throw new ConvolutionError("alpha-not-applicable", message, { expected: ["keep", "premultiplied", "none"], received: alpha });
-  }
+  refuseSumless(where, alpha, kernel);
   return alpha;
 }
 
@@ -65,6 +67,31 @@ function refuseRenormalised(where: string, rules: BorderRule[], kernel: Kernel):
   const found = negative ? `a negative tap (${readTaps(kernel).reduce((least, tap) => Math.min(least, tap))})` : `taps that sum to ${sum}`;
   const message = `${where}: border "renormalised" divides by the weight that falls inside, and the kernel has ${found}. Use "replicate" or a symmetric border.`;
   throw new ConvolutionError("border-not-applicable", message, { expected: "no negative tap, a positive sum", received: found });
+}
+
+/** @throws ConvolutionError `alpha-not-applicable` */
+function refuseSumless(where: string, alpha: Alpha, kernel: Kernel): void {
+  if (alpha !== "straight" || !isSumless(kernel)) return;
+  const message = `${where}: alpha "straight" divides by the sum of the taps, which is ${kernel.sum}. Use "keep" (alpha stays as it is) or "none".`;
+  throw new ConvolutionError("alpha-not-applicable", message, { expected: ["keep", "premultiplied", "none"], received: alpha });
+}
+
+/**
+ * A kernel to take the place of a filter's own: of the same size and origin, and with taps that the filter's border and alpha allow.
+ *
+ * @throws ConvolutionError `invalid-kernel`, `kernel-mismatch`, `border-not-applicable`, `alpha-not-applicable`
+ */
+export function checkedReplacement(where: string, given: unknown, { kernel: before, rows, columns, alpha }: Request): Kernel {
+  const kernel = asKernel(given);
+  const shapeOf = ({ width, height, origin }: Kernel): string => `${width}×${height} with origin (${origin.x}, ${origin.y})`;
+  const [expected, received] = [shapeOf(before), shapeOf(kernel)];
+  if (expected !== received) {
+    const message = `${where}: the kernel is ${received}, the filter was prepared for ${expected}. Give one of that size and origin, or prepare a filter for this one.`;
+    throw new ConvolutionError("kernel-mismatch", message, { expected, received });
+  }
+  refuseRenormalised(where, [rows, columns], kernel);
+  refuseSumless(where, alpha, kernel);
+  return kernel;
 }
 
 /** The whole output of an extent, as a region. */
