@@ -9,7 +9,7 @@ import { assertCorrelation } from "./promises";
  * with base_k = out_k where `accumulate` (a further term of a sum), else 0.
  *
  * Shapes    rows: n + 1 pointers to rows of count floats; taps n; out0, out1: count floats
- * Units     pointers: bytes; count: floats, a multiple of four
+ * Units     pointers: bytes; count: floats, a multiple of four or at least four vectors
  * Requires  out0, out1 apart from each other and from the rows; row n may be any readable row if out1 is not wanted
  * Cost      2 · count · n multiply–adds; allocates nothing
  * Accuracy  |error| ≤ γ(n + 1) · (Σ|taps| · max|rows| + max|base|)
@@ -21,6 +21,11 @@ export function correlateColumns<V>(out0: usize, out1: usize, rows: usize, taps:
   const block: usize = 4 * laneBytes<V>();
   let x: usize = 0;
   for (; x + block <= bytes; x += block) columnsBlock<V>(out0 + x, out1 + x, rows, x, taps, n, accumulate);
+  if (x == bytes) return;
+  if (bytes >= block && !accumulate) {
+    x = bytes - block;
+    return columnsBlock<V>(out0 + x, out1 + x, rows, x, taps, n, false);
+  }
   for (; x < bytes; x += laneBytes<V>()) columnsVector<V>(out0 + x, out1 + x, rows, x, taps, n, accumulate);
 }
 

@@ -9,7 +9,7 @@ import { assertCorrelation } from "./promises";
  * The sum runs over j, then i, whatever the block: no result depends on its neighbours.
  *
  * Shapes    rows: n + 1 pointers to rows of count + (m − 1)·step floats; taps n × m; out0, out1: count floats
- * Units     pointers: bytes; count: floats, a multiple of four; step: bytes from one tap to the next in a row
+ * Units     pointers: bytes; count: floats, a multiple of four or at least four vectors; step: bytes from one tap to the next in a row
  * Requires  rows readable for whole vectors; out0, out1 apart from the rows; row n may be any readable row if out1 is not wanted
  * Cost      2 · count · m · n multiply–adds; allocates nothing
  * Accuracy  |error| ≤ γ(m·n) · Σ|taps| · max|rows|

@@ -120,6 +120,12 @@ function leaveKept(job: usize, y: usize): void {
   }
 }
 
+/** True where working floats are the samples that are written: a method may then compute them where they go. */
+export function leavesAsIs(job: usize): bool {
+  const plain = load<i32>(job, ALPHA) == 0 && !load<i32>(job, DECODE) && !load<i32>(job, ROUND) && !load<usize>(job, WEIGHTS);
+  return plain && load<i32>(job, OUTPUT_KIND) == 2 && load<f32>(job, GAIN) == 1 && load<f32>(job, OFFSET) == 0;
+}
+
 /**
  * One result row leaves: divided, encoded, gain and offset, rounded. Works in place on y, which is scratch afterwards.
  *

@@ -112,10 +112,10 @@ export function assertLeaveRow(job: usize, y: usize, row: i32, out: usize): void
 /** Pointers, counts and rows of a correlation (m = 1 for columns): nothing is written that is still to be read. */
 export function assertCorrelation(out0: usize, out1: usize, rows: usize, taps: usize, n: i32, m: i32, step: usize, count: i32): void {
   if (ASC_NO_ASSERT) return;
-  assert(n >= 1 && m >= 1 && count >= 4 && (count & 3) == 0);
+  assert(n >= 1 && m >= 1 && ((count >= 4 && (count & 3) == 0) || count >= 16));
   assert(m == 1 || (step >= 4 && (step & 3) == 0));
   const bytes = <usize>count << 2, read = bytes + <usize>(m - 1) * step;
-  assert(isAligned(out0) && isAligned(out1) && isInMemory(out0, bytes) && isInMemory(out1, bytes) && areApart(out0, bytes, out1, bytes));
+  assert((out0 & 3) == 0 && (out1 & 3) == 0 && isInMemory(out0, bytes) && isInMemory(out1, bytes) && areApart(out0, bytes, out1, bytes));
   assert((taps & 3) == 0 && isInMemory(taps, <usize>(n * m) << 2));
   for (let k = 0; k <= n; k++) {
     const row = load<usize>(rows + (<usize>k << 2));

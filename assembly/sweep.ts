@@ -2,11 +2,12 @@ import { correlateColumns } from "./columns";
 import { correlateRows } from "./direct";
 import { correlateRow } from "./rows";
 import { enterRow } from "./enter";
-import { leaveRow } from "./leave";
+import { lanes } from "./lanes";
+import { leaveRow, leavesAsIs } from "./leave";
 import { assertSweep, assertTerms } from "./promises";
 import {
   ALPHA, ANCHOR_ROW, CHANNELS, COLUMN_TAPS, ENTERED, KEEP_ROW, KEEP_STAGING, KERNEL_COLUMNS, KERNEL_ROWS,
-  OUTPUT, OUTPUT_STRIDE, RESULT, RESULT_FLOATS, RESULT_ROWS, RESULT_ROW_STRIDE, RESULT_STRIDE, RING_ROWS, ROW_MAP, ROW_TABLE, SOURCE_ROWS,
+  OUTPUT, OUTPUT_COLUMNS, OUTPUT_STRIDE, RESULT, RESULT_FLOATS, RESULT_ROWS, RESULT_ROW_STRIDE, RESULT_STRIDE, RING_ROWS, ROW_MAP, ROW_TABLE, SOURCE_ROWS,
   SOURCE_ROW_STRIDE, STAGING, STAGING_STRIDE, TAPS, TERMS,
 } from "./record";
 
@@ -76,6 +77,20 @@ export function leaveStaged<V>(job: usize, y: usize, row: i32, from: i32): void 
   leaveRow<V>(job, y, row, outputRow(job, row, from));
 }
 
+/** Floats that two result rows are computed in where they go, or 0: rows at least a block long whose floats are the samples that are written. */
+function floatsInPlace<V>(job: usize): i32 {
+  const floats = load<i32>(job, OUTPUT_COLUMNS) * load<i32>(job, CHANNELS);
+  return floats >= 4 * lanes<V>() && leavesAsIs(job) ? floats : 0;
+}
+
+/** Where result row `row` or the one below is computed: in its place, or in a row of working floats. */
+// @ts-ignore: decorator
+@inline
+function resultRow(job: usize, below: i32, row: i32, from: i32, to: i32, inPlace: i32): usize {
+  if (inPlace && row + below < to) return outputRow(job, row + below, from);
+  return load<usize>(job, RESULT) + <usize>below * load<usize>(job, RESULT_STRIDE);
+}
+
 // @ts-ignore: decorator
 @inline
 function leavePair<V>(job: usize, row: i32, from: i32, to: i32): void {
@@ -89,7 +104,7 @@ export function sweepDirect<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
   assertSweep(job, from, to, n + 1);
   const step = <usize>load<i32>(job, CHANNELS) << 2;
-  const result = load<usize>(job, RESULT);
+  const inPlace = floatsInPlace<V>(job);
   const first = firstNewRow(job, from);
   const end = to + n - 1;
   let next = first;
@@ -97,10 +112,10 @@ export function sweepDirect<V>(job: usize, from: i32, to: i32): void {
     for (const last = min<i32>(row + n + 1, end); next < last; next++) enterRow<V>(job, load<usize>(ringFrom(job, 0, next)), next, stagedRow(job, next, first));
     if (row >= to) return; // a call that ends above the first result only enters
     correlateRows<V>(
-      result, result + load<usize>(job, RESULT_STRIDE), ringFrom(job, 0, row), load<usize>(job, TAPS), n,
-      load<i32>(job, KERNEL_COLUMNS), step, load<i32>(job, RESULT_FLOATS),
+      resultRow(job, 0, row, from, to, inPlace), resultRow(job, 1, row, from, to, inPlace), ringFrom(job, 0, row), load<usize>(job, TAPS), n,
+      load<i32>(job, KERNEL_COLUMNS), step, inPlace || load<i32>(job, RESULT_FLOATS),
     );
-    leavePair<V>(job, row, from, to);
+    if (!inPlace) leavePair<V>(job, row, from, to);
   }
 }
 
@@ -119,7 +134,7 @@ export function sweepSeparable<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
   assertSweep(job, from, to, n + 1);
   assertTerms(job);
-  const result = load<usize>(job, RESULT);
+  const inPlace = load<i32>(job, TERMS) == 1 ? floatsInPlace<V>(job) : 0;
   const first = firstNewRow(job, from);
   const end = to + n - 1;
   let next = first;
@@ -132,9 +147,10 @@ export function sweepSeparable<V>(job: usize, from: i32, to: i32): void {
     for (let term = 0; term < load<i32>(job, TERMS); term++) {
       const taps = load<usize>(job, COLUMN_TAPS) + (<usize>(term * n) << 2);
       correlateColumns<V>(
-        result, result + load<usize>(job, RESULT_STRIDE), ringFrom(job, term, row), taps, n, load<i32>(job, RESULT_FLOATS), term > 0,
+        resultRow(job, 0, row, from, to, inPlace), resultRow(job, 1, row, from, to, inPlace), ringFrom(job, term, row), taps, n,
+        inPlace || load<i32>(job, RESULT_FLOATS), term > 0,
       );
     }
-    leavePair<V>(job, row, from, to);
+    if (!inPlace) leavePair<V>(job, row, from, to);
   }
 }
