@@ -8,11 +8,12 @@
  *
  *     set-up    enterConstants · decodeCurve · placeTaps, forwardColumns, takeSpectrum (FFT)
  *     sweeps    sweepDirect · sweepSeparable · sweepDirectBytes · sweepSeparableBytes                      units: result rows
- *               sweepIntegerSums · sweepRunningSum
+ *               sweepByteSums · sweepIntegerSums · sweepRunningSum
  *     FFT       enterStrip (rows) → forwardColumns (floats) → filterRows (groups of rows) → inverseColumns (floats) → leaveStrip (rows)
  */
 import { sweepDirectBytes as sweepDirectBytesOf } from "./bytes/direct";
 import { sweepSeparableBytes as sweepSeparableBytesOf } from "./bytes/separable";
+import { sweepByteSums as sweepByteSumsOf } from "./bytes/sums";
 import { decodeTable } from "./curve";
 import { enterConstants as enterConstantsOf } from "./enter";
 import { enterStrip as enterStripOf, leaveStrip as leaveStripOf } from "./fft/strips";
@@ -48,6 +49,11 @@ export function sweepDirectBytes(job: usize, from: i32, to: i32): void {
 export function sweepSeparableBytes(job: usize, from: i32, to: i32): void {
   if (ASC_FEATURE_SIMD) sweepSeparableBytesOf<v128>(job, from, to);
   else sweepSeparableBytesOf<i32>(job, from, to);
+}
+
+export function sweepByteSums(job: usize, from: i32, to: i32): void {
+  if (ASC_FEATURE_SIMD) sweepByteSumsOf<v128>(job, from, to);
+  else sweepByteSumsOf<i32>(job, from, to);
 }
 
 export function sweepIntegerSums(job: usize, from: i32, to: i32): void {

@@ -355,3 +355,133 @@ function storePairs(out: usize, a: v128, b: v128): void {
   v128.store(out, v128.shuffle<i16>(a, b, 0, 8, 1, 9, 2, 10, 3, 11));
   v128.store(out, v128.shuffle<i16>(a, b, 4, 12, 5, 13, 6, 14, 7, 15), 16);
 }
+
+// ---- running sums of bytes: V is v128 (four 32-bit integers, or eight 16-bit ones) ----
+
+/** sums[k] += incoming[k] − outgoing[k] for 16 bytes; T is how wide sums are: u16 (modulo 2¹⁶) or i32. */
+// @ts-ignore: decorator
+@inline
+export function slideSixteen<V, T>(sums: usize, incoming: usize, outgoing: usize): void {
+  if (isVector<V>() && sizeof<T>() == 2) {
+    const low = i16x8.sub(v128.load_ext<u8>(incoming), v128.load_ext<u8>(outgoing));
+    const high = i16x8.sub(v128.load_ext<u8>(incoming, 8), v128.load_ext<u8>(outgoing, 8));
+    v128.store(sums, i16x8.add(v128.load(sums), low));
+    v128.store(sums, i16x8.add(v128.load(sums, 16), high), 16);
+  } else if (isVector<V>()) {
+    addDifference16_u8<V>(sums, incoming, outgoing);
+  } else {
+    for (let k: usize = 0; k < 16; k++) slideOne<T>(sums + k * sizeof<T>(), incoming + k, outgoing + k);
+  }
+}
+
+// @ts-ignore: decorator
+@inline
+export function slideOne<T>(sum: usize, incoming: usize, outgoing: usize): void {
+  store<T>(sum, <T>(<i32>load<T>(sum) + <i32>load<u8>(incoming) - <i32>load<u8>(outgoing)));
+}
+
+/** Sixteen bytes from one place to another. */
+// @ts-ignore: decorator
+@inline
+export function copySixteen(out: usize, source: usize): void {
+  store<u64>(out, load<u64>(source));
+  store<u64>(out, load<u64>(source, 8), 8);
+}
+
+/** ahead[k] − behind[k] of eight 16-bit integers, modulo 2¹⁶. */
+// @ts-ignore: decorator
+@inline
+export function wordDifferences<V>(ahead: usize, behind: usize): V {
+  return changetype<V>(i16x8.sub(v128.load(ahead), v128.load(behind)));
+}
+
+/** The lower and the upper four of eight signed 16-bit integers, as 32-bit ones. */
+// @ts-ignore: decorator
+@inline
+export function lowerWords<V>(x: V): V {
+  return changetype<V>(i32x4.extend_low_i16x8_s(changetype<v128>(x)));
+}
+
+// @ts-ignore: decorator
+@inline
+export function upperWords<V>(x: V): V {
+  return changetype<V>(i32x4.extend_high_i16x8_s(changetype<v128>(x)));
+}
+
+/** ahead[k] − behind[k] of four column sums, T wide, as 32-bit integers; 16-bit ones differ by less than 2¹⁵. */
+// @ts-ignore: decorator
+@inline
+export function fourDifferences<V, T>(ahead: usize, behind: usize): V {
+  if (sizeof<T>() == 2) {
+    const difference = i16x8.sub(v128.load_zero<u64>(ahead), v128.load_zero<u64>(behind));
+    return changetype<V>(i32x4.extend_low_i16x8_s(difference));
+  }
+  return changetype<V>(i32x4.sub(v128.load(ahead), v128.load(behind)));
+}
+
+/** Four column sums, T wide, as 32-bit integers. */
+// @ts-ignore: decorator
+@inline
+export function fourSums<V, T>(pointer: usize): V {
+  if (sizeof<T>() == 2) return changetype<V>(v128.load_ext<u16>(pointer));
+  return changetype<V>(v128.load(pointer));
+}
+
+/** a + b, 32-bit integers. */
+// @ts-ignore: decorator
+@inline
+export function sumOf<V>(a: V, b: V): V {
+  return changetype<V>(i32x4.add(changetype<v128>(a), changetype<v128>(b)));
+}
+
+/** Sums over the first samples of each channel: lane k holds Σ x[i] for i ≤ k of its channel, with 1 or 2 channels in turn. */
+// @ts-ignore: decorator
+@inline
+export function prefixSums<V>(x: V, channels: i32): V {
+  const none = i32x4.splat(0);
+  let sums = changetype<v128>(x);
+  if (channels == 1) sums = i32x4.add(sums, v128.shuffle<i32>(none, sums, 3, 4, 5, 6));
+  return changetype<V>(i32x4.add(sums, v128.shuffle<i32>(none, sums, 2, 3, 4, 5)));
+}
+
+/** The last sample of each channel in all of its lanes. */
+// @ts-ignore: decorator
+@inline
+export function lastOfEach<V>(x: V, channels: i32): V {
+  if (channels == 1) return changetype<V>(v128.shuffle<i32>(changetype<v128>(x), changetype<v128>(x), 3, 3, 3, 3));
+  return changetype<V>(v128.shuffle<i32>(changetype<v128>(x), changetype<v128>(x), 2, 3, 2, 3));
+}
+
+/**
+ * The integer nearest to scale · sum in the lower 16 bits of each lane: adding 2²³ to a float below it leaves no bits for a fraction.
+ * With a divisor that integer is ⌊sum ÷ divisor⌋ or one more; the sign of the remainder tells which.
+ */
+// @ts-ignore: decorator
+@inline
+function quotientBits(sum: v128, scale: f32, divisor: i32): v128 {
+  const bits = f32x4.add(f32x4.mul(f32x4.convert_i32x4_s(sum), f32x4.splat(scale)), f32x4.splat(8388608));
+  if (!divisor) return bits;
+  const quotient = i32x4.sub(bits, i32x4.splat(0x4b000000));
+  return i32x4.add(quotient, i32x4.shr_s(i32x4.sub(sum, i32x4.mul(quotient, i32x4.splat(divisor))), 31));
+}
+
+/** The same for one sum. */
+// @ts-ignore: decorator
+@inline
+export function quotientOf(sum: i32, scale: f32, divisor: i32): i32 {
+  const bits = reinterpret<i32>(<f32>sum * scale + 8388608) - 0x4b000000;
+  return divisor ? bits + ((sum - bits * divisor) >> 31) : bits;
+}
+
+/** Quotients below 256 of four vectors of sums as 16 bytes; of the first three lanes of each, as 12 bytes and four more of no meaning, where `three`. */
+// @ts-ignore: decorator
+@inline
+export function storeQuotients<V>(out: usize, a: V, b: V, c: V, d: V, scale: f32, divisor: i32, three: bool): void {
+  const upper = i32x4.shl(quotientBits(changetype<v128>(b), scale, divisor), 16);
+  const ab = v128.shuffle<i16>(quotientBits(changetype<v128>(a), scale, divisor), upper, 0, 9, 2, 11, 4, 13, 6, 15);
+  const last = i32x4.shl(quotientBits(changetype<v128>(d), scale, divisor), 16);
+  const cd = v128.shuffle<i16>(quotientBits(changetype<v128>(c), scale, divisor), last, 0, 9, 2, 11, 4, 13, 6, 15);
+  const mixed = i8x16.narrow_i16x8_u(ab, cd);
+  if (three) v128.store(out, v128.shuffle<i8>(mixed, mixed, 0, 2, 4, 1, 3, 5, 8, 10, 12, 9, 11, 13, 6, 7, 14, 15));
+  else v128.store(out, v128.shuffle<i8>(mixed, mixed, 0, 2, 4, 6, 1, 3, 5, 7, 8, 10, 12, 14, 9, 11, 13, 15));
+}

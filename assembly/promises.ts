@@ -3,11 +3,11 @@
  * and its calls vanish. In the debug build a broken promise traps before anything is written.
  */
 import {
-  ALPHA, ALPHA_BOUND, CHANNELS, COLOURS, COLUMN_PHASE, COLUMN_PLAN, CURVE, DECODE, ENTERED, ENTERED_STRIDE, EXTENDED_COLUMNS, EXTENDED_ROWS, GAIN,
+  ALPHA, ALPHA_BOUND, CHANNELS, COLOURS, COLUMN_PHASE, COLUMN_PLAN, CURVE, DECODE, DIVISOR, ENTERED, ENTERED_STRIDE, EXTENDED_COLUMNS, EXTENDED_ROWS, GAIN,
   HALO, HALO_COUNT, KERNEL_COLUMNS, KERNEL_ROWS, MARKS, MARK_STRIDE, OFFSET, OPAQUE_SUM, OUTPUT_COLUMNS, OUTPUT_KIND, OUTPUT_ROWS, OUTPUT_STRIDE,
   PAIRS, PLANES, PLANE_BYTES, PLANE_STRIDE, PREMULTIPLY, RAW_CONSTANT, RAW_SAMPLES, RESULT, RESULT_FLOATS, RESULT_STRIDE, RING_ROWS, ROW_MAP,
   ROW_PHASE, ROW_PLAN, ROW_SCRATCH, ROW_TABLE, RUN_COLUMN, RUN_COUNT, RUN_SOURCE, SOURCE_FULL, SOURCE_KIND, SPECTRUM, STAGING_STRIDE, STRIP_ROWS,
-  SUMS, TERMS, TILE_COLUMNS, TILE_ROWS, TILE_STEP, WEIGHTS, WEIGHT_COLUMNS, WEIGHT_ROWS, WEIGHT_STRIDE, WORKING_FULL,
+  SUMS, SUM_BIAS, TERMS, TILE_COLUMNS, TILE_ROWS, TILE_STEP, WEIGHTS, WEIGHT_COLUMNS, WEIGHT_ROWS, WEIGHT_STRIDE, WORKING_FULL,
 } from "./record";
 
 /** A block of vectors: not at 0, on a multiple of 16 bytes. */
@@ -185,6 +185,18 @@ export function assertIntegerSums(job: usize): void {
   assert(load<i32>(job, RING_ROWS) == load<i32>(job, KERNEL_ROWS) + 1);
   assert((samples & 15) == 0 && samples >= staged + load<i32>(job, CHANNELS) && load<usize>(job, RAW_CONSTANT) != 0);
   assert(isAligned(load<usize>(job, SUMS)) && isAligned(load<usize>(job, ENTERED)));
+  assertColumns(job);
+}
+
+/** Bytes to bytes, a ring of the window's rows, and sums that stay exact: in 16-bit columns and floats, or in 32 bits with a divisor. */
+export function assertByteSums(job: usize): void {
+  if (ASC_NO_ASSERT) return;
+  const n = load<i32>(job, KERNEL_ROWS), divisor = load<i32>(job, DIVISOR);
+  const most = <f64>load<i32>(job, KERNEL_COLUMNS) * n * 255 + load<i32>(job, SUM_BIAS);
+  assert(load<i32>(job, SOURCE_KIND) == 0 && load<i32>(job, OUTPUT_KIND) == 0 && !load<i32>(job, DECODE) && !load<i32>(job, PREMULTIPLY));
+  assert(load<i32>(job, RING_ROWS) == n && load<i32>(job, SUM_BIAS) >= 0);
+  assert(divisor ? most < 2147483648 : n <= 128 && most < 16777216);
+  assert(load<usize>(job, RAW_CONSTANT) != 0 && isAligned(load<usize>(job, ENTERED)) && load<usize>(job, SUMS) != 0);
   assertColumns(job);
 }
 

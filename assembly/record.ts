@@ -142,5 +142,7 @@ export const SUM_SHIFT = 340;
 /** The same for the column sums of the separable method, which end as 16-bit integers. */
 export const COLUMN_BIAS = 344;
 export const COLUMN_SHIFT = 348;
+/** i32: what running sums of bytes are divided by where scaling in floats could miss the right integer; 0 where it cannot. */
+export const DIVISOR = 352;
 
 export const RECORD_BYTES = 384;

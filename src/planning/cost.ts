@@ -32,6 +32,8 @@ export const operations = {
   rowLoop: "one block of a row pass",
   columnTap: "one multiply–add down a column",
   columnLoop: "one block of two result rows of a column pass",
+  byteColumnSum: "one byte added to the running sum of its column, and one subtracted",
+  byteRowSum: "one column sum added to a running sum along the row, or one byte made of it",
   integerSum: "one sample of an integer running sum",
   floatSum: "one sample of sums over blocks",
   planeSample: "one float spread over the planes or gathered from them",

@@ -19,7 +19,7 @@ interface Stretch {
 
 const stretches = new WeakMap<Axis, Stretch>();
 
-function stretchOf(axis: Axis): Stretch {
+export function stretchOf(axis: Axis): Stretch {
   let stretch = stretches.get(axis);
   if (!stretch) stretches.set(axis, (stretch = findStretch(axis)));
   return stretch;

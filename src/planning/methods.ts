@@ -5,6 +5,7 @@ import { fft } from "./fft.js";
 import type { MethodPlan } from "./method.js";
 import type { Problem } from "./problem.js";
 import { runningSum } from "./runningSum.js";
+import { runningSumBytes } from "./runningSumBytes.js";
 import { separable } from "./separable.js";
 import { separableBytes } from "./separableBytes.js";
 
@@ -12,7 +13,7 @@ import { separableBytes } from "./separableBytes.js";
  * Every way to compute that there is: a line each. Several may be variants of one method, the preferred one first: the first that applies
  * stands for the method, whatever the profile, so that a forced method's arithmetic is the same everywhere.
  */
-export const methods: readonly MethodPlan[] = [directBytes, direct, separableBytes, separable, runningSum, fft];
+export const methods: readonly MethodPlan[] = [directBytes, direct, separableBytes, separable, runningSumBytes, runningSum, fft];
 
 export const methodNames: readonly Method[] = [...new Set(methods.map(({ name }) => name))];
 

@@ -6,6 +6,7 @@ export type RoutineName =
   | "sweepSeparable"
   | "sweepDirectBytes"
   | "sweepSeparableBytes"
+  | "sweepByteSums"
   | "sweepIntegerSums"
   | "sweepRunningSum"
   | "enterConstants"

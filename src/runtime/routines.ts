@@ -10,6 +10,7 @@ const names: readonly RoutineName[] = [
   "sweepSeparable",
   "sweepDirectBytes",
   "sweepSeparableBytes",
+  "sweepByteSums",
   "sweepIntegerSums",
   "sweepRunningSum",
   "enterConstants",
