@@ -98,6 +98,8 @@ function integerTerm(taps: Float64Array, term: SeparableTerm): SeparableTerm {
   if (!row) return term;
   const pivotColumn = row.findIndex((value) => value !== 0);
   const column = term.column.map((_, r) => taps[r * columns + pivotColumn]! / row[pivotColumn]!);
-  const exact = taps.every((tap, k) => column[Math.floor(k / columns)]! * row[k % columns]! === tap);
-  return exact ? { column, row } : term;
+  for (let r = 0, k = 0; r < column.length; r++) {
+    for (let c = 0; c < columns; c++, k++) if (column[r]! * row[c]! !== taps[k]!) return term;
+  }
+  return { column, row };
 }

@@ -27,14 +27,21 @@ export function analyse(kernel: Kernel): KernelAnalysis {
 
 function analyseTaps(kernel: Kernel): KernelAnalysis {
   const taps = readTaps(kernel);
+  const [first] = taps;
+  let [constant, integer, negative] = [true, true, false];
+  for (const tap of taps) {
+    constant &&= tap === first;
+    integer &&= Number.isInteger(tap);
+    negative ||= tap < 0;
+  }
   let separation: Separation | undefined;
   const limit = Math.min(mostTerms, kernel.width, kernel.height);
   return {
     sum: kernel.sum,
     absoluteSum: absoluteSum(taps),
-    constant: taps.every((tap) => tap === taps[0]),
-    integer: taps.every((tap) => Number.isInteger(tap)),
-    negative: taps.some((tap) => tap < 0),
+    constant,
+    integer,
+    negative,
     separation: () => (separation ??= separate(taps, kernel.height, kernel.width, limit)),
   };
 }

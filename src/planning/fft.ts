@@ -7,6 +7,7 @@ import { integerResults, leastWeight, outputBound, underflow, type MethodError }
 import { frameCounts, frameOf, plainStep, programOf, writing, type Frame } from "./frame.js";
 import type { MethodPlan } from "./method.js";
 import { correlationTaps, vectorFloats, type Problem } from "./problem.js";
+import { remembered } from "./remembered.js";
 import { sampleFacts } from "./samples.js";
 import { planTiles, type Tiling } from "./tiles.js";
 
@@ -158,6 +159,11 @@ function transformTables(points: number, plan: number, turns: number): Table[] {
   ];
 }
 
+const transforms = /* @__PURE__ */ remembered((problem): Table[] => {
+  const { tiling, columnPlan, columnTurns, rowPlan, rowTurns } = frame(problem);
+  return [...transformTables(tiling.rows, columnPlan, columnTurns), ...transformTables(tiling.columns, rowPlan, rowTurns)];
+});
+
 /** Error among working floats. Exact results that are integers lose it where it stays below ½. */
 function error(problem: Problem): MethodError {
   const tiling = tilingOf(problem)!;
@@ -218,7 +224,8 @@ function grains(problem: Problem, tiling: Tiling): { columns: number; groups: nu
 }
 
 /** Enter, columns, rows, columns back, leave: group after group of strips. Each is a phase, whose steps do not depend on each other. */
-function runPhases(problem: Problem, layout: FftFrame): Step[][] {
+const runPhases = /* @__PURE__ */ remembered((problem): Step[][] => {
+  const layout = frame(problem);
   const { tiling } = layout;
   const { columns, groups } = grains(problem, tiling);
   const phases: Step[][] = [];
@@ -233,7 +240,7 @@ function runPhases(problem: Problem, layout: FftFrame): Step[][] {
     );
   }
   return phases;
-}
+});
 
 /** The number of each phase's first step. */
 function startsOf(phases: Step[][]): number[] {
@@ -308,7 +315,7 @@ export const fft: MethodPlan = {
   program(problem) {
     const layout = frame(problem);
     const { tiling } = layout;
-    const phases = runPhases(problem, layout);
+    const phases = runPhases(problem);
     const program = programOf(problem, layout, {
       fields(job) {
         job
@@ -335,11 +342,7 @@ export const fft: MethodPlan = {
           .pointer(field.MARK_COUNTS, layout.markCounts)
           .pointer(field.MARK_ROW, layout.markRow);
       },
-      tables: [
-        { offset: layout.taps, data: Float32Array.from(correlationTaps(problem)) },
-        ...transformTables(tiling.rows, layout.columnPlan, layout.columnTurns),
-        ...transformTables(tiling.columns, layout.rowPlan, layout.rowTurns),
-      ],
+      tables: [{ offset: layout.taps, data: Float32Array.from(correlationTaps(problem)) }, ...transforms(problem)],
       setup: setupSteps(problem, tiling),
       steps: phases.flat(),
       error: error(problem),

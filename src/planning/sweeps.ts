@@ -3,6 +3,7 @@ import type { RoutineName, Step, Table } from "../runtime/program.js";
 import { plainStep, writing, type Frame } from "./frame.js";
 import { vectorFloats, type Problem } from "./problem.js";
 import type { JobRecord } from "./record.js";
+import { remembered } from "./remembered.js";
 
 /** What every sweep has: a ring of rows with its pointer table, and result rows. */
 export interface SweepFrame extends Frame {
@@ -65,8 +66,18 @@ export function sweepCalls(problem: Problem, frame: Frame): number {
   return [...callEnds(problem, frame)].length;
 }
 
+const stepsOf = /* @__PURE__ */ remembered(() => new Map<string, Step[]>());
+
 /** Calls of a sweep, top to bottom; each reads the rows that are new to it. */
 export function sweepSteps(problem: Problem, frame: Frame, routine: RoutineName): Step[] {
+  const known = stepsOf(problem);
+  const name = `${routine} ${frame.stagedRows}`;
+  let steps = known.get(name);
+  if (!steps) known.set(name, (steps = makeSteps(problem, frame, routine)));
+  return steps;
+}
+
+function makeSteps(problem: Problem, frame: Frame, routine: RoutineName): Step[] {
   const { taps } = problem.vertical;
   const steps: Step[] = [];
   let from = 1 - taps;
