@@ -87,7 +87,10 @@ export const resized = (one: Case, width: number, height: number): Case => ({
   layout: { ...one.layout, width, height },
 });
 
-/** The same work on floats: what the working floats of a byte path cost without its conversions of arithmetic. */
+/** The same work on an image of floats. */
+export const onFloats = (one: Case): Case => ({ ...one, name: `${one.name}, of floats`, layout: { ...one.layout, sample: "f32" } });
+
+/** The same work on the same bytes with floats in between: no tap may be rounded. */
 export const inFloats = (one: Case): Case => ({ ...one, name: `${one.name}, in floats`, options: { ...one.options, tolerance: 0 } });
 
 const listed = {

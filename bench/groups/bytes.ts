@@ -1,17 +1,19 @@
-import { boxBytes, directBytes, inFloats, separableBytes, type Case } from "../cases.js";
+import { boxBytes, directBytes, inFloats, onFloats, separableBytes, type Case } from "../cases.js";
 import { hold, type ContestResult } from "../contest.js";
 import { EngineContender } from "../engineContender.js";
 import { byteFlags, startBlocked, type BlockedSource } from "../yardsticks/blocked.js";
 import { nothing, type Ground, type Group, type GroupResult } from "./group.js";
 
-const most = { ofFloats: 0.6, ofC: 1.15 };
+const most = { ofFloatPath: 0.6, ofC: 1.15 };
 
-/** The same case through working floats, where the engine still has that path beside the other one. */
+/** The same work through working floats: forced by a tolerance of nothing, or, for running sums, on an image of floats. */
+const ofFloats = (one: Case): Case => (one.options.method === "running-sum" ? onFloats(one) : inFloats(one));
+
 async function againstFloats({ engine }: Ground, one: Case): Promise<ContestResult> {
   const subject = new EngineContender(engine, one);
-  const floats = new EngineContender(engine, inFloats(one), subject.planes);
+  const floats = new EngineContender(engine, ofFloats(one));
   try {
-    return await hold({ work: `${one.name}: own f32 path`, subject, rivals: [floats], bar: most.ofFloats });
+    return await hold({ work: `${one.name}: own f32 path`, subject, rivals: [floats], bar: most.ofFloatPath });
   } finally {
     subject.filter.dispose();
     floats.filter.dispose();

@@ -7,6 +7,16 @@
 static inline __m128i load(const void *from) { return _mm_loadu_si128((const __m128i *)from); }
 static inline void store(void *to, __m128i value) { _mm_storeu_si128((__m128i *)to, value); }
 
+/*
+ * sum + (pairs of samples . pairs of taps). The empty instruction keeps the compiler from putting the products of many taps before
+ * their sums, as it otherwise does with integers: they would not fit into registers.
+ */
+#define ADD_PRODUCT(sum, samples, taps) \
+  do { \
+    (sum) = _mm_add_epi32(sum, _mm_madd_epi16(samples, taps)); \
+    __asm__("" : "+x"(sum)); \
+  } while (0)
+
 /* Two taps side by side, four times over. */
 static inline __m128i tap_pair(int first, int second) { return _mm_set1_epi32((int)((uint32_t)(second & 0xffff) << 16 | (uint32_t)(first & 0xffff))); }
 

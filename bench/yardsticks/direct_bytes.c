@@ -74,8 +74,8 @@ static inline __attribute__((always_inline)) void sweep(const Job *job, Block *b
       UNROLL(TIMES) for (int i = 0; i < TAP_COLUMNS; i++) \
         UNROLL(8) for (int v = 0; v < V; v++) { \
           const __m128i s = load(from + 2 * (i * CHANNELS + 4 * v)); \
-          sums[0][v] = _mm_add_epi32(sums[0][v], _mm_madd_epi16(s, pairs_of[0][p][i])); \
-          sums[1][v] = _mm_add_epi32(sums[1][v], _mm_madd_epi16(s, pairs_of[1][p][i])); \
+          ADD_PRODUCT(sums[0][v], s, pairs_of[0][p][i]); \
+          ADD_PRODUCT(sums[1][v], s, pairs_of[1][p][i]); \
         } \
     } \
     UNROLL(2) for (int v = 0; v < V; v += 4) { \

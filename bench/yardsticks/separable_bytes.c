@@ -72,8 +72,8 @@ typedef void Rows(uint8_t *out, size_t count);
         const int16_t *from = rows[p] + 2 * x; \
         UNROLL(8) for (int v = 0; v < V; v++) { \
           const __m128i s = load(from + 8 * v); \
-          sums[0][v] = _mm_add_epi32(sums[0][v], _mm_madd_epi16(s, column_pairs[0][p])); \
-          sums[1][v] = _mm_add_epi32(sums[1][v], _mm_madd_epi16(s, column_pairs[1][p])); \
+          ADD_PRODUCT(sums[0][v], s, column_pairs[0][p]); \
+          ADD_PRODUCT(sums[1][v], s, column_pairs[1][p]); \
         } \
       } \
       UNROLL(2) for (int k = 0; k < 2; k++) UNROLL(4) for (int v = 0; v < V; v += 2) \
@@ -86,7 +86,7 @@ typedef void Rows(uint8_t *out, size_t count);
     __m128i sums[U]; \
     UNROLL(8) for (int v = 0; v < vectors; v++) sums[v] = _mm_set1_epi32(1 << (row_shift - 1)); \
     UNROLL(TIMES) for (int q = 0; q < ROW_PAIRS; q++) \
-      UNROLL(8) for (int v = 0; v < vectors; v++) sums[v] = _mm_add_epi32(sums[v], _mm_madd_epi16(load(from + 2 * (2 * q * CHANNELS + 4 * v)), row_pairs[q])); \
+      UNROLL(8) for (int v = 0; v < vectors; v++) ADD_PRODUCT(sums[v], load(from + 2 * (2 * q * CHANNELS + 4 * v)), row_pairs[q]); \
     UNROLL(2) for (int v = 0; v < vectors; v += 4) leave_bytes(out + 4 * v, sums + v, row_shift); \
   } \
   static void rows##U##kind(uint8_t *out, size_t count) { \
