@@ -19,6 +19,8 @@ export interface Contest {
   asides?: readonly Contender[];
   /** The subject's time is compared with the rival's times this: 1 unless samples differ. */
   weight?: number;
+  /** Rivals that are measured to the end, the fastest at a look: 3 unless given. */
+  shortlist?: number;
   /** Largest ratio that is good enough; absent where it is told for information. */
   bar?: number;
 }
@@ -39,16 +41,13 @@ export interface ContestResult {
 /** Repetitions of every contest. */
 export const turns = 21;
 
-/** Rivals that are measured to the end, where a look tells that the others are slower. */
-const shortlist = 3;
-
 const rounded = (ratio: number): number => Number(ratio.toFixed(3));
 
 const verdictOf = (ratio: number, bar: number | undefined): ContestResult["verdict"] =>
   bar === undefined ? "for information" : ratio <= bar ? "pass" : "MISS";
 
 /** Runs all sides in turns and compares medians. Every side that is measured is verified. */
-export async function hold({ work, subject, rivals, asides = [], weight = 1, bar }: Contest): Promise<ContestResult> {
+export async function hold({ work, subject, rivals, asides = [], weight = 1, shortlist = 3, bar }: Contest): Promise<ContestResult> {
   const chosen = await fastest(rivals, planeCount, shortlist);
   const contenders = [subject, ...chosen, ...asides];
   await warm(contenders, planeCount);

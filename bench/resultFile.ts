@@ -25,19 +25,19 @@ function laidOut(value: unknown, indent = ""): string {
   return `${open}\n${deeper}${parts.join(`,\n${deeper}`)}\n${indent}${close}`;
 }
 
-/** The file of a kind of result on this processor and runtime. */
-const nameOf = (what: string, { processor, versions }: Host): string => `${what}-${plain(processor)}-${runtimeOf(versions)}.json`;
+/** node-20.20.2: what this process runs on. */
+const runtimeOf = ({ versions }: Host): string => `node-${versions["node"] ?? ""}`;
 
-/** node-20.20.2, chromium-156.0 … */
-const runtimeOf = (versions: Host["versions"]): string => {
-  const [runtime, version] = Object.entries(versions).find(([name]) => name === "chromium") ?? ["node", versions["node"] ?? ""];
-  return `${runtime}-${plain(version)}`;
-};
+const nameOf = (what: string, host: Host, runtime: string): string => `${what}-${plain(host.processor)}-${plain(runtime)}.json`;
 
-/** Writes bench/results/<what>-<processor>-<runtime>.json and says where. */
-export function writeResult(what: string, host: Host, content: Record<string, unknown>): void {
+/**
+ * Writes bench/results/<what>-<processor>-<runtime>.json and says where.
+ *
+ * @param runtime where the measured code ran, with its version
+ */
+export function writeResult(what: string, host: Host, content: Record<string, unknown>, runtime = runtimeOf(host)): void {
   mkdirSync(folder, { recursive: true });
-  const name = nameOf(what, host);
+  const name = nameOf(what, host, runtime);
   writeFileSync(join(folder, name), `${laidOut({ what, host, ...content })}\n`);
   console.log(`\nwritten: bench/results/${name}`);
 }
@@ -48,7 +48,7 @@ export function writeResult(what: string, host: Host, content: Record<string, un
  * @param under the property that holds the parts by name; each says itself when and with what it was measured
  */
 export function mergeResult(what: string, host: Host, under: string, parts: Record<string, unknown>): void {
-  const path = join(folder, nameOf(what, host));
+  const path = join(folder, nameOf(what, host, runtimeOf(host)));
   const known = existsSync(path) ? (JSON.parse(readFileSync(path, "utf8")) as Record<string, unknown>)[under] : {};
   writeResult(what, host, { [under]: { ...(known as Record<string, unknown>), ...parts } });
 }

@@ -16,7 +16,7 @@ async function against({ engine }: Ground, one: Case, start: Start, work: string
   const subject = new EngineContender(engine, one);
   const { process, contenders } = start(one, subject);
   try {
-    return await hold({ work, subject, rivals: contenders, bar });
+    return await hold({ work, subject, rivals: contenders, shortlist: 1, bar });
   } finally {
     await process.end();
     subject.filter.dispose();

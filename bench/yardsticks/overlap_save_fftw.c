@@ -25,6 +25,7 @@ static Tile tiles[64];
 static int tile_count;
 static int image_columns, image_rows, tap_columns, tap_rows;
 static const float *taps;
+static const char *wisdom;        /* what FFTW has measured so far: read at the start, written after each plan */
 
 static double milliseconds(void) {
   struct timespec now;
@@ -52,7 +53,7 @@ static Tile *tile_of(int columns, int rows) {
   one->spectrum = fftwf_alloc_complex(floats / 2);
   one->forward = fftwf_plan_dft_r2c_2d(rows, columns, one->tile, (fftwf_complex *)one->tile, FFTW_MEASURE);
   one->backward = fftwf_plan_dft_c2r_2d(rows, columns, (fftwf_complex *)one->tile, one->tile, FFTW_MEASURE);
-  if (one->forward == NULL || one->backward == NULL) exit(1);
+  if (one->forward == NULL || one->backward == NULL || !fftwf_export_wisdom_to_filename(wisdom)) exit(1);
   memset(one->tile, 0, floats * sizeof(float));
   for (int j = 0; j < tap_rows; j++) memcpy(one->tile + (size_t)j * one->padded, taps + (size_t)j * tap_columns, tap_columns * sizeof(float));
   fftwf_execute(one->forward);
@@ -108,7 +109,9 @@ static void filter(const Tile *one, const float *image, float *result) {
 }
 
 int main(int count, char **words) {
-  if (count != 9) return 2;
+  if (count != 10) return 2;
+  wisdom = words[8];
+  fftwf_import_wisdom_from_filename(wisdom);
   image_columns = atoi(words[1]), image_rows = atoi(words[2]);
   const int planes = atoi(words[3]);
   tap_columns = atoi(words[5]), tap_rows = atoi(words[6]);
@@ -121,7 +124,7 @@ int main(int count, char **words) {
   while (fgets(line, sizeof line, stdin) != NULL) {
     int columns, rows, plane;
     if (strcmp(line, "save\n") == 0) {
-      FILE *file = fopen(words[8], "wb");
+      FILE *file = fopen(words[9], "wb");
       if (file == NULL || fwrite(result, sizeof(float), samples, file) != samples) exit(1);
       fclose(file);
       printf("{\"saved\": 1}\n");
