@@ -26,6 +26,11 @@ import { CURVE } from "./record";
 import { sweepRunningSum as sweepRunningSumOf } from "./runningSum";
 import { sweepDirect as sweepDirectOf, sweepSeparable as sweepSeparableOf } from "./sweep";
 
+/** 1 where products may be added without being rounded before. */
+export function fused(): i32 {
+  return ASC_FEATURE_RELAXED_SIMD ? 1 : 0;
+}
+
 /** Floats in a working vector: 4 or 1. */
 export function vectorFloats(): i32 {
   return ASC_FEATURE_SIMD ? 4 : 1;

@@ -69,10 +69,11 @@ export function multiply<V>(a: V, b: V): V {
   return <V>((<f32>a) * (<f32>b));
 }
 
-/** a + h · x, with both roundings (never fused: the same bytes on every processor). */
+/** a + h · x: with both roundings, the same bytes on every processor; in the relaxed build with one, where the processor can. */
 // @ts-ignore: decorator
 @inline
 export function multiplyAdd<V>(a: V, h: V, x: V): V {
+  if (isVector<V>() && ASC_FEATURE_RELAXED_SIMD) return changetype<V>(v128.relaxed_madd<f32>(changetype<v128>(h), changetype<v128>(x), changetype<v128>(a)));
   return add<V>(a, multiply<V>(h, x));
 }
 

@@ -191,7 +191,11 @@ export interface Explanation {
   toString(): string;
 }
 
-export type Build = "simd" | "scalar";
+/**
+ * The form of the core. "simd" and "scalar" give the same bytes on every processor; "relaxed-simd" adds products without rounding them
+ * before where the processor can, which is faster, and whose bytes differ between processors.
+ */
+export type Build = "simd" | "scalar" | "relaxed-simd";
 
 /** Nanoseconds per counted operation, measured on some hardware. */
 export interface HardwareProfile {
@@ -211,7 +215,7 @@ export interface EngineWorker {
 }
 
 export interface EngineOptions {
-  /** @defaultValue `"auto"`: SIMD where the host has it and it passes the known-answer test, else scalar */
+  /** @defaultValue `"auto"`: SIMD where the host has it and it passes the known-answer test, else scalar. Never `"relaxed-simd"` */
   build?: Build | "auto";
   /** @defaultValue the shipped profile */
   profile?: HardwareProfile;

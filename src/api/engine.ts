@@ -120,12 +120,16 @@ class ConvolutionEngine implements Engine {
   }
 }
 
+/** None is shipped for the fused build: its engines choose by the prices of the SIMD one, of which it has the very work. */
+function shippedProfileFor(build: Build): HardwareProfile {
+  return shippedProfiles.find((profile) => profile.build === (build === "scalar" ? "scalar" : "simd"))!;
+}
+
 /** As `createEngine`, with another clock and another way to yield. */
 export async function engineWithPacing(options: EngineOptions | undefined, pacing: Pacing): Promise<Engine> {
   const checked = checkedEngineOptions(options);
   const core = await loadCore(checked);
-  const shipped = shippedProfiles.find(({ build }) => build === core.build)!;
-  const profile = checked.profile ? profileForBuild(checked.profile, core.build) : shipped;
+  const profile = checked.profile ? profileForBuild(checked.profile, core.build) : shippedProfileFor(core.build);
   const crew = checked.threads > 1 ? await Crew.start(checked.threads - 1, core, checked.createWorker) : undefined;
   return new ConvolutionEngine(core, profile, pacing, crew);
 }
@@ -134,7 +138,7 @@ export async function engineWithPacing(options: EngineOptions | undefined, pacin
  * Loads the core and makes an engine of it. Nothing is shared between engines.
  *
  * @throws ConvolutionError `webassembly-missing`, `webassembly-blocked`, `self-test-failed` (host); `unknown-option`, `unknown-value`,
- * `invalid-number`, `invalid-profile`, `not-supported` (caller)
+ * `invalid-number`, `invalid-profile` (caller)
  * @example
  * const engine = await createEngine();
  * const blurred = engine.convolve({ data: photo, width: 640, height: 480 }, gaussian({ sigma: 2 }));

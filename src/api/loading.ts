@@ -18,13 +18,17 @@ export interface Core {
   shared: boolean;
 }
 
-/** The default page loads the SIMD binary with the package; the scalar one comes only when it is needed. */
+/** The default page loads the SIMD binary with the package; the others come only when they are needed. */
 async function codeOf(build: Build): Promise<string> {
-  return build === "simd" ? simdCode : (await import("../generated/scalar.js")).code;
+  if (build === "simd") return simdCode;
+  return build === "scalar" ? (await import("../generated/scalar.js")).code : (await import("../generated/relaxedSimd.js")).code;
 }
 
 /** An eight-byte header and the smallest function that uses a vector: what a host without SIMD refuses. */
 const simdProbe = Uint8Array.of(0, 97, 115, 109, 1, 0, 0, 0, 1, 5, 1, 96, 0, 1, 123, 3, 2, 1, 0, 10, 10, 1, 8, 0, 65, 0, 253, 15, 253, 98, 11);
+
+/** The same, as base64, with the smallest function that multiplies and adds in one step (relaxed SIMD's f32x4.relaxed_madd). */
+const relaxedProbe = "AGFzbQEAAAABBQFgAAF7AwIBAAoTAREAQQD9D0EA/Q9BAP0P/YUCCw==";
 
 function hostError(code: "webassembly-missing" | "webassembly-blocked", message: string, cause?: unknown): ConvolutionError {
   const expected = code === "webassembly-blocked" ? "script-src 'self' 'wasm-unsafe-eval'" : "WebAssembly";
@@ -55,18 +59,25 @@ function answered(routines: Routines, memory: EngineMemory, build: Build): strin
   }
 }
 
+function buildOf(routines: Routines): Build {
+  if (routines.fused() === 1) return "relaxed-simd";
+  return routines.vectorFloats() === 4 ? "simd" : "scalar";
+}
+
 /** @throws ConvolutionError `self-test-failed` with the answer that was wrong */
 async function start(wanted: Build | "auto", module: WebAssembly.Module, memory: EngineMemory, shared: boolean): Promise<Core> {
   const linked = await link(module, memory.memory);
-  const build: Build = "missing" in linked || linked.vectorFloats() === 4 ? "simd" : "scalar";
-  const failure = "missing" in linked ? linked.missing : wanted !== "auto" && wanted !== build ? `it is a ${build} core` : answered(linked, memory, build);
+  const build = "missing" in linked ? "simd" : buildOf(linked);
+  const unasked = build !== wanted && (wanted !== "auto" || build === "relaxed-simd");
+  const failure = "missing" in linked ? linked.missing : unasked ? `it is a ${build} core` : answered(linked, memory, build);
   if (failure === undefined) return { build, memory, routines: linked as Routines, module, shared };
   const message = `The ${wanted} core fails its known-answer test: ${failure}. Try another build; if you passed a module, compile it from this package's own core.`;
   throw new ConvolutionError("self-test-failed", message, { expected: "the known answers", received: failure });
 }
 
 /**
- * Loads, links and tests a core. "auto" takes SIMD where the host has it and it gives the right answers, else the scalar core.
+ * Loads, links and tests a core. "auto" takes SIMD where the host has it and it gives the right answers, else the scalar core; the fused one
+ * comes by name only.
  *
  * @throws ConvolutionError `webassembly-missing`, `webassembly-blocked`, `self-test-failed`, `memory-exhausted`
  */
@@ -82,6 +93,11 @@ export async function loadCore(options: CheckedEngineOptions): Promise<Core> {
   const simd = WebAssembly.validate(simdProbe);
   if (build === "scalar" || (build === "auto" && !simd)) return startOwn("scalar");
   if (!simd) throw hostError("webassembly-missing", 'This host\'s WebAssembly has no SIMD. Use build "auto" or "scalar".');
+  if (build === "relaxed-simd") {
+    if (WebAssembly.validate(bytesOfBase64(relaxedProbe))) return startOwn("relaxed-simd");
+    const advice = 'Use build "auto" or "simd", or Node 22 and later.';
+    throw hostError("webassembly-missing", `This host's WebAssembly has no relaxed SIMD, which the build "relaxed-simd" needs. ${advice}`);
+  }
   try {
     return await startOwn("simd");
   } catch (cause) {

@@ -57,7 +57,7 @@ export function addPlanOptions(command: Command, outputSamples: readonly SampleT
     .addOption(choice("--output-sample <type>", "samples of the result (default: as the image); values are not rescaled, see --gain", outputSamples))
     .option("--gain <factor>", "result = gain · y + offset, such as 1/257 from 16 to 8 bits (default: 1)", number("--gain"))
     .option("--offset <levels>", "see --gain, such as 128 for signed results (default: 0)", number("--offset"))
-    .addOption(choice("--build <build>", "WebAssembly build of the engine (default: auto)", ["auto", "simd", "scalar"]))
+    .addOption(choice("--build <build>", "WebAssembly build of the engine (default: auto)", ["auto", "simd", "scalar", "relaxed-simd"]))
     .option("--memory-limit <bytes>", "memory the engine may take, such as 256MiB", (text) => byteCount(text, "--memory-limit"))
     .option("--json", "print one JSON object for programs, errors too");
 }

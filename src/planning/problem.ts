@@ -150,5 +150,5 @@ export function inCorrelationOrder(problem: Problem, vector: Float64Array<ArrayB
 
 /** Floats of one of the core's working vectors. */
 export function vectorFloats(problem: Problem): number {
-  return problem.build === "simd" ? 4 : 1;
+  return problem.build === "scalar" ? 1 : 4;
 }

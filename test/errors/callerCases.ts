@@ -11,6 +11,7 @@ import {
   type PrepareOptions,
   type Raster,
 } from "../../src/index.js";
+import { encodePng } from "../../src/cli/encodePng.js";
 import type { Bench } from "./bench.js";
 import { untyped, type ErrorCase } from "./errorCase.js";
 import { noiseKernel } from "../support/kernels.js";
@@ -71,7 +72,13 @@ export const namesAndNumbers: Pick<Record<ErrorCode, ErrorCase[]>, "unknown-opti
       says: ["threads", String(threads), "1…64"],
     })),
   ],
-  "not-supported": [{ title: "a build with fused multiply–add", act: () => createEngine(untyped({ build: "relaxed-simd" })), says: ["relaxed-simd"] }],
+  "not-supported": [
+    {
+      title: "floats in a PNG",
+      act: () => encodePng({ data: new Float32Array(1), width: 1, height: 1, channels: 1 }, []),
+      says: ["--output-sample u8 or u16"],
+    },
+  ],
 };
 
 const target = (change: object) => (bench: Bench) =>

@@ -14,6 +14,8 @@ export interface CheckedEngineOptions {
   createWorker: EngineOptions["createWorker"];
 }
 
+const builds: readonly Build[] = ["simd", "scalar", "relaxed-simd"];
+
 /** More threads than this are refused: no image has work for them, and each takes memory. */
 const mostThreads = 64;
 
@@ -32,17 +34,10 @@ function checkedCreateWorker(value: unknown): EngineOptions["createWorker"] {
   throw new ConvolutionError("unknown-value", message, { expected: "a function", received: typeof value });
 }
 
-function refuseNotYet(options: Record<string, unknown>): void {
-  if (options["build"] !== "relaxed-simd") return;
-  const message = 'createEngine: build "relaxed-simd" is not supported. Use "auto", "simd" or "scalar".';
-  throw new ConvolutionError("not-supported", message, { expected: ["auto", "simd", "scalar"], received: "relaxed-simd" });
-}
-
-/** @throws ConvolutionError `unknown-option`, `unknown-value`, `invalid-number`, `invalid-profile`, `not-supported` */
+/** @throws ConvolutionError `unknown-option`, `unknown-value`, `invalid-number`, `invalid-profile` */
 export function checkedEngineOptions(given: unknown): CheckedEngineOptions {
   if (given !== undefined) checkOptionNames("createEngine", given, ["build", "profile", "memoryLimit", "module", "threads", "createWorker"]);
   const options = (given ?? {}) as Record<string, unknown>;
-  refuseNotYet(options);
   const build = options["build"] ?? "auto";
   const limit = { what: `a number of bytes ${pageBytes}…${mostBytes}`, least: pageBytes, most: mostBytes };
   const { module } = options;
@@ -51,7 +46,7 @@ export function checkedEngineOptions(given: unknown): CheckedEngineOptions {
     throw new ConvolutionError("unknown-value", message, { expected: "a WebAssembly.Module", received: typeof module });
   }
   return {
-    build: chosenWord("createEngine", "build", build, ["auto", "simd", "scalar"]),
+    build: chosenWord("createEngine", "build", build, ["auto", ...builds]),
     memoryLimit: options["memoryLimit"] === undefined ? mostBytes : checkedNumber("createEngine", "memoryLimit", options["memoryLimit"], limit),
     profile: options["profile"] === undefined ? undefined : checkedProfile(options["profile"]),
     module: module as WebAssembly.Module | undefined,
@@ -70,7 +65,7 @@ function checkedProfile(given: unknown): HardwareProfile {
   if (typeof given !== "object" || given === null) refuseProfile(`it is ${given === null ? "null" : typeof given}`, "an object");
   const { version, host, build, date, nanoseconds } = given as Partial<Record<keyof HardwareProfile, unknown>>;
   if (version !== 1) refuseProfile(`version is ${String(version)}`, "version 1");
-  if (build !== "simd" && build !== "scalar") refuseProfile(`build is ${String(build)}`, '"simd" or "scalar"');
+  if (!builds.includes(build as Build)) refuseProfile(`build is ${String(build)}`, builds.map((name) => `"${name}"`).join(" or "));
   if (typeof nanoseconds !== "object" || nanoseconds === null) refuseProfile("nanoseconds is missing", "nanoseconds by operation");
   const prices: Record<string, number> = {};
   for (const name of operationNames) {
@@ -79,7 +74,7 @@ function checkedProfile(given: unknown): HardwareProfile {
       refuseProfile(`nanoseconds.${name} is ${String(price)}`, "a finite number, 0 or more");
     prices[name] = price;
   }
-  return { version, host: String(host), build, date: String(date), nanoseconds: prices };
+  return { version, host: String(host), build: build as Build, date: String(date), nanoseconds: prices };
 }
 
 /** @throws ConvolutionError `invalid-profile` where it was measured with another build */
