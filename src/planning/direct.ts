@@ -2,7 +2,7 @@ import * as field from "../generated/record.js";
 import { outputBound, sumError, underflow, type MethodError } from "./accuracy.js";
 import { frameCounts, frameOf, programOf } from "./frame.js";
 import type { MethodPlan } from "./method.js";
-import { correlationTaps, type Problem } from "./problem.js";
+import { floatTaps, type Problem } from "./problem.js";
 import { pairBlocks, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
 
 /** Extended rows in a ring; every tap meets every result: m·n multiply–adds a sample. */
@@ -10,9 +10,11 @@ interface DirectFrame extends SweepFrame {
   taps: number;
 }
 
+const operationsPerRow = ({ horizontal, vertical, channels }: Problem): number => horizontal.taps * vertical.taps * horizontal.count * channels;
+
 function frame(problem: Problem): DirectFrame {
-  const { horizontal, vertical, channels } = problem;
-  const base = frameOf(problem, sweepStagedRows(problem, horizontal.taps * vertical.taps * horizontal.count * channels));
+  const { horizontal, vertical } = problem;
+  const base = frameOf(problem, sweepStagedRows(problem, operationsPerRow(problem)));
   const { arrangement } = base;
   const ringRows = vertical.taps + 1;
   return {
@@ -50,6 +52,7 @@ export const direct: MethodPlan = {
         directLoop: blocks * vertical.taps,
       },
       bytes: layout.arrangement.byteLength,
+      leastCall: 2 * operationsPerRow(problem),
     };
   },
 
@@ -61,7 +64,7 @@ export const direct: MethodPlan = {
     const layout = frame(problem);
     return programOf(problem, layout, {
       fields: (job) => sweepFields(job, layout).pointer(field.TAPS, layout.taps),
-      tables: [{ offset: layout.taps, data: Float32Array.from(correlationTaps(problem)) }, ringTables(layout, 1)],
+      tables: [{ offset: layout.taps, data: floatTaps(problem) }, ringTables(layout, 1)],
       setup: [],
       steps: sweepSteps(problem, layout, "sweepDirect"),
       error: error(problem),

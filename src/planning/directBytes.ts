@@ -13,10 +13,12 @@ export interface PairFrame extends SweepFrame {
   byteStride: number;
 }
 
+const operationsPerRow = ({ horizontal, vertical, channels }: Problem): number => horizontal.taps * pairsOfRows(vertical.taps) * horizontal.count * channels;
+
 function frame(problem: Problem): PairFrame {
   const { horizontal, vertical, channels } = problem;
   const ringRows = pairsOfRows(vertical.taps);
-  const base = frameOf(problem, sweepStagedRows(problem, horizontal.taps * ringRows * horizontal.count * channels));
+  const base = frameOf(problem, sweepStagedRows(problem, operationsPerRow(problem)));
   const { arrangement } = base;
   const byteStride = rowStride(horizontal.extended * channels + 16);
   return {
@@ -58,6 +60,20 @@ function error(problem: Problem): number {
   return 255 * ofTaps + offsetError(offset, shift);
 }
 
+const tables = /* @__PURE__ */ new WeakMap<FixedTaps, Int32Array<ArrayBuffer>>();
+
+/** Taps as pairs of rows meet them; parts of one problem share the table. */
+function pairTaps(problem: Problem): Int32Array<ArrayBuffer> {
+  const { horizontal, vertical, reversed } = problem;
+  const taps = fixed(problem);
+  let table = tables.get(taps);
+  if (!table) {
+    const inOrder = reversed ? taps.integers.slice().reverse() : taps.integers;
+    tables.set(taps, (table = tapsByPairs(inOrder, vertical.taps, horizontal.taps)));
+  }
+  return table;
+}
+
 export const directBytes: MethodPlan = {
   name: "direct",
   variant: "bytes",
@@ -76,6 +92,7 @@ export const directBytes: MethodPlan = {
       setup: { setup: 1, setupTap: horizontal.taps * vertical.taps, setupByte: layout.arrangement.byteLength },
       run: { ...byteCounts(problem, layout), pairTap: floats * horizontal.taps * layout.ringRows, pairLoop: blocks * layout.ringRows },
       bytes: layout.arrangement.byteLength,
+      leastCall: 2 * operationsPerRow(problem),
     };
   },
 
@@ -84,10 +101,9 @@ export const directBytes: MethodPlan = {
   arithmetic: (problem) => `fixed point: 8-bit samples × 16-bit taps ÷ 2^${fixed(problem).shift}, exact 32-bit sums`,
 
   program(problem) {
-    const { horizontal, vertical, request, reversed } = problem;
     const layout = frame(problem);
-    const { integers, shift } = fixed(problem);
-    const inOrder = reversed ? integers.slice().reverse() : integers;
+    const { request } = problem;
+    const { shift } = fixed(problem);
     return programOf(problem, layout, {
       fields: (job) =>
         sweepFields(job, layout)
@@ -96,7 +112,7 @@ export const directBytes: MethodPlan = {
           .integer(field.ENTERED_STRIDE, layout.byteStride)
           .integer(field.SUM_BIAS, biasOf(request.output.offset, shift))
           .integer(field.SUM_SHIFT, shift),
-      tables: [{ offset: layout.taps, data: tapsByPairs(inOrder, vertical.taps, horizontal.taps) }, ringTables(layout, 1)],
+      tables: [{ offset: layout.taps, data: pairTaps(problem) }, ringTables(layout, 1)],
       setup: [],
       steps: sweepSteps(problem, layout, "sweepDirectBytes"),
       error: { relative: 0, absolute: error(problem) },

@@ -6,7 +6,7 @@ import type { Lane, Program, Step, Table } from "../runtime/program.js";
 import { integerResults, leastWeight, outputBound, underflow, type MethodError } from "./accuracy.js";
 import { frameCounts, frameOf, plainStep, programOf, writing, type Frame } from "./frame.js";
 import type { MethodPlan } from "./method.js";
-import { correlationTaps, vectorFloats, type Problem } from "./problem.js";
+import { floatTaps, vectorFloats, type Problem } from "./problem.js";
 import { remembered } from "./remembered.js";
 import { sampleFacts } from "./samples.js";
 import { planTiles, type Tiling } from "./tiles.js";
@@ -210,7 +210,7 @@ function leaveSteps(problem: Problem, layout: FftFrame, strip: number): Step[] {
 }
 
 /** Each thread takes at least this many calls of a phase, so that all end at about the same time. */
-const callsOfEach = 4;
+const callsOfEach = 8;
 
 /** Floats of columns and groups of rows that one call transforms. */
 function grains(problem: Problem, tiling: Tiling): { columns: number; groups: number } {
@@ -342,7 +342,7 @@ export const fft: MethodPlan = {
           .pointer(field.MARK_COUNTS, layout.markCounts)
           .pointer(field.MARK_ROW, layout.markRow);
       },
-      tables: [{ offset: layout.taps, data: Float32Array.from(correlationTaps(problem)) }, ...transforms(problem)],
+      tables: [{ offset: layout.taps, data: floatTaps(problem) }, ...transforms(problem)],
       setup: setupSteps(problem, tiling),
       steps: phases.flat(),
       error: error(problem),

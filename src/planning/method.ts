@@ -10,6 +10,8 @@ export interface Work {
   /** Each run. */
   run: Counts;
   bytes: number;
+  /** Multiply–adds of the shortest call into the core, where it can be long: two rows of results under a large kernel. */
+  leastCall?: number;
 }
 
 /** The cast of every method, in this order; planning/methods is the table of them. */

@@ -11,6 +11,12 @@ const comfortableBytes = 67_108_864;
 /** Narrower panels than this would enter mostly halo. */
 const narrowest = 64;
 
+/**
+ * Multiply–adds that one call may take: 10 ms at what SIMD builds reach on the slower of the machines measured. Where two whole rows take more, narrower
+ * panels do, down to the narrowest.
+ */
+const mostPerCall = 80_000_000;
+
 /** How a method cuts a problem: problems of one width side by side, the last one flush with the edge, and the work of all. */
 export interface Panels {
   problems: Problem[];
@@ -41,12 +47,13 @@ function* cuts(plan: MethodPlan, problem: Problem): Generator<Cut> {
   }
 }
 
-/** The fewest panels that are comfortable, else the fewest that fit, else those that need least. */
+/** The fewest panels that are comfortable in memory and time, else the fewest that fit, else those that need least. */
 function bestCut(plan: MethodPlan, problem: Problem): Cut {
   let fitting: Cut | undefined;
   let least: Cut | undefined;
   for (const cut of cuts(plan, problem)) {
-    if (cut.work.bytes <= cut.first.bytesAvailable) return cut;
+    const short = (cut.work.leastCall ?? 0) <= mostPerCall || cut.width <= narrowest;
+    if (short && cut.work.bytes <= cut.first.bytesAvailable) return cut;
     if (!fitting && cut.work.bytes <= problem.bytesAvailable) fitting = cut;
     if (!least || cut.work.bytes < least.work.bytes) least = cut;
   }

@@ -143,6 +143,15 @@ export function correlationTaps(problem: Problem): Float64Array<ArrayBuffer> {
   return problem.reversed ? taps.reverse() : taps;
 }
 
+const floats = new WeakMap<Request, Float32Array<ArrayBuffer>>();
+
+/** The same in single precision; parts of one problem share the array. */
+export function floatTaps(problem: Problem): Float32Array<ArrayBuffer> {
+  let taps = floats.get(problem.request);
+  if (!taps) floats.set(problem.request, (taps = Float32Array.from(correlationTaps(problem))));
+  return taps;
+}
+
 /** A vector of a separable term in correlation order. */
 export function inCorrelationOrder(problem: Problem, vector: Float64Array<ArrayBuffer>): Float64Array<ArrayBuffer> {
   return problem.reversed ? vector.slice().reverse() : vector;

@@ -41,10 +41,13 @@ export function termsOf(problem: Problem): SeparableTerm[] {
   return [{ column: new Float64Array(problem.vertical.taps), row: new Float64Array(problem.horizontal.taps) }];
 }
 
+const operationsPerRow = ({ horizontal, vertical, channels }: Problem, terms: number): number =>
+  terms * (horizontal.taps + vertical.taps) * horizontal.count * channels;
+
 function frame(problem: Problem): SeparableFrame {
-  const { horizontal, vertical, channels } = problem;
+  const { horizontal, vertical } = problem;
   const terms = termsOf(problem).length;
-  const base = frameOf(problem, sweepStagedRows(problem, terms * (horizontal.taps + vertical.taps) * horizontal.count * channels));
+  const base = frameOf(problem, sweepStagedRows(problem, operationsPerRow(problem, terms)));
   const { arrangement } = base;
   const ringRows = vertical.taps + 1;
   return {
@@ -106,6 +109,7 @@ export const separable: MethodPlan = {
         columnLoop: layout.terms * columns.blocks,
       },
       bytes: layout.arrangement.byteLength,
+      leastCall: 2 * operationsPerRow(problem, layout.terms),
     };
   },
 
