@@ -1,14 +1,17 @@
 /** `npm run bench [-- part of a name]`: how long each named case takes, prepared, in each build. */
-import { Bench } from "tinybench";
 import { createEngine, type Build } from "../src/index.js";
-import { cases } from "./cases.js";
+import { cases, samplesOf } from "./cases.js";
 import { EngineContender } from "./engineContender.js";
 import { describeHost, keepToOneCore } from "./host.js";
+import { timeLoops, warnOfSaturation } from "./loops.js";
 import { writeResult } from "./resultFile.js";
-import { spreadOf, type Spread } from "./spread.js";
+import type { Spread } from "./spread.js";
 import { digits, printTable } from "./table.js";
 
 const builds: readonly Build[] = ["simd", "scalar"];
+/** For each case in each build: rounds, with their warm-up, and the verification make half as much again of it. */
+const milliseconds = 1200;
+
 const wanted = process.argv[2] ?? "";
 const chosen = Object.values(cases).filter(({ name }) => name.toLowerCase().includes(wanted.toLowerCase()));
 if (chosen.length === 0)
@@ -19,35 +22,37 @@ if (chosen.length === 0)
   );
 
 const host = describeHost(keepToOneCore());
-const rows: { case: string; build: Build; milliseconds: Spread; predicted: number; largestDifference: number }[] = [];
+const rows: { case: string; build: Build; milliseconds: Spread; nanosecondsPerSample: number; predicted: number; bytes: number; largestDifference: number }[] =
+  [];
 
 for (const build of builds) {
   const engine = await createEngine({ build });
-  const bench = new Bench({ name: build, time: 400, iterations: 11, warmupTime: 100, warmupIterations: 3, retainSamples: true });
   const contenders = chosen.map((one) => new EngineContender(engine, one));
-  for (const contender of contenders) {
-    let turn = 0;
-    bench.add(contender.name, () => contender.filterPlane(turn++));
-  }
-  await bench.run();
+  const times = await timeLoops(
+    contenders.map((contender) => ({ name: contender.name, run: (turn) => contender.filterPlane(turn) })),
+    milliseconds,
+  );
+  warnOfSaturation(times);
   for (const [index, contender] of contenders.entries()) {
-    const { result } = bench.tasks[index]!;
-    if (result.state !== "completed") throw new Error(`${contender.name} did not complete: ${result.state}`);
-    const predicted = contender.filter.explanation.milliseconds;
-    rows.push({ case: contender.name, build, milliseconds: spreadOf(result.latency.samples!), predicted, largestDifference: contender.verify() });
+    const spread = times[index]!.milliseconds;
+    const { milliseconds: predicted, bytes } = contender.filter.explanation;
+    const nanosecondsPerSample = Number(((1e6 * spread.median) / samplesOf(contender.case)).toPrecision(4));
+    rows.push({ case: contender.name, build, milliseconds: spread, nanosecondsPerSample, predicted, bytes, largestDifference: contender.verify() });
     contender.filter.dispose();
   }
   engine.dispose();
 }
 
 printTable(
-  ["case", "build", "median ms", "p25", "p75", "runs", "predicted", "largest difference"],
-  rows.map(({ case: name, build, milliseconds, predicted, largestDifference }) => [
+  ["case", "build", "median ms", "p25", "p75", "runs", "ns a sample", "predicted ms", "MiB", "largest difference"],
+  rows.map(({ case: name, build, milliseconds: { median, p25, p75, samples }, nanosecondsPerSample, predicted, bytes, largestDifference }) => [
     name,
     build,
-    ...[milliseconds.median, milliseconds.p25, milliseconds.p75].map(digits),
-    String(milliseconds.samples),
+    ...[median, p25, p75].map(digits),
+    String(samples),
+    digits(nanosecondsPerSample),
     digits(predicted),
+    digits(bytes / 2 ** 20),
     largestDifference.toExponential(1),
   ]),
 );

@@ -80,6 +80,15 @@ export const boxBytes = (taps: number): Case => ({
   options: { method: "running-sum", alpha: "none" },
 });
 
+export const boxFloats = (taps: number): Case => ({
+  name: `running sums f32 box ${taps}`,
+  layout: plane,
+  kernel: box(taps),
+  options: { method: "running-sum" },
+});
+
+export const withZeroBorder = (one: Case): Case => ({ ...one, name: `${one.name}, zero border`, options: { ...one.options, border: "zero" } });
+
 /** The same work on an image of another shape. */
 export const resized = (one: Case, width: number, height: number): Case => ({
   ...one,
