@@ -37,9 +37,8 @@ interface Block {
 /**
  * The engine's memory: the only place that touches its buffer.
  *
- * Policy. One block a filter, taken while planning and given back by `dispose`; the first free block that is large enough is
- * cut, neighbours that are free become one again, and only then does the memory grow, by whole pages. It never shrinks. Blocks of mixed sizes leave gaps of at
- * most what was given back; a block that fits no gap goes to the end.
+ * Policy. One block a filter and one a view, given back by `dispose`; the smallest free block that is large enough is cut, neighbours that
+ * are free become one again, and only where none fits does the memory grow, by whole pages. It never shrinks. DEVELOPERS.md says more.
  */
 export class EngineMemory {
   readonly memory: WebAssembly.Memory;
@@ -83,7 +82,7 @@ export class EngineMemory {
    * @throws ConvolutionError `memory-limit` (the engine's own limit), `memory-exhausted` (the host gives no more)
    */
   take(byteLength: number): number {
-    const index = this.#free.findIndex((block) => block.byteLength >= byteLength);
+    const index = this.#smallestThatFits(byteLength);
     if (index < 0) return this.#extend(byteLength);
     const block = this.#free[index]!;
     const { address } = block;
@@ -92,6 +91,14 @@ export class EngineMemory {
     if (block.byteLength === 0) this.#free.splice(index, 1);
     this.#clear(address, byteLength);
     return address;
+  }
+
+  #smallestThatFits(byteLength: number): number {
+    let best = -1;
+    for (const [index, block] of this.#free.entries()) {
+      if (block.byteLength >= byteLength && (best < 0 || block.byteLength < this.#free[best]!.byteLength)) best = index;
+    }
+    return best;
   }
 
   #extend(byteLength: number): number {
