@@ -1,6 +1,7 @@
 /** `npm run bench [-- part of a name]`: how long each named case takes, prepared, in each build. */
 import { createEngine, type Build } from "../src/index.js";
 import { cases, samplesOf } from "./cases.js";
+import { measureCurve } from "./curve.js";
 import { EngineContender } from "./engineContender.js";
 import { describeHost, keepToOneCore } from "./host.js";
 import { timeLoops, warnOfSaturation } from "./loops.js";
@@ -56,4 +57,14 @@ printTable(
     largestDifference.toExponential(1),
   ]),
 );
-if (wanted === "") writeResult("cases", host, { clock: "wall clock", rows });
+if (wanted === "") {
+  const engine = await createEngine({ build: "simd" });
+  const curve = await measureCurve(engine);
+  engine.dispose();
+  console.log();
+  printTable(
+    ["one f32 plane, 1080p", "taps", "median ms"],
+    curve.map(({ method, taps, milliseconds: { median } }) => [method, `${taps}×${taps}`, digits(median)]),
+  );
+  writeResult("cases", host, { clock: "wall clock", rows, curve });
+}
