@@ -59,18 +59,30 @@ function alone(plan: MethodPlan, problem: Problem, prices: Prices): Division {
   return { threads: 1, blocks: [problems], together: false, work, nanoseconds: priceOf(work.run, prices) };
 }
 
-/** Bands of nearly the same height, an even number of rows each but for the last. */
-function bandProblems(problem: Problem, count: number, bytesAvailable: number): Problem[] {
-  const rows = problem.vertical.count;
-  const height = 2 * Math.ceil(rows / count / 2);
-  const starts = Array.from({ length: Math.ceil(rows / height) }, (_, k) => k * height);
-  return starts.map((start) => ({
-    ...problem,
-    whole: problem.whole ?? problem,
-    row: start,
-    vertical: cutAxis(problem.vertical, start, Math.min(height, rows - start)),
-    bytesAvailable,
-  }));
+/**
+ * Bands from top to bottom. Cores are seldom equally fast at every moment: each thread begins with a band of three quarters of its share,
+ * and whoever is done first takes of the rest, which is cut into one small band a thread. The last band is the calling thread's own. Where
+ * small bands would enter mostly rows that others enter too, there are none.
+ */
+function bandHeights({ vertical }: Problem, threads: number): number[] {
+  const share = vertical.count / threads;
+  const even = (rows: number): number => 2 * Math.ceil(rows / 2);
+  const small = even(share / 4);
+  const smallOnes = small >= rowsPerRepeatedRow * 2 * (vertical.taps - 1) ? threads : 0;
+  const large = even((vertical.count - smallOnes * small) / threads);
+  const heights = [...Array<number>(threads - 1).fill(large), ...Array<number>(smallOnes).fill(small)];
+  const rest = vertical.count - heights.reduce((sum, height) => sum + height, 0);
+  return [...heights, rest];
+}
+
+function bandProblems(problem: Problem, heights: readonly number[], bytesAvailable: number): Problem[] {
+  let start = 0;
+  return heights.map((height) => {
+    const vertical = cutAxis(problem.vertical, start, height);
+    const band = { ...problem, whole: problem.whole ?? problem, row: start, vertical, bytesAvailable };
+    start += height;
+    return band;
+  });
 }
 
 /** All counts of several works. */
@@ -78,6 +90,11 @@ function sumOf(works: readonly Counts[]): Counts {
   const sum: Counts = {};
   for (const work of works) for (const [name, count] of Object.entries(work) as [Operation, number][]) sum[name] = (sum[name] ?? 0) + count;
   return sum;
+}
+
+/** What one of several threads does of it. */
+function shareOf(work: Counts, threads: number): Counts {
+  return Object.fromEntries((Object.entries(work) as [Operation, number][]).map(([name, count]) => [name, count / threads]));
 }
 
 /** Handing over: a call for each of the other threads, and the bytes that they do not see otherwise. */
@@ -88,14 +105,14 @@ function handingOver(problem: Problem, threads: number, meetings: number): Count
 
 function inBands(plan: MethodPlan, problem: Problem, threads: number, prices: Prices): Division | undefined {
   const { vertical } = problem;
-  if (vertical.count < threads * Math.max(2, rowsPerRepeatedRow * (vertical.taps - 1))) return undefined;
+  if (vertical.count < threads * Math.max(4, rowsPerRepeatedRow * (vertical.taps - 1))) return undefined;
   const waiting = waitingBytes(problem);
-  const available = Math.floor((problem.bytesAvailable - waiting.source - waiting.result) / threads);
-  const bands = bandProblems(problem, threads, available);
-  if (bands.length < threads || bands.some((band) => plan.applicable(band) !== true)) return undefined;
+  const heights = bandHeights(problem, threads);
+  const bands = bandProblems(problem, heights, Math.floor((problem.bytesAvailable - waiting.source - waiting.result) / heights.length));
+  if (bands.some((band) => plan.applicable(band) !== true)) return undefined;
   const panels = bands.map((band) => panelsOf(plan, band));
-  const slowest = panels.reduce((a, b) => (priceOf(b.work.run, prices) > priceOf(a.work.run, prices) ? b : a));
-  const run = sumOf([slowest.work.run, handingOver(problem, threads, 0)]);
+  const all = sumOf(panels.map(({ work }) => work.run));
+  const run = sumOf([shareOf(all, threads), handingOver(problem, threads, 0)]);
   const bytes = panels.reduce((sum, { work }) => sum + work.bytes, waiting.source + waiting.result);
   const work = { setup: sumOf(panels.map(({ work: { setup } }) => setup)), run, bytes };
   return { threads, blocks: panels.map(({ problems }) => problems), together: false, work, nanoseconds: priceOf(run, prices) };
@@ -108,10 +125,8 @@ function workingTogether(plan: MethodPlan, problem: Problem, threads: number, pr
   const works = problems.map((panel) => plan.work(panel));
   if (works.some(({ run }) => run.step! > mostTasks)) return undefined;
   const waiting = waitingBytes(problem);
-  const shared: Counts = {};
-  for (const [name, count] of Object.entries(panels.work.run) as [Operation, number][]) shared[name] = count / threads;
   const meetings = panels.problems.reduce((sum, panel) => sum + plan.phases!(panel), 0);
-  const run = sumOf([shared, handingOver(problem, threads, meetings)]);
+  const run = sumOf([shareOf(panels.work.run, threads), handingOver(problem, threads, meetings)]);
   const most = works.reduce((most, { bytes }) => Math.max(most, bytes), 0);
   const bytes = most + waiting.source + waiting.result;
   return { threads, blocks: [problems], together: true, work: { ...panels.work, run, bytes }, nanoseconds: priceOf(run, prices) };
