@@ -274,4 +274,6 @@ export function assertGroups(job: usize, from: i32, to: i32, groupRows: i32): vo
   if (ASC_NO_ASSERT) return;
   assertTiles(job);
   assert(from >= 0 && from <= to && to * groupRows <= load<i32>(job, TILE_ROWS));
+  const plan = load<usize>(job, ROW_PLAN);
+  assert(load<i32>(plan + 4 + 12 * <usize>(load<i32>(plan) - 1)) == 4);
 }

@@ -1,4 +1,4 @@
-import { add, loadLanes, multiply, splat, splatFrom, storeLanes, subtract } from "../lanes";
+import { add, laneBytes, loadLanes, multiply, splat, splatFrom, storeLanes, subtract } from "../lanes";
 
 /*
  * Butterflies of radix 2, 3, 4 and 5 on V's lanes at once. Real parts at p + k·leg, imaginary parts `apart` bytes behind them.
@@ -141,6 +141,49 @@ export function inverse4<V>(p: usize, leg: usize, apart: usize, w: usize, turned
   storeForward<V>(s, apart, subtract<V>(acr, bdr), subtract<V>(aci, bdi), w, false);
   storeForward<V>(q, apart, subtract<V>(amr, bmi), add<V>(ami, bmr), w, false);
   storeForward<V>(t, apart, add<V>(amr, bmi), subtract<V>(ami, bmr), w, false);
+}
+
+/**
+ * The middle of a filtered row: four points of a last forward pass, times the spectrum, and the first pass back, without leaving the registers.
+ *
+ * @param spectrum four times a vector of real parts and one of imaginary parts
+ */
+// @ts-ignore: decorator
+@inline
+export function filter4<V>(p: usize, apart: usize, spectrum: usize): void {
+  const v = laneBytes<V>();
+  const ar = loadLanes<V>(p), br = loadLanes<V>(p + v), cr = loadLanes<V>(p + 2 * v), dr = loadLanes<V>(p + 3 * v);
+  const ai = loadLanes<V>(p + apart), bi = loadLanes<V>(p + apart + v), ci = loadLanes<V>(p + apart + 2 * v), di = loadLanes<V>(p + apart + 3 * v);
+  const acr = add<V>(ar, cr), amr = subtract<V>(ar, cr), bdr = add<V>(br, dr), bmr = subtract<V>(br, dr);
+  const aci = add<V>(ai, ci), ami = subtract<V>(ai, ci), bdi = add<V>(bi, di), bmi = subtract<V>(bi, di);
+  const pr = add<V>(acr, bdr), pi = add<V>(aci, bdi), sr = subtract<V>(acr, bdr), si = subtract<V>(aci, bdi);
+  const qr = add<V>(amr, bmi), qi = subtract<V>(ami, bmr), tr = subtract<V>(amr, bmi), ti = add<V>(ami, bmr);
+  const a2r = timesReal<V>(pr, pi, spectrum), a2i = timesImaginary<V>(pr, pi, spectrum);
+  const b2r = timesReal<V>(qr, qi, spectrum + 2 * v), b2i = timesImaginary<V>(qr, qi, spectrum + 2 * v);
+  const c2r = timesReal<V>(sr, si, spectrum + 4 * v), c2i = timesImaginary<V>(sr, si, spectrum + 4 * v);
+  const d2r = timesReal<V>(tr, ti, spectrum + 6 * v), d2i = timesImaginary<V>(tr, ti, spectrum + 6 * v);
+  const xr = add<V>(a2r, c2r), yr = subtract<V>(a2r, c2r), zr = add<V>(b2r, d2r), wr = subtract<V>(b2r, d2r);
+  const xi = add<V>(a2i, c2i), yi = subtract<V>(a2i, c2i), zi = add<V>(b2i, d2i), wi = subtract<V>(b2i, d2i);
+  storeLanes<V>(p, add<V>(xr, zr));
+  storeLanes<V>(p + apart, add<V>(xi, zi));
+  storeLanes<V>(p + 2 * v, subtract<V>(xr, zr));
+  storeLanes<V>(p + apart + 2 * v, subtract<V>(xi, zi));
+  storeLanes<V>(p + v, subtract<V>(yr, wi));
+  storeLanes<V>(p + apart + v, add<V>(yi, wr));
+  storeLanes<V>(p + 3 * v, add<V>(yr, wi));
+  storeLanes<V>(p + apart + 3 * v, subtract<V>(yi, wr));
+}
+
+// @ts-ignore: decorator
+@inline
+function timesReal<V>(re: V, im: V, h: usize): V {
+  return subtract<V>(multiply<V>(re, loadLanes<V>(h)), multiply<V>(im, loadLanes<V>(h + laneBytes<V>())));
+}
+
+// @ts-ignore: decorator
+@inline
+function timesImaginary<V>(re: V, im: V, h: usize): V {
+  return add<V>(multiply<V>(re, loadLanes<V>(h + laneBytes<V>())), multiply<V>(im, loadLanes<V>(h)));
 }
 
 /** cos 72°, cos 144°, sin 72°, sin 144° */

@@ -1,10 +1,11 @@
-import { add, laneBytes, lanes, loadLanes, multiply, splat, storeLanes, subtract, transpose } from "../lanes";
+import { laneBytes, lanes, loadLanes, multiply, splat, storeLanes, transpose } from "../lanes";
 import { assertFloats, assertGroups, assertTiles } from "../promises";
 import {
   COLUMN_PLAN, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, PAIRS, PLANES, PLANE_BYTES, PLANE_STRIDE, ROW_PLAN, ROW_SCRATCH,
   SCALE, SPECTRUM, TAPS, TILE_COLUMNS, TILE_STEP,
 } from "../record";
-import { forwardTransform, inverseTransform } from "./transform";
+import { filter4 } from "./butterflies";
+import { forwardPasses, forwardTransform, inversePasses, inverseTransform } from "./transform";
 
 /*
  * Two-dimensional transforms of strips. Columns are transformed once, `vectorsAtOnce` vectors at a time; rows tile by tile, overlapping
@@ -52,15 +53,10 @@ function gatherTile<V>(scratch: usize, plane: usize, stride: usize, first: i32, 
   if (x < count) memory.fill(scratch + <usize>x * vector, 0, <usize>(count - x) * vector);
 }
 
-/** Scratch ← scratch · spectrum, lane by lane. */
-function multiplySpectrum<V>(scratch: usize, apart: usize, spectrum: usize, count: i32): void {
-  const vector = laneBytes<V>();
-  for (let end = scratch + <usize>count * vector; scratch < end; scratch += vector, spectrum += 2 * vector) {
-    const re = loadLanes<V>(scratch), im = loadLanes<V>(scratch + apart);
-    const hr = loadLanes<V>(spectrum), hi = loadLanes<V>(spectrum + vector);
-    storeLanes<V>(scratch, subtract<V>(multiply<V>(re, hr), multiply<V>(im, hi)));
-    storeLanes<V>(scratch + apart, add<V>(multiply<V>(re, hi), multiply<V>(im, hr)));
-  }
+/** The last pass forward, times the spectrum, and the first pass back, which are both of radix 4. */
+function filterFours<V>(scratch: usize, apart: usize, spectrum: usize, count: i32): void {
+  const fours: usize = 4 * laneBytes<V>();
+  for (const end = scratch + <usize>count * laneBytes<V>(); scratch < end; scratch += fours, spectrum += 2 * fours) filter4<V>(scratch, apart, spectrum);
 }
 
 /**
@@ -68,13 +64,15 @@ function multiplySpectrum<V>(scratch: usize, apart: usize, spectrum: usize, coun
  *
  *     row[first + c] ← inverse(forward(row[first … first + N − 1]) · spectrum)[c],   0 ≤ c < step, first = 0, step, 2·step, …
  *
- * Requires  step ≤ TILE_COLUMNS − KERNEL_COLUMNS + 1, a multiple of four, so that a tile writes only what no later tile reads
+ * Requires  step ≤ TILE_COLUMNS − KERNEL_COLUMNS + 1, a multiple of four, so that a tile writes only what no later tile reads;
+ *           the last pass of ROW_PLAN is of radix 4   (promised by planning/tiles)
  * Cost      two transforms of TILE_COLUMNS points and one product a tile; allocates nothing
  * Accuracy  as the transforms, and γ(3) of the product
  */
 export function filterRows<V>(job: usize, from: i32, to: i32): void {
   assertGroups(job, from, to, lanes<V>());
   const plan = load<usize>(job, ROW_PLAN);
+  const outer = load<i32>(plan) - 1;
   const stride = load<usize>(job, PLANE_STRIDE);
   const planeBytes = load<usize>(job, PLANE_BYTES);
   const count = load<i32>(job, TILE_COLUMNS);
@@ -91,9 +89,9 @@ export function filterRows<V>(job: usize, from: i32, to: i32): void {
       for (let first = 0; first < end; first += step) {
         gatherTile<V>(scratch, re, stride, first, count, readable);
         gatherTile<V>(scratch + apart, re + planeBytes, stride, first, count, readable);
-        forwardTransform<V>(plan, scratch, vector, apart, 1);
-        multiplySpectrum<V>(scratch, apart, spectrum, count);
-        inverseTransform<V>(plan, scratch, vector, apart, 1);
+        forwardPasses<V>(plan, outer, scratch, vector, apart, 1);
+        filterFours<V>(scratch, apart, spectrum, count);
+        inversePasses<V>(plan, outer, scratch, vector, apart, 1);
         for (let x = 0; x < min<i32>(step, end - first); x += lanes<V>()) {
           const target = re + (<usize>(first + x) << 2);
           transpose<V>(target, stride, scratch + <usize>x * vector, vector);

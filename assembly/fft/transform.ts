@@ -56,6 +56,20 @@ function inversePass<V>(radix: i32, base: usize, stride: usize, apart: usize, po
   else pass<V>(5, true, base, stride, apart, points, span, turns, vectors);
 }
 
+/** Bytes of samples that stay in the first cache beside turns. */
+const CACHED_BYTES: usize = 32768;
+
+/** How many passes, widest span first, go over all points: the others stay within a block that the first cache holds, and go block after block. */
+// @ts-ignore: decorator
+@inline
+function widePasses<V>(plan: usize, vectors: i32): i32 {
+  const passes = load<i32>(plan);
+  const pointBytes = <usize>vectors * 2 * laneBytes<V>();
+  let wide = 0;
+  for (let at = plan + 4; wide < passes - 1 && <usize>load<i32>(at, 4) * pointBytes > CACHED_BYTES; at += 12) wide++;
+  return wide;
+}
+
 /**
  * Forward transform: natural order in, digit-reversed order out, in place.
  *
@@ -69,11 +83,23 @@ function inversePass<V>(radix: i32, base: usize, stride: usize, apart: usize, po
  * Source    Higham, Accuracy and Stability of Numerical Algorithms, §24.1
  */
 export function forwardTransform<V>(plan: usize, base: usize, stride: usize, apart: usize, vectors: i32): void {
+  forwardPasses<V>(plan, load<i32>(plan), base, stride, apart, vectors);
+}
+
+/** The first `passes` passes of a forward transform: all, or all but the last. */
+export function forwardPasses<V>(plan: usize, passes: i32, base: usize, stride: usize, apart: usize, vectors: i32): void {
   assertTransform(plan, base, stride, apart, vectors, laneBytes<V>());
   const points = load<i32>(plan, 8);
-  const end = plan + 4 + 12 * <usize>load<i32>(plan);
-  for (plan += 4; plan < end; plan += 12) {
+  const end = plan + 4 + 12 * <usize>passes;
+  const narrow = plan + 4 + 12 * <usize>widePasses<V>(plan, vectors);
+  for (plan += 4; plan < narrow; plan += 12) {
     forwardPass<V>(load<i32>(plan), base, stride, apart, points, load<i32>(plan, 4), load<usize>(plan, 8), vectors);
+  }
+  const block = load<i32>(narrow, 4);
+  for (let first = 0; first < points; first += block, base += <usize>block * stride) {
+    for (let at = narrow; at < end; at += 12) {
+      forwardPass<V>(load<i32>(at), base, stride, apart, block, load<i32>(at, 4), load<usize>(at, 8), vectors);
+    }
   }
 }
 
@@ -83,9 +109,22 @@ export function forwardTransform<V>(plan: usize, base: usize, stride: usize, apa
  *     x[r] = Σ_k X[k] · e^(+2πi·kr/N)
  */
 export function inverseTransform<V>(plan: usize, base: usize, stride: usize, apart: usize, vectors: i32): void {
+  inversePasses<V>(plan, load<i32>(plan), base, stride, apart, vectors);
+}
+
+/** The last `passes` passes of an inverse transform: all, or all but the first. */
+export function inversePasses<V>(plan: usize, passes: i32, base: usize, stride: usize, apart: usize, vectors: i32): void {
   assertTransform(plan, base, stride, apart, vectors, laneBytes<V>());
   const points = load<i32>(plan, 8);
-  for (let at = plan + 4 + 12 * <usize>(load<i32>(plan) - 1); at > plan; at -= 12) {
+  const last = plan + 4 + 12 * <usize>(passes - 1);
+  const narrow = plan + 4 + 12 * <usize>widePasses<V>(plan, vectors);
+  const block = load<i32>(narrow, 4);
+  for (let first = 0, part = base; first < points; first += block, part += <usize>block * stride) {
+    for (let at = last; at >= narrow; at -= 12) {
+      inversePass<V>(load<i32>(at), part, stride, apart, block, load<i32>(at, 4), load<usize>(at, 8), vectors);
+    }
+  }
+  for (let at = narrow - 12; at > plan; at -= 12) {
     inversePass<V>(load<i32>(at), base, stride, apart, points, load<i32>(at, 4), load<usize>(at, 8), vectors);
   }
 }
