@@ -1,6 +1,7 @@
 /** `npm run bench:fit [-- passes]`: times every method on many questions in both builds, fits prices and writes src/planning/profile.ts. */
 import { createEngine, type Build, type HardwareProfile } from "../src/index.js";
 import { operationNames, operations, priceOf, type Counts, type Prices } from "../src/planning/cost.js";
+import { shippedProfiles } from "../src/planning/profile.js";
 import { errorOf, judge, type Judgement } from "./fit/judge.js";
 import { medianRun, medianSetup, timeQuestion, type Timed } from "./fit/measure.js";
 import { crossValidated, pricesFrom } from "./fit/prices.js";
@@ -81,9 +82,10 @@ const fits: Record<string, unknown>[] = [];
 for (const build of builds) {
   const begun = performance.now();
   const timings = await time(build);
-  const prices = pricesFrom(timings);
+  const known = shippedProfiles.find((profile) => profile.build === build)!.nanoseconds as Prices;
+  const prices = pricesFrom(timings, known);
   const fitted = judge(timings, prices);
-  const validated = crossValidated(timings);
+  const validated = crossValidated(timings, known);
   console.log(`\n${build}: ${timings.length} methods timed in ${((performance.now() - begun) / 1000).toFixed(0)} s`);
   printTable(
     ["operation", "ns each", ""],
