@@ -9,12 +9,10 @@ export interface Stretch {
   end: number;
 }
 
-export function stretchOf({ buffer, byteOffset, byteLength }: ArrayBufferView, of: object = buffer): Stretch {
-  return { of, first: byteOffset, end: byteOffset + byteLength };
-}
-
 export function samplesStretch(samples: Samples, memory: EngineMemory): Stretch {
-  return stretchOf(samples, memory.addressOf(samples) === undefined ? samples.buffer : memory);
+  const { buffer, byteOffset, byteLength } = samples;
+  const of = memory.addressOf(samples) === undefined ? buffer : memory;
+  return { of, first: byteOffset, end: byteOffset + byteLength };
 }
 
 export function overlap(a: Stretch, b: Stretch): boolean {
