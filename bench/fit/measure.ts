@@ -41,8 +41,8 @@ export function timeQuestion(engine: Engine, question: Question, known: Map<stri
   const kernel = question.makeKernel();
   const entrants: Entrant[] = [];
   for (const { method, work } of worksOf(question, kernel, engine.build)) {
-    const { directTap = 0, rowTap = 0, columnTap = 0 } = work.run;
-    if (directTap + rowTap + columnTap > mostMultiplyAdds[engine.build]) continue;
+    const { directTap = 0, rowTap = 0, columnTap = 0, pairTap = 0, wordTap = 0, pairRowTap = 0 } = work.run;
+    if (directTap + rowTap + columnTap + pairTap + wordTap + pairRowTap > mostMultiplyAdds[engine.build]) continue;
     const key = `${question.name}, ${method}`;
     const timed = known.get(key) ?? { question: question.name, method, work, runs: [], setups: [] };
     known.set(key, timed);

@@ -58,6 +58,7 @@ function drawOptions(draw: Draw, { channels, sample }: Required<Layout>): Prepar
   if (draw() < 0.25) options.output = { sample: oneOf(draw, ["u8", "u16", "f32"]), gain: sample === "u16" ? 1 / 257 : 1 };
   if (draw() < 0.2) options.border = oneOf(draw, ["zero", "periodic", "half-sample-symmetric"] as const);
   if (draw() < 0.1) options.extent = "full";
+  if (draw() < 0.2) options.tolerance = 0;
   return options;
 }
 
