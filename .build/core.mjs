@@ -1,5 +1,5 @@
 /**
- * Compiles the core: every target of asconfig.json becomes src/generated/<target>.ts with the binary as base64, and the
+ * Compiles the core: every target of asconfig.json becomes src/generated/<target>.ts with the binary as hexadecimal text, and the
  * layout of the records that host and core share is copied to src/generated/record.ts. Does nothing while no source changed.
  */
 import { mkdirSync, readFileSync, renameSync, writeFileSync } from "node:fs";
@@ -79,7 +79,7 @@ export async function buildCore() {
   for (const target of targets) {
     const binary = await compile(asc, target);
     checkImports(target, binary);
-    writeWhole(`${target}.ts`, `${stamp}export const code: string = "${Buffer.from(binary).toString("base64")}";\n`);
+    writeWhole(`${target}.ts`, `${stamp}export const code: string = "${Buffer.from(binary).toString("hex")}";\n`);
     byteLengths.push(`${target} ${binary.length}`);
   }
   writeWhole("record.ts", stamp + readFileSync(join(root, "assembly", "record.ts"), "utf8"));

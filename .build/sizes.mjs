@@ -12,7 +12,7 @@ export const mostGzipBytes = 60_000;
 
 /** Parts by the beginning of their modules' paths; the first that fits counts. */
 const parts = {
-  "the SIMD core, base64": "src/generated/simd.ts",
+  "the SIMD core as text": "src/generated/simd.ts",
   "kernels and their builders": "src/kernels/",
   "checks of what callers give": "src/api/validate/",
   "engine, filter, loading": "src/api/",

@@ -5,7 +5,7 @@ export type SampleOfStart = (typeof samplesOfStarts)[number];
 /** Parts of a cold start in their order, and what each is. */
 export const partNames = {
   import: "the package is read and evaluated",
-  decode: "base64 to bytes, and what else comes before compiling",
+  decode: "text to bytes, and what else comes before compiling",
   compile: "WebAssembly.compile",
   link: "exports looked at, WebAssembly.instantiate",
   selfTest: "the known-answer test",

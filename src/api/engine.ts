@@ -24,8 +24,8 @@ import type {
 import { hostPacing, type Pacing } from "../runtime/pacing.js";
 import { Turns } from "../runtime/turns.js";
 import { ViewMemory } from "../runtime/viewMemory.js";
+import type { Crew } from "../runtime/workers/crew.js";
 import type { EngineParts } from "./engineParts.js";
-import { Crew } from "../runtime/workers/crew.js";
 import { PreparedFilter } from "./filter.js";
 import { loadCore, type Core } from "./loading.js";
 import { checkedEngineOptions, profileForBuild } from "./validate/engineOptions.js";
@@ -125,12 +125,18 @@ function shippedProfileFor(build: Build): HardwareProfile {
   return shippedProfiles.find((profile) => profile.build === (build === "scalar" ? "scalar" : "simd"))!;
 }
 
+/** What starts threads is loaded where they are asked for. */
+async function startCrew(others: number, core: Core, createWorker: EngineOptions["createWorker"]): Promise<Crew> {
+  const { Crew } = await import("../runtime/workers/crew.js");
+  return Crew.start(others, core, createWorker);
+}
+
 /** As `createEngine`, with another clock and another way to yield. */
 export async function engineWithPacing(options: EngineOptions | undefined, pacing: Pacing): Promise<Engine> {
   const checked = checkedEngineOptions(options);
   const core = await loadCore(checked);
   const profile = checked.profile ? profileForBuild(checked.profile, core.build) : shippedProfileFor(core.build);
-  const crew = checked.threads > 1 ? await Crew.start(checked.threads - 1, core, checked.createWorker) : undefined;
+  const crew = checked.threads > 1 ? await startCrew(checked.threads - 1, core, checked.createWorker) : undefined;
   return new ConvolutionEngine(core, profile, pacing, crew);
 }
 

@@ -4,7 +4,7 @@ import { EngineMemory, sharedMemory } from "../runtime/memory.js";
 import { link, type Routines } from "../runtime/routines.js";
 import { sharedForm } from "../runtime/sharedForm.js";
 import type { Build } from "../types.js";
-import { bytesOfBase64 } from "./base64.js";
+import { bytesOfHex } from "./hex.js";
 import { failedAnswer } from "./selfTest.js";
 import type { CheckedEngineOptions } from "./validate/engineOptions.js";
 
@@ -27,8 +27,8 @@ async function codeOf(build: Build): Promise<string> {
 /** An eight-byte header and the smallest function that uses a vector: what a host without SIMD refuses. */
 const simdProbe = Uint8Array.of(0, 97, 115, 109, 1, 0, 0, 0, 1, 5, 1, 96, 0, 1, 123, 3, 2, 1, 0, 10, 10, 1, 8, 0, 65, 0, 253, 15, 253, 98, 11);
 
-/** The same, as base64, with the smallest function that multiplies and adds in one step (relaxed SIMD's f32x4.relaxed_madd). */
-const relaxedProbe = "AGFzbQEAAAABBQFgAAF7AwIBAAoTAREAQQD9D0EA/Q9BAP0P/YUCCw==";
+/** The same, as hexadecimal text, with the smallest function that multiplies and adds in one step (relaxed SIMD's f32x4.relaxed_madd). */
+const relaxedProbe = "0061736d010000000105016000017b030201000a130111004100fd0f4100fd0f4100fd0ffd85020b";
 
 function hostError(code: "webassembly-missing" | "webassembly-blocked", message: string, cause?: unknown): ConvolutionError {
   const expected = code === "webassembly-blocked" ? "script-src 'self' 'wasm-unsafe-eval'" : "WebAssembly";
@@ -36,7 +36,7 @@ function hostError(code: "webassembly-missing" | "webassembly-blocked", message:
 }
 
 async function compile(build: Build, shared: boolean): Promise<WebAssembly.Module> {
-  const bytes = bytesOfBase64(await codeOf(build));
+  const bytes = bytesOfHex(await codeOf(build));
   try {
     return await WebAssembly.compile(shared ? sharedForm(bytes) : bytes);
   } catch (cause) {
@@ -94,7 +94,7 @@ export async function loadCore(options: CheckedEngineOptions): Promise<Core> {
   if (build === "scalar" || (build === "auto" && !simd)) return startOwn("scalar");
   if (!simd) throw hostError("webassembly-missing", 'This host\'s WebAssembly has no SIMD. Use build "auto" or "scalar".');
   if (build === "relaxed-simd") {
-    if (WebAssembly.validate(bytesOfBase64(relaxedProbe))) return startOwn("relaxed-simd");
+    if (WebAssembly.validate(bytesOfHex(relaxedProbe))) return startOwn("relaxed-simd");
     const advice = 'Use build "auto" or "simd", or Node 22 and later.';
     throw hostError("webassembly-missing", `This host's WebAssembly has no relaxed SIMD, which the build "relaxed-simd" needs. ${advice}`);
   }

@@ -1,3 +1,4 @@
+import { bytesOfHex } from "../../src/api/hex.js";
 import { code as simdCode } from "../../src/generated/simd.js";
 import { describe, expect, test } from "vitest";
 import { createEngine, delta, type Raster, type SampleType } from "../../src/index.js";
@@ -113,8 +114,7 @@ test("auto takes SIMD where the host has it; another build only by name", async 
 });
 
 test("a compiled module of the caller's is used instead of the bundled one", async () => {
-  const bytes = Uint8Array.from(atob(simdCode), (character) => character.charCodeAt(0));
-  const own = await createEngine({ module: new WebAssembly.Module(bytes) });
+  const own = await createEngine({ module: new WebAssembly.Module(bytesOfHex(simdCode)) });
   const image = noiseImage("u8", 30, 20, 4, 5);
   expect(own.convolve(image, smoothing).data).toEqual(engine.convolve(image, smoothing).data);
   own.dispose();

@@ -29,8 +29,8 @@ function blockedWebAssembly(): object {
   return { Memory, Table, Global, Instance, CompileError, LinkError, RuntimeError, validate, Module, compile: rejectLater, instantiate: rejectLater };
 }
 
-function bytesOf(base64: string): Uint8Array<ArrayBuffer> {
-  return Uint8Array.from(atob(base64), (character) => character.charCodeAt(0));
+function bytesOf(hex: string): Uint8Array<ArrayBuffer> {
+  return Uint8Array.from(Buffer.from(hex, "hex"));
 }
 
 /** f32x4.mul in the binary format of WebAssembly (SIMD opcode 230). */

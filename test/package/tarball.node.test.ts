@@ -47,10 +47,20 @@ describe("the tarball", () => {
       typeof entry === "string" ? [entry] : Object.values(entry),
     );
     expect(targets.map((target) => target.replace("./", "")).filter((target) => !installation.files.includes(target))).toEqual([]);
-    const names = Object.keys(manifest.exports).filter((name) => !name.endsWith(".json"));
+    const names = Object.keys(manifest.exports).filter((name) => !name.endsWith(".json") && name !== "./worker");
     const imports = names.map((name) => `import(${JSON.stringify(name.replace(".", "tapwise"))})`);
     const { status, stderr } = installation.run(`await Promise.all([${imports.join(", ")}]);`);
     expect({ status, stderr }).toEqual({ status: 0, stderr: "" });
+  });
+
+  test("the worker's script starts in a worker and waits there", () => {
+    const { status, stdout, stderr } = installation.run(`
+import { Worker } from "node:worker_threads";
+const worker = new Worker(new URL(import.meta.resolve("tapwise/worker")));
+worker.on("error", (error) => { throw error; });
+setTimeout(() => { console.log("waiting"); void worker.terminate(); }, 500);
+worker.on("exit", (code) => console.log("ended", code));`);
+    expect({ status, stdout, stderr }).toEqual({ status: 0, stdout: "waiting\nended 1\n", stderr: "" });
   });
 
   test("installs without fetching anything", () => {

@@ -1,5 +1,6 @@
 import { code as scalarCode } from "../../src/generated/scalar.js";
 import { code as simdCode } from "../../src/generated/simd.js";
+import { bytesOfHex } from "../../src/api/hex.js";
 import { RECORD_BYTES } from "../../src/generated/record.js";
 import type { Routines } from "../../src/runtime/routines.js";
 
@@ -94,9 +95,9 @@ export interface Core {
 }
 
 /** Links a binary with a bench. */
-export async function coreOf(name: string, base64: string): Promise<Core> {
+export async function coreOf(name: string, code: string): Promise<Core> {
   const bench = new Bench();
-  const bytes = Uint8Array.from(atob(base64), (character) => character.charCodeAt(0));
+  const bytes = bytesOfHex(code);
   const { instance } = await WebAssembly.instantiate(bytes, { env: { memory: bench.memory } });
   return { name, bench, routines: instance.exports as unknown as Routines };
 }

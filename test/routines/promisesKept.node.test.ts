@@ -6,7 +6,7 @@ import { engines } from "../support/engines.js";
 import { firstDifference } from "./differences.js";
 import { layoutOf, type Question } from "../support/questions.js";
 
-const module = await WebAssembly.compile(Buffer.from(code, "base64"));
+const module = await WebAssembly.compile(Buffer.from(code, "hex"));
 const debug = await createEngine({ module });
 
 function forced({ image, kernel, options = {}, correlate = false }: Question, method: Method): void {
