@@ -66,5 +66,5 @@ if (wanted === "") {
     ["one f32 plane, 1080p", "taps", "median ms"],
     curve.map(({ method, taps, milliseconds: { median } }) => [method, `${taps}×${taps}`, digits(median)]),
   );
-  writeResult("cases", host, { clock: "wall clock", rows, curve });
+  writeResult("cases", host, { clock: "processor time", rows, curve });
 }

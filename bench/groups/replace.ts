@@ -32,7 +32,7 @@ async function measure({ engine }: Ground, one: Case): Promise<ContestResult> {
   const kernels = othersOf(one);
   const loops: Loop[] = [{ name: one.name, run: (turn) => contender.filter.replaceKernel(kernels[turn % kernels.length]!) }];
   if (one.options.method === "fft") loops.push(await kernelTransform(one.kernel, ...tileOf(contender.filter.explanation.arithmetic)));
-  const [subject, transform] = await timeLoops(loops, 600, 21);
+  const [subject, transform] = await timeLoops(loops, 600, "wall", 21);
   contender.filter.replaceKernel(one.kernel);
   const largestDifference = contender.verify();
   contender.filter.dispose();

@@ -16,7 +16,7 @@ const asLoop = (contender: EngineContender) => ({ name: contender.name, run: (tu
 
 async function measure({ engine }: Ground, one: Case): Promise<ContestResult[]> {
   const contenders = [one, ...sides.map((side) => resized(one, side, side))].map((each) => new EngineContender(engine, each));
-  const times = await timeLoops(contenders.map(asLoop), 450);
+  const times = await timeLoops(contenders.map(asLoop), 450, "wall");
   warnOfSaturation(times);
   const [large, ...rest] = times as [LoopTime, ...LoopTime[]];
   const results = rest.map((time, index) => {
