@@ -4,7 +4,7 @@ import { hostPacing } from "../../src/runtime/pacing.js";
 import { noiseKernel } from "../support/kernels.js";
 import { noiseImage } from "../support/noise.js";
 import { layoutOf } from "../support/questions.js";
-import { ManualPacing } from "../support/pacing.js";
+import { ManualPacing } from "./manualPacing.js";
 
 const image = noiseImage("u8", 256, 900, 4, 5);
 const kernel = noiseKernel(9, 9, 4);
