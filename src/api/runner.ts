@@ -5,10 +5,10 @@ import { blockBytesOf, install, setUpAlone, type Installed } from "../runtime/ex
 import { Execution } from "../runtime/execution.js";
 import type { Program } from "../runtime/program.js";
 import type { Plane } from "../runtime/rowTraffic.js";
-import { mayWait } from "../runtime/workers/board.js";
 import type { Crew } from "../runtime/workers/crew.js";
 import type { TeamPlan } from "../runtime/workers/furniture.js";
-import { Team } from "../runtime/workers/team.js";
+import type { ScatteredTeam } from "../runtime/workers/scatteredTeam.js";
+import type { Team } from "../runtime/workers/team.js";
 import type { Core } from "./loading.js";
 
 /** A filter's plan at work on one image after the other, on one thread or several. */
@@ -86,13 +86,13 @@ class Alone implements Runner {
   }
 }
 
-/** Several threads with one memory. */
+/** Several threads. */
 class InTeam implements Runner {
   readonly #plan: TeamPlan;
-  readonly #make: (plan: TeamPlan) => Team;
-  #team: Team;
+  readonly #make: (plan: TeamPlan) => Team | ScatteredTeam;
+  #team: Team | ScatteredTeam;
 
-  constructor(plan: TeamPlan, make: (plan: TeamPlan) => Team) {
+  constructor(plan: TeamPlan, make: (plan: TeamPlan) => Team | ScatteredTeam) {
     this.#plan = plan;
     this.#make = make;
     this.#team = make(plan);
@@ -115,7 +115,7 @@ class InTeam implements Runner {
   }
 
   begin(source: Plane, target: Plane): void {
-    this.#team.begin(source, target, false);
+    this.#team.begin(source, target);
   }
 
   advance(): void {
@@ -126,18 +126,8 @@ class InTeam implements Runner {
     this.#team.abandon();
   }
 
-  /** A page's main thread may not wait for others, so there it does all itself. */
   run(source: Plane, target: Plane): void {
-    this.#team.begin(source, target, !mayWait());
-    try {
-      while (!this.#team.done) {
-        this.#team.advance();
-        if (this.#team.idle) this.#team.wait();
-      }
-    } catch (error) {
-      this.#team.abandon();
-      throw error;
-    }
+    this.#team.run(source, target);
   }
 
   moved(): Promise<void> {
@@ -176,5 +166,5 @@ function teamPlan({ plan, division }: Choice, problem: Problem): TeamPlan {
  */
 export function runnerOf(choice: Choice, problem: Problem, core: Core, crew: Crew | undefined): Runner {
   if (choice.division.threads === 1 || !crew) return new Alone(choice, core);
-  return new InTeam(teamPlan(choice, problem), (plan) => new Team(plan, crew, core.memory, core.routines));
+  return new InTeam(teamPlan(choice, problem), (plan) => crew.teamFor(plan, core.memory, core.routines));
 }

@@ -10,7 +10,7 @@ type KeptBand = Extract<ToWorker, { kind: "keepBand" }>;
 export class BandKeeper {
   readonly #memory: EngineMemory;
   readonly #routines: Routines;
-  readonly #bands = new Map<number, { kept: KeptBand; installed: Installed; execution: Execution }>();
+  readonly #bands = new Map<string, { kept: KeptBand; installed: Installed; execution: Execution }>();
 
   constructor(memory: EngineMemory, routines: Routines) {
     this.#memory = memory;
@@ -18,20 +18,23 @@ export class BandKeeper {
   }
 
   keep(kept: KeptBand): void {
-    this.drop(kept.id);
     const installed = install(kept.programs, this.#memory, this.#routines);
-    this.#bands.set(kept.id, { kept, installed, execution: new Execution(installed, this.#memory, this.#routines) });
+    this.#bands.set(`${kept.id} ${kept.band}`, { kept, installed, execution: new Execution(installed, this.#memory, this.#routines) });
   }
 
   drop(id: number): void {
-    const band = this.#bands.get(id);
-    if (band) this.#memory.release(band.installed.address, band.installed.byteLength);
-    this.#bands.delete(id);
+    for (const [name, { kept, installed }] of this.#bands) {
+      if (kept.id !== id) continue;
+      this.#memory.release(installed.address, installed.byteLength);
+      this.#bands.delete(name);
+    }
   }
 
-  filter({ id, source, result }: SentBand): void {
-    const { kept, execution } = this.#bands.get(id)!;
-    execution.begin({ data: source, stride: kept.stride }, { data: result, stride: kept.resultStride });
+  filter({ id, band, source, result }: SentBand): void {
+    const known = this.#bands.get(`${id} ${band}`);
+    if (!known) return;
+    const { kept, execution } = known;
+    execution.begin({ data: source, stride: kept.stride, firstRow: kept.firstRow }, { data: result, stride: kept.resultStride });
     while (!execution.done) execution.advance();
   }
 }

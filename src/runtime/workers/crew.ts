@@ -1,7 +1,11 @@
 import type { EngineWorker } from "../../types.js";
 import type { EngineMemory } from "../memory.js";
+import type { Routines } from "../routines.js";
+import type { TeamPlan } from "./furniture.js";
 import { keepsProcess, listenTo, nodeThreads } from "./ports.js";
 import type { FromWorker, SentBand, ToWorker } from "./protocol.js";
+import { ScatteredTeam } from "./scatteredTeam.js";
+import { Team } from "./team.js";
 
 /** Workers that have not answered by then do not hold an engine up: they may still come later. */
 const startMilliseconds = 4000;
@@ -11,6 +15,7 @@ export class Hand {
   readonly worker: EngineWorker;
   ready = false;
   gone = false;
+  bandsAway = 0;
   /** Settles when the worker is known to have ended; never where the host does not tell. */
   readonly ended: Promise<void>;
   readonly confirm: () => void;
@@ -42,7 +47,8 @@ interface Linked {
 
 /** Who wants to know what workers say and when one is lost. */
 export interface Foreman {
-  readonly assignment: ToWorker | undefined;
+  /** What a worker must know before it can help. */
+  readonly assignments: ToWorker[];
   lost(hand: Hand): void;
   returned?(band: SentBand, hand: Hand): void;
 }
@@ -106,10 +112,13 @@ export class Crew {
 
   #heard(hand: Hand, message: FromWorker, settle: () => void): void {
     if (hand.gone) return;
-    if (message.kind === "band") return this.#foremen.get(message.id)?.returned?.(message, hand);
+    if (message.kind === "band") {
+      this.#setAway(hand, -1);
+      return this.#foremen.get(message.id)?.returned?.(message, hand);
+    }
     if (message.kind === "ready") {
       hand.ready = true;
-      for (const { assignment } of this.#foremen.values()) if (assignment) hand.post(assignment);
+      for (const { assignments } of this.#foremen.values()) for (const one of assignments) hand.post(one);
     } else this.dismiss(hand);
     settle();
   }
@@ -119,6 +128,31 @@ export class Crew {
     return this.#hands.filter(({ ready }) => ready);
   }
 
+  /** True where it has a band that it has not sent back. */
+  isAway({ bandsAway }: Hand): boolean {
+    return bandsAway > 0;
+  }
+
+  /** Sends a band away; the process stays until it is back. */
+  send(hand: Hand, band: SentBand): void {
+    this.#setAway(hand, 1);
+    hand.post(band, [band.source.buffer, band.result.buffer] as Transferable[]);
+  }
+
+  #setAway(hand: Hand, change: number): void {
+    hand.bandsAway += change;
+    keepsProcess(hand.worker, hand.bandsAway > 0);
+  }
+
+  /**
+   * A team of these threads for one filter.
+   *
+   * @throws ConvolutionError `memory-limit`, `memory-exhausted`
+   */
+  teamFor(plan: TeamPlan, memory: EngineMemory, routines: Routines): Team | ScatteredTeam {
+    return this.shared ? new Team(plan, this, memory, routines) : new ScatteredTeam(plan, this, memory, routines);
+  }
+
   nextId(): number {
     return this.#nextId++;
   }
@@ -126,7 +160,7 @@ export class Crew {
   /** Tells all workers of a filter. */
   enlist(id: number, foreman: Foreman): void {
     this.#foremen.set(id, foreman);
-    for (const hand of this.ready) hand.post(foreman.assignment!);
+    for (const hand of this.ready) for (const one of foreman.assignments) hand.post(one);
   }
 
   /** Lets all workers forget a filter. */

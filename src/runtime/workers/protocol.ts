@@ -38,6 +38,7 @@ export interface SharedJob {
 export interface SentBand {
   kind: "band";
   id: number;
+  band: number;
   job: number;
   source: Samples;
   result: Samples;
@@ -46,9 +47,9 @@ export interface SentBand {
 export type ToWorker =
   | { kind: "start"; module: WebAssembly.Module; memory?: WebAssembly.Memory }
   | { kind: "keep"; assignment: Assignment }
-  | { kind: "keepBand"; id: number; programs: Program[]; stride: number; resultStride: number }
+  | { kind: "keepBand"; id: number; band: number; programs: Program[]; firstRow: number; stride: number; resultStride: number }
   | { kind: "drop"; id: number }
   | SharedJob
   | SentBand;
 
-export type FromWorker = { kind: "ready" } | { kind: "failed"; reason: string } | { kind: "band"; id: number; job: number; source: Samples; result: Samples };
+export type FromWorker = { kind: "ready" } | { kind: "failed"; reason: string } | SentBand;

@@ -7,16 +7,12 @@ import { mayWait } from "./board.js";
 import { stageRows, takeRows } from "./carry.js";
 import type { Crew, Foreman, Hand } from "./crew.js";
 import { Furniture, type TeamPlan } from "./furniture.js";
+import { napMilliseconds, patienceFor } from "./patience.js";
 import type { SharedJob, ToWorker } from "./protocol.js";
 import type { Tasks } from "./tasks.js";
 
 /** Rows are copied to where other threads see them about this many bytes at a time. */
 const bytesAtATime = 500_000;
-
-/** A worker that does not move for this long, or for twenty times as long as the whole run should take, is given up. */
-const leastPatience = 2000;
-
-const napMilliseconds = 50;
 
 /** Whoever is at a step of a run that was ended has this long to finish it. */
 const clearMilliseconds = 100;
@@ -30,10 +26,10 @@ const isShared = ({ data }: Plane): boolean => typeof SharedArrayBuffer === "fun
  * A filter whose runs several threads share, over one memory. The calling thread copies rows that others need to where they see them,
  * works on tasks itself, and copies out what others did: these never write to the caller's arrays. Used like an Execution:
  *
- *     team.begin(source, target, alone);
+ *     team.begin(source, target);
  *     while (!team.done) {
  *       team.advance();
- *       if (team.idle) team.wait();      // or await team.moved(), where the thread may not wait
+ *       if (team.idle) await team.moved();
  *     }
  */
 export class Team implements Foreman {
@@ -76,13 +72,13 @@ export class Team implements Foreman {
     this.#memory = memory;
     this.#routines = routines;
     this.#id = crew.nextId();
-    this.#patience = Math.max(leastPatience, 20 * plan.milliseconds);
+    this.#patience = patienceFor(plan.milliseconds);
     this.#stepsInAll = plan.blocks.flat().reduce((sum, { steps }) => sum + steps.length, 0);
     this.#furnish();
   }
 
-  get assignment(): ToWorker | undefined {
-    return this.#furniture && { kind: "keep", assignment: this.#furniture.assignment(this.#id) };
+  get assignments(): ToWorker[] {
+    return this.#furniture ? [{ kind: "keep", assignment: this.#furniture.assignment(this.#id) }] : [];
   }
 
   /** Steps that are done as a part of all: never less than before, and exactly 1 at the end. */
@@ -98,8 +94,26 @@ export class Team implements Foreman {
     return this.#furniture;
   }
 
-  /** Starts with an image. Alone: all on the calling thread. */
-  begin(source: Plane, target: Plane, alone: boolean): void {
+  /** All of a run, here and now. A page's main thread may not wait for others: there it does all itself. */
+  run(source: Plane, target: Plane): void {
+    this.#begin(source, target, !mayWait());
+    try {
+      while (!this.done) {
+        this.advance();
+        if (this.idle) this.#wait();
+      }
+    } catch (error) {
+      this.abandon();
+      throw error;
+    }
+  }
+
+  /** Starts with an image. */
+  begin(source: Plane, target: Plane): void {
+    this.#begin(source, target, false);
+  }
+
+  #begin(source: Plane, target: Plane, alone: boolean): void {
     this.#clear();
     const furniture = this.#furniture ?? this.#furnish();
     this.#source = source;
@@ -265,8 +279,8 @@ export class Team implements Foreman {
     }
   }
 
-  /** Sleeps until others have moved on. Only where the thread may wait. */
-  wait(): void {
+  /** Sleeps until others have moved on. */
+  #wait(): void {
     const { board } = this.#furniture!;
     board.waitForTasks(board.done, napMilliseconds);
   }
