@@ -77,6 +77,14 @@ export function multiplyAdd<V>(a: V, h: V, x: V): V {
   return add<V>(a, multiply<V>(h, x));
 }
 
+/** x, or 0 where |x| < least; NaN and ∞ stay. */
+// @ts-ignore: decorator
+@inline
+export function withoutTiny<V>(x: V, least: f32): V {
+  if (isVector<V>()) return changetype<V>(v128.andnot(changetype<v128>(x), f32x4.lt(f32x4.abs(changetype<v128>(x)), f32x4.splat(least))));
+  return <V>(abs<f32>(<f32>x) < least ? <f32>0 : <f32>x);
+}
+
 /** Widens 16 bytes to 16 floats. */
 // @ts-ignore: decorator
 @inline

@@ -1,6 +1,7 @@
 import { gamma, unitRoundoff } from "../math/rounding.js";
 import type { Problem } from "./problem.js";
 import { sampleFacts } from "./samples.js";
+import { tiny } from "./tiny.js";
 import { smallestWeight } from "./weights.js";
 
 /**
@@ -73,9 +74,18 @@ function conversionRoundings(problem: Problem): number {
 /** 2⁻¹⁴⁹, the step of single precision below 2⁻¹²⁶: products and taps down there are rounded by half of it. */
 const smallestStep = 1.401298464324817e-45;
 
-/** What rounding near 0 may add to a sum over all taps. */
-export function underflow({ horizontal, vertical, workingFull }: Problem): number {
-  return horizontal.taps * vertical.taps * smallestStep * (1 + workingFull);
+/**
+ * What is lost near 0 in a sum over all taps: roundings there, taps that became 0 (Σ|them| = `leftOut`), and samples of floats below `tiny`,
+ * each once as a colour and once as the alpha that it is multiplied by.
+ */
+export function underflow(
+  { horizontal, vertical, workingFull, request, analysis }: Problem,
+  leftOut = analysis.leftOut(),
+  weight = analysis.absoluteSum,
+): number {
+  const steps = horizontal.taps * vertical.taps * smallestStep * (1 + workingFull);
+  const samples = sampleFacts[request.sample].integer ? 0 : 2 * tiny * weight;
+  return steps + leftOut * workingFull + samples;
 }
 
 /** Error of a sum of products: each passes through `roundings` of them, weights sum to `weight` in absolute value. */

@@ -1,5 +1,6 @@
 import { readTaps, type Kernel } from "../kernels/kernel.js";
 import { absoluteSum, separate, type Separation } from "../math/separation.js";
+import { weightLeftOut } from "./tiny.js";
 
 /** More separable terms than this are not looked for: they would not pay, and looking takes time. */
 export const mostTerms = 16;
@@ -13,6 +14,8 @@ export interface KernelAnalysis {
   /** All taps are integers. */
   integer: boolean;
   negative: boolean;
+  /** Σ|taps that weigh next to nothing|: see planning/tiny. */
+  leftOut(): number;
   /** Separable terms, found when first asked for. */
   separation(): Separation;
 }
@@ -35,6 +38,7 @@ function analyseTaps(kernel: Kernel): KernelAnalysis {
     negative ||= tap < 0;
   }
   let separation: Separation | undefined;
+  let leftOut: number | undefined;
   const limit = Math.min(mostTerms, kernel.width, kernel.height);
   return {
     sum: kernel.sum,
@@ -42,6 +46,7 @@ function analyseTaps(kernel: Kernel): KernelAnalysis {
     constant,
     integer,
     negative,
+    leftOut: () => (leftOut ??= weightLeftOut(taps)),
     separation: () => (separation ??= separate(taps, kernel.height, kernel.width, limit)),
   };
 }

@@ -3,6 +3,7 @@ import { indexMap, type IndexRule } from "../math/borders.js";
 import type { Alpha, BorderRule, Build, Channels, Extent, Light, Method, Region, SampleType } from "../types.js";
 import { analyse, type KernelAnalysis } from "./analysis.js";
 import { sampleFacts } from "./samples.js";
+import { keptFloats } from "./tiny.js";
 
 /** A caller's wish, checked and complete: every default filled in. */
 export interface Request {
@@ -145,10 +146,10 @@ export function correlationTaps(problem: Problem): Float64Array<ArrayBuffer> {
 
 const floats = new WeakMap<Request, Float32Array<ArrayBuffer>>();
 
-/** The same in single precision; parts of one problem share the array. */
+/** The same in single precision, without those that weigh next to nothing; parts of one problem share the array. */
 export function floatTaps(problem: Problem): Float32Array<ArrayBuffer> {
   let taps = floats.get(problem.request);
-  if (!taps) floats.set(problem.request, (taps = Float32Array.from(correlationTaps(problem))));
+  if (!taps) floats.set(problem.request, (taps = keptFloats(correlationTaps(problem))));
   return taps;
 }
 

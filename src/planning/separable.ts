@@ -7,6 +7,7 @@ import type { MethodPlan } from "./method.js";
 import { inCorrelationOrder, type Problem } from "./problem.js";
 import { sampleFacts } from "./samples.js";
 import { pairBlocks, rowBlocks, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
+import { floatVector, termLeftOut } from "./tiny.js";
 
 /** Row results in one ring a term, then columns: r·(m + n) multiply–adds a sample for a sum of r separable terms. */
 interface SeparableFrame extends SweepFrame {
@@ -71,8 +72,9 @@ function error(problem: Problem): MethodError {
   const roundings = problem.horizontal.taps + terms.length * problem.vertical.taps + 3;
   const dropped = problem.analysis.separation().residuals[termsNeeded(problem)!]!;
   const sums = sumError(problem, roundings, weight);
+  const leftOut = terms.reduce((sum, { column, row }) => sum + termLeftOut(column, row), 0);
   const oneSign = terms.length === 1;
-  return { relative: oneSign ? sums : 0, absolute: (oneSign ? 0 : sums) + dropped * problem.workingFull + underflow(problem) };
+  return { relative: oneSign ? sums : 0, absolute: (oneSign ? 0 : sums) + dropped * problem.workingFull + underflow(problem, leftOut, weight) };
 }
 
 /** Several terms seldom consist of integers: where the results must, what the terms added is taken away again. */
@@ -80,7 +82,8 @@ const roundable = (problem: Problem): boolean => termsOf(problem).length > 1 && 
 
 /** Vectors of all terms, one after the other, in correlation order. */
 function stacked(problem: Problem, part: "row" | "column"): Float32Array<ArrayBuffer> {
-  return Float32Array.from(termsOf(problem).flatMap((term) => Array.from(inCorrelationOrder(problem, term[part]))));
+  const other = part === "row" ? "column" : "row";
+  return Float32Array.from(termsOf(problem).flatMap((term) => Array.from(floatVector(inCorrelationOrder(problem, term[part]), term[other]))));
 }
 
 export const separable: MethodPlan = {

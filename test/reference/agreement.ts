@@ -63,8 +63,9 @@ function allowedRange(setting: Setting, defined: Defined, index: number, errorBo
   const bound = errorBound * defined.magnitude + leftOut * Math.abs(gain);
   const plain = alpha === "none" || alpha === "keep";
   if (alpha === "keep" && channel === channels - 1) {
-    // Kept alpha is only scaled from one type's full value to the other's: a quotient and a product.
-    return [exact - 2 * u * Math.abs(exact), exact + 2 * u * Math.abs(exact)];
+    // Kept alpha is only scaled from one type's full value to the other's: a quotient and a product; a float next to 0 is 0.
+    const kept = 2 * u * Math.abs(exact) + (setting.input === "f32" ? 2 ** -100 * fullValue[setting.output] : 0);
+    return [exact - kept, exact + kept];
   }
   // Taps that weigh next to nothing leave no finite bound (see checkQuestion): nothing is promised there.
   if (errorBound === Infinity || leftOut === Infinity) return [-Infinity, Infinity];

@@ -12,7 +12,7 @@ const fraction = fc.integer({ min: 0, max: 16 }).map((sixteenths) => sixteenths 
 
 const kernelKinds = ["signed", "positive", "integer", "separable", "two-terms", "constant", "zero", "impulse", "denormal", "tails", "sparse"] as const;
 type KernelKind = (typeof kernelKinds)[number];
-const imageKinds = ["noise", "noise", "extremes", "sparse", "opaque", "beyond", "not-finite"] as const;
+const imageKinds = ["noise", "noise", "extremes", "sparse", "opaque", "beyond", "not-finite", "denormal"] as const;
 type ImageKind = (typeof imageKinds)[number];
 const rules = ["replicate", "zero", "periodic", "half-sample-symmetric", "whole-sample-symmetric", "renormalised", "constant", "constants"] as const;
 type RuleName = (typeof rules)[number];
@@ -188,6 +188,7 @@ function vary({ imageKind, seed, channels, width, rowGap }: Recipe, data: Sample
     if (imageKind === "sparse" && chance < 0.9) data[index] = 0;
     if (imageKind === "opaque" && (index % stride) % channels === channels - 1) data[index] = full;
     if (imageKind === "beyond" && float && (index % stride) % channels !== channels - 1) data[index] = data[index]! * 40 - 10;
+    if (imageKind === "denormal" && float && chance < 0.5) data[index] = data[index]! * (chance < 0.3 ? 1e-40 : 1e-28 * chance);
     if (imageKind === "not-finite" && float && chance < 0.01) data[index] = [NaN, Infinity, -Infinity][Math.floor(300 * chance)]!;
   }
 }

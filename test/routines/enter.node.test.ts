@@ -24,6 +24,23 @@ test.each(sampleTypes)("$sample: 1 to 40 samples become the floats that they are
   }
 });
 
+test("floats below 2⁻¹⁰⁰ become 0; all others, NaN and infinities stay what they are", () => {
+  const least = 2 ** -100;
+  const below = Math.fround(least * (1 - 2 ** -24));
+  const kept = [1, -1, least, -least, 3e38, NaN, Infinity, -Infinity, 0];
+  const gone = [below, -below, 1e-40, -1e-40, 2 ** -149, -(2 ** -126)].map(Math.fround);
+  for (const { wide } of forms) {
+    for (let start = 0; start < 16; start++) {
+      bench.clear();
+      const samples = Float32Array.from([...Array.from({ length: start }, () => 0.5), ...kept, ...gone, ...kept, ...gone]);
+      const out = bench.take(samples.byteLength);
+      inner.enterPixels(wide, enterFields(bench, bench.job(), plain("f32", 1)).address, out, bench.place(samples), samples.length);
+      const expected = samples.map((value) => (gone.includes(value) ? 0 : value));
+      bench.floats(out, samples.length).forEach((value, k) => expect(value === expected[k] || (value !== value && expected[k] !== expected[k])).toBe(true));
+    }
+  }
+});
+
 test("every code of 8 and 16 bits becomes the float that it is", () => {
   for (const { sample, make, full } of sampleTypes.slice(0, 2)) {
     for (const { wide } of forms) {
