@@ -1,4 +1,7 @@
-/** `npm run bench:yardsticks [-- group …]`: how the engine stands against the yardsticks, as ratios from one run on one core. */
+/**
+ * `npm run bench:yardsticks [-- group …]`: how the engine stands against the yardsticks, as ratios from one run on one core.
+ * `npm run bench:yardsticks -- compile`: makes the programs in C that take the compiler long, and measures nothing.
+ */
 import { createEngine } from "../src/index.js";
 import { groups } from "./groups/groups.js";
 import type { Group, GroupResult } from "./groups/group.js";
@@ -10,6 +13,10 @@ import { findTools } from "./yardsticks/tools.js";
 import { makeWorkFolder } from "./yardsticks/workFolder.js";
 
 const wanted = process.argv.slice(2);
+if (wanted.join() === "compile") {
+  for (const group of groups) group.compile?.();
+  process.exit();
+}
 const unknown = wanted.filter((name) => groups.every((group) => group.name !== name));
 if (unknown.length > 0) throw new Error(`no group is called ${unknown.join(", ")}; there are ${groups.map(({ name }) => name).join(", ")}`);
 const chosen = wanted.length === 0 ? groups : groups.filter(({ name }) => wanted.includes(name));

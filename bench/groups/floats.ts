@@ -1,7 +1,7 @@
 import { directFloats, separableFloats, type Case } from "../cases.js";
 import { hold, type ContestResult } from "../contest.js";
 import { EngineContender } from "../engineContender.js";
-import { floatFlags, startBlocked, type BlockedSource } from "../yardsticks/blocked.js";
+import { blockedProgram, floatFlags, startBlocked, type BlockedSource } from "../yardsticks/blocked.js";
 import { nothing, together, type Ground, type Group, type GroupResult } from "./group.js";
 
 /** One case against every blocking in C. */
@@ -21,34 +21,28 @@ async function measure(ground: Ground, source: BlockedSource, cases: readonly Ca
     ground.say("skipped: there is no gcc");
     return nothing();
   }
-  ground.say(`gcc -O3 ${floatFlags.join(" ")}; the first time, gcc takes some minutes for all blockings`);
+  ground.say(`gcc -O3 ${floatFlags.join(" ")}; "compile" in place of a group makes all programs beforehand`);
   const results: ContestResult[] = [];
   for (const one of cases) results.push(await againstBlocks(ground, source, one, 1.15));
   return together("C blocks", results, meanBar);
 }
 
-const channels = [1, 4] as const;
+const onOneAndFourChannels = (sizes: readonly number[], caseOf: (size: number, channels: 1 | 4) => Case): Case[] =>
+  sizes.flatMap((size) => ([1, 4] as const).map((channels) => caseOf(size, channels)));
+
+const directCases = onOneAndFourChannels([3, 5, 7, 9, 11, 15], directFloats);
+const separableCases = onOneAndFourChannels([9, 31, 63], separableFloats);
 
 export const direct: Group = {
   name: "direct",
   title: "direct, f32, against C in the best of several blockings",
-  measure: (ground) =>
-    measure(
-      ground,
-      "direct_blocked",
-      [3, 5, 7, 9, 11, 15].flatMap((taps) => channels.map((count) => directFloats(taps, count))),
-      1.05,
-    ),
+  measure: (ground) => measure(ground, "direct_blocked", directCases, 1.05),
+  compile: () => directCases.forEach((one) => blockedProgram("direct_blocked", one)),
 };
 
 export const separable: Group = {
   name: "separable",
   title: "separable, f32, against C in the best of several blockings",
-  measure: (ground) =>
-    measure(
-      ground,
-      "separable_blocked",
-      [9, 31, 63].flatMap((taps) => channels.map((count) => separableFloats(taps, count))),
-      1,
-    ),
+  measure: (ground) => measure(ground, "separable_blocked", separableCases, 1),
+  compile: () => separableCases.forEach((one) => blockedProgram("separable_blocked", one)),
 };

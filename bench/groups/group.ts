@@ -24,6 +24,8 @@ export interface Group {
   name: string;
   title: string;
   measure(ground: Ground): Promise<GroupResult>;
+  /** Compiles what `measure` will start, where that takes long. */
+  compile?(): void;
 }
 
 export const nothing = (): GroupResult => ({ contests: [], means: [], notes: {} });

@@ -17,6 +17,12 @@ export type BlockedSource = "direct_blocked" | "separable_blocked" | "direct_byt
 /** How far fixed-point forms may be from the definition before rounding: the 1/16 of a level that ours keep to. */
 const fixedPointTolerance = 1 / 16;
 
+/** The compiled program for a case. */
+export function blockedProgram(source: BlockedSource, { kernel, layout }: Case): string {
+  const flags = source.endsWith("_bytes") ? byteFlags : floatFlags;
+  return compiled(source, flags, { TAP_COLUMNS: kernel.width, TAP_ROWS: kernel.height, CHANNELS: layout.channels });
+}
+
 /** A yardstick over a case's images: replicate border, extent `same`, convolution. Separable kernels must be of unit gain. */
 export async function startBlocked(
   folder: string,
@@ -25,8 +31,7 @@ export async function startBlocked(
   planes: readonly Raster[],
 ): Promise<{ process: YardstickProcess; contenders: Contender[] }> {
   const { kernel, layout } = one;
-  const flags = source.endsWith("_bytes") ? byteFlags : floatFlags;
-  const program = compiled(source, flags, { TAP_COLUMNS: kernel.width, TAP_ROWS: kernel.height, CHANNELS: layout.channels });
+  const program = blockedProgram(source, one);
   const { row, column } = factorsOf(kernel);
   // The forms lay taps on the image as they stand: reversed for a convolution.
   const taps = source.startsWith("direct") ? kernel.taps.toReversed() : [...row.toReversed(), ...column.toReversed()];
