@@ -1,5 +1,6 @@
 import { box } from "./box.js";
 import { bytes } from "./bytes.js";
+import { denormals } from "./denormals.js";
 import { fft } from "./fft.js";
 import { direct, separable } from "./floats.js";
 import { others } from "./others.js";
@@ -10,4 +11,4 @@ import type { Group } from "./group.js";
 import { transforms } from "./transforms.js";
 
 /** Every group of lines, in the order in which they are printed. */
-export const groups: readonly Group[] = [direct, separable, transforms, fft, bytes, box, small, replace, large, others];
+export const groups: readonly Group[] = [direct, separable, transforms, fft, bytes, box, denormals, small, replace, large, others];
