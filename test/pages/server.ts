@@ -12,11 +12,18 @@ const mediaTypes: Record<string, string> = { ".html": "text/html; charset=utf-8"
 const policies: Record<string, string> = {
   "/plain.html": "default-src 'self'; script-src 'self' 'wasm-unsafe-eval'",
   "/blocked.html": "default-src 'self'; script-src 'self'",
+  "/threads.html": "default-src 'self'; script-src 'self' 'wasm-unsafe-eval'",
+  "/threads-isolated.html": "default-src 'self'; script-src 'self' 'wasm-unsafe-eval'",
+  "/threads-blocked.html": "default-src 'self'; script-src 'self' 'wasm-unsafe-eval'; worker-src 'none'",
 };
 
-/** The file behind an address: the built package below /dist/, the pages of this folder elsewhere; both pages have one text. */
+/** What lets a page share memory among threads; all that it loads must be its own or say that it may be embedded. */
+const isolation = { "Cross-Origin-Opener-Policy": "same-origin", "Cross-Origin-Embedder-Policy": "require-corp" };
+
+/** The file behind an address: the built package below /dist/, the pages of this folder elsewhere; pages that differ by their policy alone have one text. */
 function fileOf(path: string): string {
   if (path.startsWith("/dist/")) return join(dist, normalize(path.slice("/dist".length)));
+  if (path.startsWith("/threads") && path.endsWith(".html")) return join(here, "threads.html");
   return join(here, path in policies ? "plain.html" : normalize(path));
 }
 
@@ -33,6 +40,8 @@ export async function startServer(): Promise<{ address: string; requests: string
       response.writeHead(200, {
         "Content-Type": mediaTypes[extname(path)] ?? "application/octet-stream",
         ...(policy === undefined ? {} : { "Content-Security-Policy": policy }),
+        // A worker of an isolated page needs the second of them too.
+        ...(path === "/threads-isolated.html" ? isolation : path.endsWith(".js") ? { "Cross-Origin-Embedder-Policy": "require-corp" } : {}),
       });
       response.end(contents);
     } catch {
