@@ -1,6 +1,6 @@
 import { spawnSync } from "node:child_process";
 import { createHash } from "node:crypto";
-import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync } from "node:fs";
+import { existsSync, mkdirSync, renameSync } from "node:fs";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { firstLineOf } from "../host.js";
@@ -11,11 +11,12 @@ const binaries = fileURLToPath(new URL("../out/yardsticks/", import.meta.url));
 
 export const gccVersion = (): string | undefined => firstLineOf(compiler, ["--version"]);
 
-const headers = (): string =>
-  readdirSync(sources)
-    .filter((name) => name.endsWith(".h"))
-    .map((name) => readFileSync(join(sources, name), "utf8"))
-    .join("");
+/** The text that the compiler sees, headers and constants put in. */
+function preprocessed(parameters: readonly string[]): string {
+  const { status, stdout, stderr } = spawnSync(compiler, ["-E", "-P", ...parameters], { encoding: "utf8", maxBuffer: 1 << 28 });
+  if (status !== 0) throw new Error(`${compiler} does not read ${parameters.join(" ")}:\n${stderr}`);
+  return stdout;
+}
 
 /**
  * Compiles bench/yardsticks/<source>.c, or finds what was compiled before from the same text with the same flags: many forms
@@ -28,7 +29,7 @@ export function compiled(source: string, flags: readonly string[], constants: Re
   const defines = Object.entries(constants).map(([name, value]) => `-D${name}=${value}`);
   const parameters = ["-O3", ...flags, ...defines, path, ...libraries.map((library) => `-l${library}`)];
   const print = createHash("sha256")
-    .update([gccVersion(), ...parameters, readFileSync(path, "utf8"), headers()].join("\n"))
+    .update([gccVersion(), ...parameters, preprocessed(parameters)].join("\n"))
     .digest("hex");
   const binary = join(binaries, `${source}-${print.slice(0, 16)}`);
   if (existsSync(binary)) return binary;
