@@ -40,7 +40,8 @@ function withBits(column: Float64Array, row: Float64Array, fraction: number, col
   const fixedColumn = fixedTaps(column, columnShift);
   const most = reach(fixedColumn) + rounding;
   if (most * (1 << fraction) > largestWord) return undefined;
-  const rowShift = largestShift(row, most * (1 << fraction), offset * (1 << fraction));
+  // Words are 2^fraction times what they stand for, and so are the offset and the half that a row sum starts from.
+  const rowShift = largestShift(row, most * (1 << fraction), (Math.abs(offset) + 1) * (1 << fraction));
   if (rowShift === undefined || rowShift + fraction > 30) return undefined;
   const fixedRow = fixedTaps(row, rowShift);
   const ofColumn = 255 * fixedColumn.error + rounding;

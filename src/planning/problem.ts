@@ -75,7 +75,7 @@ export interface Problem {
   crew: Crew;
   /** Where taps were replaced, the problem with the taps before: tiles are taken over from it. */
   like?: Problem;
-  /** Of a part (planning/panels, planning/bands) the problem that it was cut from: what decides bytes of results is decided for the whole. */
+  /** Of a part (a region, planning/panels, planning/bands) the problem that it was cut from: what decides bytes of results is decided for the whole. */
   whole?: Problem;
   /** Where several threads work on one program together: how many, and the problem as one thread has it, which decides the tiles. */
   together?: { threads: number; alone: Problem };
@@ -110,8 +110,19 @@ function axis(request: Request, rule: BorderRule, samples: number, taps: number,
   return { rule, count: cut.count, taps, first, extended, anchor, map: indexMap(indexRule(rule), first, extended, samples) };
 }
 
+/** The same without a region; nothing where it is all of the results. */
+function withoutRegion(request: Request): Request | undefined {
+  const { kernel, extent, region } = request;
+  const { count: width } = extentOf(extent, request.width, kernel.width, 0);
+  const { count: height } = extentOf(extent, request.height, kernel.height, 0);
+  return region.width === width && region.height === height ? undefined : { ...request, region: { x: 0, y: 0, width, height } };
+}
+
 export function problemOf(request: Request, build: Build, bytesAvailable: number, crew = oneThread): Problem {
   const { kernel, region } = request;
+  const renormalised = request.rows === "renormalised" || request.columns === "renormalised";
+  // Only weights inside differ between a region and the whole: they decide how many separable terms are left out.
+  const whole = renormalised ? withoutRegion(request) : undefined;
   const vertical = axis(request, request.rows, request.height, kernel.height, kernel.origin.y, { start: region.y, count: region.height });
   const horizontal = axis(request, request.columns, request.width, kernel.width, kernel.origin.x, { start: region.x, count: region.width });
   return {
@@ -125,10 +136,11 @@ export function problemOf(request: Request, build: Build, bytesAvailable: number
     channels: request.channels,
     colours: request.alpha === "none" ? request.channels : request.channels - 1,
     workingFull: request.light === "linear" ? 1 : sampleFacts[request.sample].full,
-    renormalised: request.rows === "renormalised" || request.columns === "renormalised",
+    renormalised,
     build,
     bytesAvailable,
     crew,
+    ...(whole ? { whole: problemOf(whole, build, bytesAvailable, crew) } : {}),
   };
 }
 

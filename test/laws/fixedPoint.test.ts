@@ -104,6 +104,19 @@ describe("at its edges", () => {
     }
   });
 
+  test.each([1, 1 / 2, 1 / 4, 1 / 8, 1 / 16, -1 / 8])("sums of 32 bits along rows, half a unit of the last place included: white times %d", (gain) => {
+    for (const offset of [0, 100, 254.5]) {
+      for (const taps of [outer([1], [0.5, 0.5]), outer([0.25, 0.5, 0.25], [0.125, 0.75, 0.125]), gaussian({ sigma: 3 })]) {
+        const question: Question = { image: white, kernel: taps, options: { output: { gain, offset } } };
+        const { defined, disagreement } = judge(question.image, taps, question.options);
+        for (const build of builds) {
+          const { errorBound } = applicable(build, question).find(({ method }) => method === "separable")!;
+          expect(disagreement({ ...defined, data: run(build, question, "separable").data }, errorBound), `${build} ${offset}`).toBeUndefined();
+        }
+      }
+    }
+  });
+
   test("a sum that is exact stays exact, ties up: the mean of every pair of bytes", () => {
     const data = Uint8Array.from({ length: 256 * 512 }, (_, k) => (k % 2 === 0 ? Math.floor(k / 512) : Math.floor((k % 512) / 2)));
     const expected = Uint8Array.from({ length: 256 * 511 }, (_, k) => {

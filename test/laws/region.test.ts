@@ -1,6 +1,7 @@
 import { describe, expect, test } from "vitest";
 import type { ConvolveOptions, Extent, Region, Samples } from "../../src/index.js";
-import { kernelsOfEveryKind } from "../support/kernels.js";
+import { gaussian, kernel } from "../../src/kernels/index.js";
+import { kernelsOfEveryKind, noiseKernel } from "../support/kernels.js";
 import { firstDifference, largestDifference, ways } from "../support/methods.js";
 import { noiseImage } from "../support/noise.js";
 import type { Question } from "../support/questions.js";
@@ -46,4 +47,23 @@ describe.each(extents)("extent %s", (extent, width, height) => {
       }
     }
   });
+});
+
+test.each([0.01, 0.1, 1, 4])("a region leaves out as many separable terms as the whole where the border is renormalised: tolerance %d", (tolerance) => {
+  const image = noiseImage("f32", 20, 34, 1, 4);
+  const options: ConvolveOptions = { extent: "full", border: "renormalised", tolerance: tolerance / 255 };
+  const uneven = noiseKernel(4, 6, 3);
+  const region: Region = { x: 8, y: 12, width: 8, height: 20 };
+  for (const unevenness of [1e-4, 1e-3, 1e-2, 0.1]) {
+    const smooth = gaussian({ sigma: { x: 1, y: 2 }, radius: { x: 2, y: 3 } }).taps;
+    const taps = kernel(
+      Array.from({ length: 6 }, (_, j) => Array.from({ length: 4 }, (__, i) => smooth[j * 5 + i]! * (1 + unevenness * uneven.taps[j * 4 + i]!))),
+    );
+    const question: Question = { image, kernel: taps, options };
+    for (const way of ways(question)) {
+      if (way.method !== "separable") continue;
+      const crop = cropped(way.answer(question), 23, 1, region);
+      expect(firstDifference(way.answer({ ...question, options: { ...options, region } }), crop), `${way.build} ${unevenness}`).toBeUndefined();
+    }
+  }
 });
