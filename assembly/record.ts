@@ -145,4 +145,7 @@ export const COLUMN_SHIFT = 348;
 /** i32: what running sums of bytes are divided by where scaling in floats could miss the right integer; 0 where it cannot. */
 export const DIVISOR = 352;
 
+/** Entries of a sparse kernel at TAPS instead of all its taps (direct): see sparse.ts and bytes/sparse.ts. 0: all taps. */
+export const TAP_ENTRIES = 356;
+
 export const RECORD_BYTES = 384;

@@ -1,6 +1,7 @@
 import { correlateColumns } from "./columns";
 import { correlateRows } from "./direct";
 import { correlateRow } from "./rows";
+import { correlateEntries } from "./sparse";
 import { enterRow } from "./enter";
 import { lanes } from "./lanes";
 import { leaveRow, leavesAsIs } from "./leave";
@@ -8,7 +9,7 @@ import { assertSweep, assertTerms } from "./promises";
 import {
   ALPHA, ANCHOR_ROW, CHANNELS, COLUMN_TAPS, ENTERED, KEEP_ROW, KEEP_STAGING, KERNEL_COLUMNS, KERNEL_ROWS,
   OUTPUT, OUTPUT_COLUMNS, OUTPUT_STRIDE, RESULT, RESULT_FLOATS, RESULT_ROWS, RESULT_ROW_STRIDE, RESULT_STRIDE, RING_ROWS, ROW_MAP, ROW_TABLE, SOURCE_ROWS,
-  SOURCE_ROW_STRIDE, STAGING, STAGING_STRIDE, TAPS, TERMS,
+  SOURCE_ROW_STRIDE, STAGING, STAGING_STRIDE, TAPS, TAP_ENTRIES, TERMS,
 } from "./record";
 
 /*
@@ -80,7 +81,7 @@ export function leaveStaged<V>(job: usize, y: usize, row: i32, from: i32): void 
 /** Floats that two result rows are computed in where they go, or 0: rows at least a block long whose floats are the samples that are written. */
 function floatsInPlace<V>(job: usize): i32 {
   const floats = load<i32>(job, OUTPUT_COLUMNS) * load<i32>(job, CHANNELS);
-  return floats >= 4 * lanes<V>() && leavesAsIs(job) ? floats : 0;
+  return floats >= 6 * lanes<V>() && leavesAsIs(job) ? floats : 0;
 }
 
 /** Where result row `row` or the one below is computed: in its place, or in a row of working floats. */
@@ -99,11 +100,12 @@ function leavePair<V>(job: usize, row: i32, from: i32, to: i32): void {
   if (row + 1 < to) leaveStaged<V>(job, result + load<usize>(job, RESULT_STRIDE), row + 1, from);
 }
 
-/** Direct: extended rows in the ring, all taps at once. */
+/** Direct: extended rows in the ring, all taps at once, or those of a list. */
 export function sweepDirect<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
   assertSweep(job, from, to, n + 1);
   const step = <usize>load<i32>(job, CHANNELS) << 2;
+  const entries = load<i32>(job, TAP_ENTRIES);
   const inPlace = floatsInPlace<V>(job);
   const first = firstNewRow(job, from);
   const end = to + n - 1;
@@ -111,10 +113,12 @@ export function sweepDirect<V>(job: usize, from: i32, to: i32): void {
   for (let row = firstResultRow(from); next < end; row += 2) {
     for (const last = min<i32>(row + n + 1, end); next < last; next++) enterRow<V>(job, load<usize>(ringFrom(job, 0, next)), next, stagedRow(job, next, first));
     if (row >= to) return; // a call that ends above the first result only enters
-    correlateRows<V>(
-      resultRow(job, 0, row, from, to, inPlace), resultRow(job, 1, row, from, to, inPlace), ringFrom(job, 0, row), load<usize>(job, TAPS), n,
-      load<i32>(job, KERNEL_COLUMNS), step, inPlace || load<i32>(job, RESULT_FLOATS),
-    );
+    const out0 = resultRow(job, 0, row, from, to, inPlace), out1 = resultRow(job, 1, row, from, to, inPlace);
+    const floats = inPlace || load<i32>(job, RESULT_FLOATS);
+    if (entries) {
+      correlateEntries<V>(out0, ringFrom(job, 0, row), load<usize>(job, TAPS), entries, floats);
+      if (row + 1 < to) correlateEntries<V>(out1, ringFrom(job, 0, row) + 4, load<usize>(job, TAPS), entries, floats);
+    } else correlateRows<V>(out0, out1, ringFrom(job, 0, row), load<usize>(job, TAPS), n, load<i32>(job, KERNEL_COLUMNS), step, floats);
     if (!inPlace) leavePair<V>(job, row, from, to);
   }
 }

@@ -1,7 +1,8 @@
 import { dotAdd, laneBytes, loadLanes, splatFrom, splatInteger, storeBytes } from "../lanes";
-import { ALPHA, CHANNELS, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, RESULT, RING_ROWS, SUM_BIAS, SUM_SHIFT, TAPS } from "../record";
+import { ALPHA, CHANNELS, KERNEL_COLUMNS, KERNEL_ROWS, OUTPUT_COLUMNS, RESULT, RING_ROWS, SUM_BIAS, SUM_SHIFT, TAPS, TAP_ENTRIES } from "../record";
 import { firstNewRow, firstResultRow, outputRow } from "../sweep";
 import { enterPaired, keepAlpha, pairsFrom } from "./pairs";
+import { correlatePairEntries } from "./sparse";
 
 /**
  * Correlates pairs of rows of bytes with fixed-point taps, two result rows at a time.
@@ -71,17 +72,21 @@ function pairsSample(out: usize, rows: usize, x: usize, taps: usize, pairs: i32,
 export function sweepDirectBytes<V>(job: usize, from: i32, to: i32): void {
   const n = load<i32>(job, KERNEL_ROWS);
   const channels = load<i32>(job, CHANNELS);
+  const entries = load<i32>(job, TAP_ENTRIES);
   const first = firstNewRow(job, from);
   const end = to + n - 1;
   let next = first;
   for (let row = firstResultRow(from); next < end; row += 2) {
     for (const last = min<i32>(row + n + 1, end); next < last; next++) enterPaired<V>(job, next, first, next + 1 == end);
     if (row >= to) return;
-    correlatePairs<V>(
-      outputRow(job, row, from), row + 1 < to ? outputRow(job, row + 1, from) : load<usize>(job, RESULT), pairsFrom(job, row), load<usize>(job, TAPS),
-      load<i32>(job, RING_ROWS), load<i32>(job, KERNEL_COLUMNS), <usize>channels << 2, load<i32>(job, OUTPUT_COLUMNS) * channels,
-      load<i32>(job, SUM_BIAS), load<i32>(job, SUM_SHIFT),
-    );
+    const out0 = outputRow(job, row, from), out1 = row + 1 < to ? outputRow(job, row + 1, from) : load<usize>(job, RESULT);
+    const count = load<i32>(job, OUTPUT_COLUMNS) * channels, bias = load<i32>(job, SUM_BIAS), shift = load<i32>(job, SUM_SHIFT);
+    if (entries) correlatePairEntries<V>(out0, out1, pairsFrom(job, row), load<usize>(job, TAPS), entries, count, bias, shift);
+    else {
+      correlatePairs<V>(
+        out0, out1, pairsFrom(job, row), load<usize>(job, TAPS), load<i32>(job, RING_ROWS), load<i32>(job, KERNEL_COLUMNS), <usize>channels << 2, count, bias, shift,
+      );
+    }
     if (load<i32>(job, ALPHA) != 3) continue;
     keepAlpha(job, row, from);
     if (row + 1 < to) keepAlpha(job, row + 1, from);

@@ -1,4 +1,4 @@
-import { box, gaussian, outer, type Channels, type Kernel, type Layout, type PrepareOptions, type SampleType } from "../../src/index.js";
+import { box, gaussian, kernel, outer, type Channels, type Kernel, type Layout, type PrepareOptions, type SampleType } from "../../src/index.js";
 import { noise } from "../../test/support/noise.js";
 import { structureless } from "../cases.js";
 
@@ -20,7 +20,11 @@ const spreadEvenly = (draw: Draw, low: number, high: number): number => Math.rou
 const bell = (width: number, height: number): Kernel =>
   gaussian({ sigma: { x: Math.max(0.5, width / 6), y: Math.max(0.5, height / 6) }, radius: { x: (width - 1) / 2, y: (height - 1) / 2 } });
 
-/** Kernels of every kind that a method may claim: no structure, one outer product, one row, one column, boxes. */
+/** A line of motion: two taps a row, all others 0. */
+const diagonal = (taps: number): Kernel =>
+  kernel(Array.from({ length: taps }, (_, j) => Array.from({ length: taps }, (_, i) => (i === j || i === j + 1 ? 1 / (2 * taps - 1) : 0))));
+
+/** Kernels of every kind that a method may claim: no structure, one outer product, one row, one column, few taps, boxes. */
 function drawKernel(draw: Draw): { name: string; make: () => Kernel } {
   const odd = (): number => 2 * spreadEvenly(draw, 1, 32) + 1;
   const width = odd();
@@ -38,6 +42,7 @@ function drawKernel(draw: Draw): { name: string; make: () => Kernel } {
         ),
     };
   if (kind < 0.85) return { name: `column of ${height}`, make: () => bell(1, height) };
+  if (kind < 0.9) return { name: `diagonal ${width}×${width}`, make: () => diagonal(width) };
   return { name: `box ${width}×${height}`, make: () => box({ width, height }) };
 }
 

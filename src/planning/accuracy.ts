@@ -51,9 +51,10 @@ export function transparentBound(problem: Problem, { noise = 0 }: MethodError): 
   return noise / 4 / leastWeight(problem);
 }
 
-/** The smallest inside weight as a part of Σh; 1 but for the renormalised border. */
+/** The smallest inside weight as a part of Σh; 1 but for the renormalised border, and where there is none at all: results are 0 then. */
 export function leastWeight(problem: Problem): number {
-  return problem.renormalised ? smallestWeight(problem.whole ?? problem) / problem.analysis.sum : 1;
+  const smallest = problem.renormalised ? smallestWeight(problem.whole ?? problem) : Infinity;
+  return smallest === Infinity ? 1 : smallest / problem.analysis.sum;
 }
 
 function weighted(problem: Problem, { relative, absolute }: MethodError): number {

@@ -20,6 +20,8 @@ export const operations = {
   directTap: "one multiply–add of the direct method, in a row that serves two result rows",
   directEdgeTap: "one multiply–add of the direct method, in a row that serves one",
   directLoop: "one row of taps over one block of two result rows",
+  listedTap: "one multiply–add of a kernel that is gone through by a list",
+  listedPair: "one product of two bytes and two taps of a list",
   pairSample: "one byte staged and paired with the row above or below",
   byteResult: "one byte taken out that was summed in fixed point",
   keptPixel: "one pixel whose alpha is kept beside bytes",

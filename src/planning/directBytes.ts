@@ -2,6 +2,7 @@ import * as field from "../generated/record.js";
 import { rowStride } from "./arrangement.js";
 import { biasOf, bytesThroughout, fixedKernel, offsetError, pairsOfRows, tapsByPairs, type FixedTaps } from "./fixedPoint.js";
 import { frameCounts, frameOf, programOf } from "./frame.js";
+import type { Program } from "../runtime/program.js";
 import type { MethodPlan } from "./method.js";
 import type { Problem } from "./problem.js";
 import { pairBlocks, ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
@@ -74,15 +75,69 @@ function pairTaps(problem: Problem): Int32Array<ArrayBuffer> {
   return table;
 }
 
+/** Pairs of taps of a kernel of which either result row's is not 0, as entries: see the core's bytes/sparse. */
+function listOf(problem: Problem): Int32Array<ArrayBuffer> {
+  const { horizontal, channels } = problem;
+  const table = pairTaps(problem);
+  const entries: number[] = [];
+  for (let k = 0; k < table.length / 2; k++) {
+    const [upper, lower] = [table[2 * k]!, table[2 * k + 1]!];
+    if (upper !== 0 || lower !== 0) entries.push(4 * Math.floor(k / horizontal.taps), 4 * channels * (k % horizontal.taps), upper, lower);
+  }
+  return Int32Array.from(entries);
+}
+
+function entriesOf(problem: Problem): number {
+  const table = pairTaps(problem);
+  let count = 0;
+  for (let k = 0; k < table.length; k += 2) if (table[k] !== 0 || table[k + 1] !== 0) count++;
+  return count;
+}
+
+function applicable(problem: Problem): true | string {
+  if (!bytesThroughout(problem)) return "Samples and results are not bytes throughout.";
+  const taps = fixedKernel(problem.request);
+  return typeof taps === "string" ? taps : true;
+}
+
+const fixedArithmetic = (problem: Problem): string => `fixed point: 8-bit samples × 16-bit taps ÷ 2^${fixed(problem).shift}, exact 32-bit sums`;
+
+/** Entries are twice as long as pairs of taps: a list takes the room of all where it is no longer than half of them. */
+export const directBytesSparse: MethodPlan = {
+  name: "direct",
+  variant: "listed bytes",
+
+  applicable(problem) {
+    const applies = applicable(problem);
+    if (applies !== true) return applies;
+    const count = entriesOf(problem);
+    return (count > 0 && count <= (problem.horizontal.taps * pairsOfRows(problem.vertical.taps)) / 2) || "More than half of the pairs of taps are not 0.";
+  },
+
+  work(problem) {
+    const { horizontal, vertical } = problem;
+    const layout = frame(problem);
+    const { blocks, floats } = pairBlocks(problem, layout);
+    return {
+      setup: { setup: 1, setupTap: horizontal.taps * vertical.taps, setupByte: layout.arrangement.byteLength },
+      run: { ...byteCounts(problem, layout), listedPair: floats * entriesOf(problem), pairLoop: blocks },
+      bytes: layout.arrangement.byteLength,
+      leastCall: 2 * operationsPerRow(problem),
+    };
+  },
+
+  errorBound: error,
+
+  arithmetic: (problem) => `${fixedArithmetic(problem)}, over the taps that are not 0`,
+
+  program: (problem) => programBy(problem, listOf(problem), entriesOf(problem)),
+};
+
 export const directBytes: MethodPlan = {
   name: "direct",
   variant: "bytes",
 
-  applicable(problem) {
-    if (!bytesThroughout(problem)) return "Samples and results are not bytes throughout.";
-    const taps = fixedKernel(problem.request);
-    return typeof taps === "string" ? taps : true;
-  },
+  applicable,
 
   work(problem) {
     const { horizontal, vertical } = problem;
@@ -98,25 +153,27 @@ export const directBytes: MethodPlan = {
 
   errorBound: error,
 
-  arithmetic: (problem) => `fixed point: 8-bit samples × 16-bit taps ÷ 2^${fixed(problem).shift}, exact 32-bit sums`,
+  arithmetic: fixedArithmetic,
 
-  program(problem) {
-    const layout = frame(problem);
-    const { request } = problem;
-    const { shift } = fixed(problem);
-    return programOf(problem, layout, {
-      fields: (job) =>
-        sweepFields(job, layout)
-          .pointer(field.TAPS, layout.taps)
-          .pointer(field.ENTERED, layout.bytes)
-          .integer(field.ENTERED_STRIDE, layout.byteStride)
-          .integer(field.SUM_BIAS, biasOf(request.output.offset, shift))
-          .integer(field.SUM_SHIFT, shift),
-      tables: [{ offset: layout.taps, data: pairTaps(problem) }, ringTables(layout, 1)],
-      setup: [],
-      steps: sweepSteps(problem, layout, "sweepDirectBytes"),
-      error: { relative: 0, absolute: error(problem) },
-      round: false,
-    });
-  },
+  program: (problem) => programBy(problem, pairTaps(problem), 0),
 };
+
+function programBy(problem: Problem, taps: Int32Array<ArrayBuffer>, entries: number): Program {
+  const layout = frame(problem);
+  const { shift } = fixed(problem);
+  return programOf(problem, layout, {
+    fields: (job) =>
+      sweepFields(job, layout)
+        .pointer(field.TAPS, layout.taps)
+        .integer(field.TAP_ENTRIES, entries)
+        .pointer(field.ENTERED, layout.bytes)
+        .integer(field.ENTERED_STRIDE, layout.byteStride)
+        .integer(field.SUM_BIAS, biasOf(problem.request.output.offset, shift))
+        .integer(field.SUM_SHIFT, shift),
+    tables: [{ offset: layout.taps, data: taps }, ringTables(layout, 1)],
+    setup: [],
+    steps: sweepSteps(problem, layout, "sweepDirectBytes"),
+    error: { relative: 0, absolute: error(problem) },
+    round: false,
+  });
+}

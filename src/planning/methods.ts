@@ -1,6 +1,6 @@
 import type { Method } from "../types.js";
-import { direct } from "./direct.js";
-import { directBytes } from "./directBytes.js";
+import { direct, directSparse } from "./direct.js";
+import { directBytes, directBytesSparse } from "./directBytes.js";
 import { fft } from "./fft.js";
 import type { MethodPlan } from "./method.js";
 import type { Problem } from "./problem.js";
@@ -13,7 +13,17 @@ import { separableBytes } from "./separableBytes.js";
  * Every way to compute that there is: a line each. Several may be variants of one method, the preferred one first: the first that applies
  * stands for the method, whatever the profile, so that a forced method's arithmetic is the same everywhere.
  */
-export const methods: readonly MethodPlan[] = [directBytes, direct, separableBytes, separable, runningSumBytes, runningSum, fft];
+export const methods: readonly MethodPlan[] = [
+  directBytesSparse,
+  directBytes,
+  directSparse,
+  direct,
+  separableBytes,
+  separable,
+  runningSumBytes,
+  runningSum,
+  fft,
+];
 
 export const methodNames: readonly Method[] = [...new Set(methods.map(({ name }) => name))];
 

@@ -110,3 +110,9 @@ export function rowBlocks(problem: Problem, layout: Frame): { blocks: number; fl
   const row = cover(problem, layout, 6);
   return { blocks: problem.vertical.extended * row.blocks, floats: problem.vertical.extended * row.floats };
 }
+
+/** The same over every result row. */
+export function resultBlocks(problem: Problem, layout: Frame): { blocks: number; floats: number } {
+  const row = cover(problem, layout, 6);
+  return { blocks: problem.vertical.count * row.blocks, floats: problem.vertical.count * row.floats };
+}
