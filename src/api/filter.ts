@@ -98,7 +98,7 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
   run(image?: Raster, target?: Raster): Raster {
     this.#usable("run");
     if (this.#jobs.busy) throw busyError("run");
-    const source = this.#source("run", image);
+    const source = this.#source("run", image, target);
     const given = this.#target("run", image, target, source);
     if (anyClaims()) checkUnclaimed({ owner: this, ...this.#stretches(source, given?.checked) });
     const { checked, raster } = given ?? this.#ownTarget(source);
@@ -109,7 +109,7 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
   async runAsync(image?: Raster, given?: RunOptions<Raster>): Promise<never> {
     this.#usable("runAsync");
     const options = checkedRunOptions(given);
-    const source = this.#source("runAsync", image);
+    const source = this.#source("runAsync", image, options.target);
     const target = this.#target("runAsync", image, options.target, source);
     if (options.signal?.aborted) return Promise.reject(options.signal.reason);
     return this.#jobs.add(this.#order(options, source, target)) as Promise<never>;
@@ -140,7 +140,9 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
     if (this.#disposed) throw disposedError(call);
   }
 
-  #source(call: string, image: Raster | undefined): CheckedRaster {
+  #source(call: string, image: Raster | undefined, target: unknown): CheckedRaster {
+    // Memory that grows leaves older arrays behind: both views are reserved before either is looked at.
+    if (image === undefined && target === undefined) this.#views.result.reserve();
     const source = checkedSource(call, image === undefined ? this.source : image, this.#layout);
     this.#checkLive(call, source);
     return source;

@@ -28,9 +28,17 @@ export class View {
    */
   get raster(): ResultRaster {
     const { width, height, channels, sample } = this.#shape;
-    const samples = width * height * channels;
-    this.#address ??= this.#blocks.take(samples * bytesOf[sample]);
-    return { data: this.#memory.imageAt(sample, this.#address, samples), width, height, channels };
+    return { data: this.#memory.imageAt(sample, this.reserve(), width * height * channels), width, height, channels };
+  }
+
+  /**
+   * Takes the memory, which may grow, and tells where.
+   *
+   * @throws ConvolutionError `memory-limit`, `memory-exhausted`
+   */
+  reserve(): number {
+    const { width, height, channels, sample } = this.#shape;
+    return (this.#address ??= this.#blocks.take(width * height * channels * bytesOf[sample]));
   }
 
   /** Gives the memory back, as soon as no unfinished job needs it. */

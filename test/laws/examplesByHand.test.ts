@@ -1,5 +1,5 @@
 import { describe, expect, test } from "vitest";
-import { delta, kernel } from "../../src/kernels/index.js";
+import { delta, kernel, outer } from "../../src/kernels/index.js";
 import type { Alpha, Border, ConvolveOptions, Raster } from "../../src/index.js";
 import { allAnswers } from "../support/answers.js";
 import { difference } from "../support/publishedCase.js";
@@ -80,6 +80,12 @@ describe("renormalised", () => {
   test("the sum of taps stays what it is, and 0 where no weight fell inside", () => {
     const taps = kernel([[0, 2, 6]]);
     check({ image: plane([[1, 2]]), kernel: taps, options: { border: "renormalised", extent: "full" } }, [0, 8, 10, 16], 2 ** -20);
+  });
+  test("0 everywhere, by every method and without a tolerance, where no weight can fall inside", () => {
+    const taps = outer([1], [1, 0, 0], { origin: { x: 2, y: 0 } });
+    const question: Question = { image: plane([[1, 2]]), kernel: taps, options: { border: "renormalised", tolerance: 0 }, correlate: true };
+    check(question, [0, 0], 2 ** -20);
+    expect(allAnswers(question).some(({ from }) => from.includes("separable"))).toBe(true);
   });
 });
 

@@ -172,3 +172,17 @@ test("source and target in one stretch of memory are refused as elsewhere", asyn
   expect(() => filter.run(filter.result, filter.result)).toThrow(/same stretch/);
   engine.dispose();
 });
+
+test("the first run of views is right where reserving the result makes the memory grow", async () => {
+  const image = noiseImage("u8", 1000, 700, 4, 3);
+  const engine = await createEngine();
+  const prepared = (): Filter => engine.prepare(gaussian(2), layoutOf(image)) as Filter;
+  const copied = prepared().run(image);
+  for (const run of [(filter: Filter) => filter.run(), (filter: Filter) => filter.runAsync()]) {
+    const filter = prepared();
+    fill(filter, image);
+    const own = await run(filter);
+    expect(firstDifference(own.data, copied.data)).toBeUndefined();
+  }
+  engine.dispose();
+});
