@@ -267,6 +267,7 @@ export interface Filter<T extends SampleType = never, S extends SampleType = Sam
    * shorter during the run), `disposed` (the filter or its engine was, while the job waited or ran).
    *
    * @example
+   * const filter = engine.prepare(gaussian(4), { width: 64, height: 48, channels: 4 });
    * const blurred = await filter.runAsync(image, { onProgress: (done) => console.log(`${Math.round(100 * done)} %`) });
    */
   runAsync(image?: undefined, options?: RunOptions<never>): Promise<ResultRaster<ViewArray<[T] extends [never] ? S : T>>>;
@@ -293,8 +294,11 @@ export interface Filter<T extends SampleType = never, S extends SampleType = Sam
    * `kernel-mismatch` (another size or origin, or more memory needed), `method-not-applicable` (the method does not apply to these
    * taps), `border-not-applicable`, `alpha-not-applicable`
    * @example
-   * const filter = engine.prepare(gaussian({ sigma: 2, radius: 9 }), { width: 640, height: 480, channels: 4 });
-   * slider.oninput = () => filter.replaceKernel(gaussian({ sigma: slider.valueAsNumber, radius: 9 }));
+   * const filter = engine.prepare(gaussian({ sigma: 2, radius: 9 }), { width: 64, height: 48, channels: 4 });
+   * for (const sigma of [1, 1.5, 2]) {
+   *   filter.replaceKernel(gaussian({ sigma, radius: 9 }));
+   *   filter.run(image, filter.result);
+   * }
    */
   replaceKernel(kernel: Kernel): void;
   /** Gives the filter's memory back, and rejects its unfinished jobs. Safe to call twice. */
