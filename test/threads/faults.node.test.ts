@@ -33,6 +33,13 @@ describe.each(Object.entries(faulty))("a worker that %s", (_, createWorker) => {
   });
 });
 
+test.each([undefined, {}, { postMessage: () => undefined }, 5])("what is no worker is none: %o", async (given) => {
+  const engine = await engineWith(2, () => given as unknown as Worker);
+  expect(engine.threads).toBe(1);
+  expect(Buffer.from(engine.convolve(image, taps).data)).toEqual(Buffer.from(plain.convolve(image, taps).data));
+  engine.dispose();
+});
+
 describe("one faulty worker among three threads", () => {
   test.each(["ends with a task", "never takes a task", "throws at load"])("%s: the others do its work", async (name) => {
     let made = 0;

@@ -61,6 +61,12 @@ function hostWorker(): EngineWorker | undefined {
   return typeof Worker === "function" ? new Worker(new URL("./worker.js", import.meta.url), { type: "module" }) : undefined;
 }
 
+/** What a caller's function gave may be anything. */
+function isWorker(worker: EngineWorker | undefined): worker is EngineWorker {
+  const { postMessage, terminate } = (worker ?? {}) as Partial<EngineWorker>;
+  return typeof postMessage === "function" && typeof terminate === "function";
+}
+
 /**
  * The workers of one engine. All of them together are its threads, less the calling one. A worker that is lost is not replaced: the others
  * and the calling thread do its work.
@@ -92,7 +98,7 @@ export class Crew {
     return new Promise((settle) => {
       try {
         const worker = createWorker();
-        if (!worker) return settle();
+        if (!isWorker(worker)) return settle();
         const hand = new Hand(worker);
         this.#hands.push(hand);
         listenTo(worker, {
