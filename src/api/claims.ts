@@ -15,8 +15,14 @@ export function samplesStretch(samples: Samples, memory: EngineMemory): Stretch 
   return { of, first: byteOffset, end: byteOffset + byteLength };
 }
 
-export function overlap(a: Stretch, b: Stretch): boolean {
+function overlap(a: Stretch, b: Stretch): boolean {
   return a.of === b.of && a.first < b.end && b.first < a.end;
+}
+
+/** The same of two arrays. */
+export function samplesOverlap(a: Samples, b: Samples, memory: EngineMemory): boolean {
+  if (a.buffer !== b.buffer && (memory.addressOf(a) === undefined || memory.addressOf(b) === undefined)) return false;
+  return a.byteOffset < b.byteOffset + b.byteLength && b.byteOffset < a.byteOffset + a.byteLength;
 }
 
 /** What a job reads and writes until it ends. `owner` is its filter, whose jobs follow one another. */

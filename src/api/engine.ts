@@ -94,7 +94,7 @@ class ConvolutionEngine implements Engine {
     correlate: boolean,
   ): ResultRaster<ResultArray<S, T>> {
     this.#usable(call);
-    const { width, height, channels, sample } = checkedRaster(`${call}: image`, image);
+    const { width, height, channels, sample } = checkedRaster(call, "image", image);
     const filter = this.#prepared<T, SampleType>(checkedRequest(call, kernel, { width, height, channels, sample }, options, correlate), true);
     try {
       return filter.run(image);

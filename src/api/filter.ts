@@ -99,9 +99,15 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
     this.#usable("run");
     if (this.#jobs.busy) throw busyError("run");
     const source = this.#source("run", image, target);
-    const given = this.#target("run", image, target, source);
-    if (anyClaims()) checkUnclaimed({ owner: this, ...this.#stretches(source, given?.checked) });
-    const { checked, raster } = given ?? this.#ownTarget(source);
+    const checked = this.#target("run", image, target, source);
+    if (anyClaims()) checkUnclaimed({ owner: this, ...this.#stretches(source, checked) });
+    if (checked === undefined) return this.#runIntoNew(source);
+    this.#runner.run(source, checked);
+    return target ?? this.#views.result.raster;
+  }
+
+  #runIntoNew(source: CheckedRaster): Raster {
+    const { checked, raster } = this.#ownTarget(source);
     this.#runner.run(source, checked);
     return raster;
   }
@@ -143,18 +149,18 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
   #source(call: string, image: Raster | undefined, target: unknown): CheckedRaster {
     // Memory that grows leaves older arrays behind: both views are reserved before either is looked at.
     if (image === undefined && target === undefined) this.#views.result.reserve();
-    const source = checkedSource(call, image === undefined ? this.source : image, this.#layout);
+    const source = checkedSource(call, image === undefined ? this.#views.source.raster : image, this.#layout);
     this.#checkLive(call, source);
     return source;
   }
 
   /** The caller's target, or the view where there is neither image nor target; nothing where the result is a raster of its own. */
-  #target(call: string, image: unknown, target: unknown, source: CheckedRaster): Target | undefined {
+  #target(call: string, image: unknown, target: unknown, source: CheckedRaster): CheckedRaster | undefined {
     if (target === undefined && image !== undefined) return undefined;
-    const raster = target === undefined ? this.result : target;
+    const raster = target === undefined ? this.#views.result.raster : target;
     const checked = checkedTarget(call, raster, source, this.#engine.core.memory, this.#result);
     this.#checkLive(call, checked);
-    return { checked, raster: raster as Raster, isView: target === undefined };
+    return checked;
   }
 
   /** @throws ConvolutionError `detached-samples` for a view whose filter is gone */
@@ -164,12 +170,12 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
     throw new ConvolutionError("detached-samples", message, { expected: "a view of a filter in use", received: "a view of a disposed filter" });
   }
 
-  #ownTarget(source: CheckedRaster): Target {
+  #ownTarget(source: CheckedRaster): { checked: CheckedRaster; raster: Raster } {
     const { width, height, channels, sample } = this.#result;
     const data = newSamples(sample, source, width * height * channels);
     const { colorSpace } = source;
     const checked: CheckedRaster = { data, sample, width, height, channels, stride: width * channels, colorSpace };
-    return { checked, raster: { data, width, height, channels, ...(colorSpace === undefined ? {} : { colorSpace }) }, isView: false };
+    return { checked, raster: { data, width, height, channels, ...(colorSpace === undefined ? {} : { colorSpace }) } };
   }
 
   #stretches(source: CheckedRaster, target: CheckedRaster | undefined) {
@@ -177,15 +183,15 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
     return { source: samplesStretch(source.data, memory), target: target && samplesStretch(target.data, memory) };
   }
 
-  #order(options: CheckedRunOptions, source: CheckedRaster, target: Target | undefined): Order {
+  #order(options: CheckedRunOptions, source: CheckedRaster, target: CheckedRaster | undefined): Order {
     const sourceLater = this.#later("image", source);
-    const targetLater = target && this.#later("target", target.checked);
+    const targetLater = target && this.#later("target", target);
     const begin = (): (() => Raster) => {
-      const { checked, raster } = targetLater ? { checked: targetLater(), raster: target!.raster } : this.#ownTarget(source);
+      const { checked, raster } = targetLater ? { checked: targetLater(), raster: options.target as Raster | undefined } : this.#ownTarget(source);
       this.#runner.begin(sourceLater(), checked);
-      return () => (target?.isView ? this.#views.result.raster : raster);
+      return () => raster ?? this.#views.result.raster;
     };
-    return { claim: { owner: this, ...this.#stretches(source, target?.checked) }, options, begin };
+    return { claim: { owner: this, ...this.#stretches(source, target) }, options, begin };
   }
 
   /** A raster as it will be when its job begins: views of the memory anew, other arrays only if they are as long as they were. */
@@ -200,12 +206,4 @@ export class PreparedFilter<T extends SampleType = never, S extends SampleType =
       return raster;
     };
   }
-}
-
-/** Where results go: what is written, and the raster that the caller gets. */
-interface Target {
-  checked: CheckedRaster;
-  raster: Raster;
-  /** It is the filter's own view, which has to be taken anew afterwards. */
-  isView: boolean;
 }

@@ -10,6 +10,7 @@ export class View {
   readonly #memory: EngineMemory;
   readonly #blocks: ViewMemory;
   #address: number | undefined;
+  #raster: ResultRaster | undefined;
 
   constructor(shape: ImageShape, memory: EngineMemory, blocks: ViewMemory) {
     this.#shape = shape;
@@ -22,17 +23,23 @@ export class View {
   }
 
   /**
-   * The image, in an array made anew: an older one is gone where the memory has grown.
+   * The image: the same object, which nobody can change, until the memory has grown and its array is gone.
    *
    * @throws ConvolutionError `memory-limit`, `memory-exhausted`
    */
   get raster(): ResultRaster {
+    const address = this.reserve();
+    if (this.#raster === undefined || !this.#memory.isCurrent(this.#raster.data)) this.#raster = this.#rasterAt(address);
+    return this.#raster;
+  }
+
+  #rasterAt(address: number): ResultRaster {
     const { width, height, channels, sample } = this.#shape;
-    return { data: this.#memory.imageAt(sample, this.reserve(), width * height * channels), width, height, channels };
+    return Object.freeze({ data: this.#memory.imageAt(sample, address, width * height * channels), width, height, channels });
   }
 
   /**
-   * Takes the memory, which may grow, and tells where.
+   * Takes the memory at first, which may grow, and tells where.
    *
    * @throws ConvolutionError `memory-limit`, `memory-exhausted`
    */
@@ -46,7 +53,7 @@ export class View {
     const address = this.#address;
     if (address === undefined) return;
     const stretch = { of: this.#memory, first: address, end: address + this.byteLength };
-    this.#address = undefined;
+    this.#address = this.#raster = undefined;
     whenUnclaimed(stretch, () => this.#blocks.release(address));
   }
 }

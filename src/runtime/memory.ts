@@ -187,6 +187,12 @@ export class EngineMemory {
     return sample === "u8" ? new Uint8ClampedArray(this.#buffer, address, count) : this.samplesAt(sample, address, count);
   }
 
+  /** False for arrays of other memory, and for those that the memory has left behind as it grew. */
+  isCurrent(samples: Samples): boolean {
+    this.#refresh();
+    return samples.buffer === this.#buffer;
+  }
+
   /** Where an array lies in the memory; nothing where it lies elsewhere. */
   addressOf(samples: Samples): number | undefined {
     this.#refresh();

@@ -27,9 +27,10 @@ export class RowTraffic {
 
   /** Before the first rows of a run. */
   begin({ data }: Plane): void {
-    this.#parts = this.#partsOf.get(data) ?? [];
-    this.#partsOf.set(data, this.#parts);
     this.#next = 0;
+    const known = this.#partsOf.get(data);
+    this.#parts = known ?? [];
+    if (!known) this.#partsOf.set(data, this.#parts);
   }
 
   /** Samples first … first + count − 1 of an array, as they were last time or made anew. */

@@ -1,18 +1,9 @@
 /** Runs 100,000 filters into one target in a process with --expose-gc, and prints by how many bytes the heap has grown. */
-import { binomial, box, createEngine, kernel, type Method } from "../../src/index.js";
-import { noiseKernel } from "../support/kernels.js";
+import { createEngine, type Method } from "../../src/index.js";
+import { kernelFor } from "./methodKernels.js";
 import { noiseImage } from "../support/noise.js";
 
 const collect = (globalThis as { gc?: () => void }).gc!;
-const kernels = {
-  direct: noiseKernel(3, 3, 1),
-  separable: binomial(4),
-  "running-sum": box(9),
-  fft: kernel([
-    [1, 2],
-    [3, 4],
-  ]),
-};
 
 /** The heap in use once garbage is gone; the collector takes more than one round for what finalizers hold. */
 function heapAfterCollection(): number {
@@ -24,7 +15,7 @@ const method = process.argv[2] as Method;
 const image = noiseImage("u8", 64, 64, 1, 1);
 const target = { data: new Uint8Array(64 * 64), width: 64, height: 64, channels: 1 as const };
 const engine = await createEngine();
-const filter = engine.prepare(kernels[method], { width: 64, height: 64, channels: 1, sample: "u8" }, { method });
+const filter = engine.prepare(kernelFor[method], { width: 64, height: 64, channels: 1, sample: "u8" }, { method });
 for (let times = 0; times < 5000; times++) filter.run(image, target);
 const before = heapAfterCollection();
 for (let times = 0; times < 100_000; times++) filter.run(image, target);

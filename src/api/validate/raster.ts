@@ -6,13 +6,35 @@ const longestSide = 16_777_216;
 
 /** A raster whose every field is there and right. */
 export interface CheckedRaster {
-  data: Samples;
-  sample: SampleType;
-  width: number;
-  height: number;
-  channels: Channels;
-  stride: number;
-  colorSpace: string | undefined;
+  readonly data: Samples;
+  readonly sample: SampleType;
+  readonly width: number;
+  readonly height: number;
+  readonly channels: Channels;
+  readonly stride: number;
+  readonly colorSpace: string | undefined;
+}
+
+type Given = Partial<Record<keyof Raster, unknown>>;
+
+/** What passed, and what it said of itself where that may differ from what was filled in. */
+interface Accepted {
+  channels: unknown;
+  stride: unknown;
+  /** Samples that the array had: none as soon as it is detached, others if its buffer was resized. */
+  length: number;
+  checked: CheckedRaster;
+}
+
+/** The last raster of each array that passed: the same again, in whatever object, has nothing new to be checked, and costs no memory. */
+const accepted = new WeakMap<Samples, Accepted>();
+
+function acceptedBefore({ data, width, height, channels, stride, colorSpace }: Given): CheckedRaster | undefined {
+  const known = accepted.get(data as Samples);
+  if (known === undefined || (data as Samples).length !== known.length || channels !== known.channels || stride !== known.stride) return undefined;
+  const { checked } = known;
+  const colours = typeof colorSpace === "string" ? colorSpace : undefined;
+  return width === checked.width && height === checked.height && colours === checked.colorSpace ? checked : undefined;
 }
 
 const sampleOfArray: Record<string, SampleType> = { Uint8Array: "u8", Uint8ClampedArray: "u8", Uint16Array: "u16", Float32Array: "f32" };
@@ -94,27 +116,32 @@ function checkedStride(what: string, value: unknown, rowSamples: number): number
 /**
  * Checks a raster and fills in what it leaves out.
  *
- * @param what how messages call it: "image", "target"
+ * @param where the call that messages name: "convolve", "run"
+ * @param name how messages call the raster: "image", "target"
  * @throws ConvolutionError `invalid-raster`, `unsupported-samples`, `detached-samples`
  */
-export function checkedRaster(what: string, raster: unknown): CheckedRaster {
-  if (typeof raster !== "object" || raster === null) {
-    const found = raster === null ? "null" : typeof raster;
-    return fail(what, `it is ${found}`, "{ data, width, height }", "Pass an ImageData, a decoded PNG or a plain object.");
-  }
-  const given = raster as Partial<Record<keyof Raster, unknown>>;
-  const width = checkedSide(what, "width", given.width);
-  const height = checkedSide(what, "height", given.height);
-  const { data, sample } = checkedSamples(what, given.data);
-  const channels = given.channels === undefined ? channelsFromLength(what, data.length, width, height) : checkedChannels(what, given.channels);
-  const stride = checkedStride(what, given.stride, width * channels);
+export function checkedRaster(where: string, name: string, raster: unknown): CheckedRaster {
+  if (typeof raster === "object" && raster !== null) return acceptedBefore(raster) ?? checkedAnew(`${where}: ${name}`, raster);
+  const found = raster === null ? "null" : typeof raster;
+  return fail(`${where}: ${name}`, `it is ${found}`, "{ data, width, height }", "Pass an ImageData, a decoded PNG or a plain object.");
+}
+
+/** Reads each field once, so that what is remembered is what was checked. */
+function checkedAnew(what: string, raster: Given): CheckedRaster {
+  const { width: widthGiven, height: heightGiven, channels: channelsGiven, stride: strideGiven, colorSpace: colours } = raster;
+  const width = checkedSide(what, "width", widthGiven);
+  const height = checkedSide(what, "height", heightGiven);
+  const { data, sample } = checkedSamples(what, raster.data);
+  const channels = channelsGiven === undefined ? channelsFromLength(what, data.length, width, height) : checkedChannels(what, channelsGiven);
+  const stride = checkedStride(what, strideGiven, width * channels);
   const needed = (height - 1) * stride + width * channels;
-  const loose = given.stride !== undefined;
+  const loose = strideGiven !== undefined;
   if (data.length < needed || (data.length > needed && !loose)) {
     const rows = loose ? `, rows ${stride} samples apart` : "";
     const advice = "Check width, height and channels, or give stride where rows are padded.";
     fail(what, `data has ${data.length} samples`, `${needed} for ${width}×${height}×${channels}${rows}`, advice);
   }
-  const colorSpace = typeof given.colorSpace === "string" ? given.colorSpace : undefined;
-  return { data, sample, width, height, channels, stride, colorSpace };
+  const checked: CheckedRaster = { data, sample, width, height, channels, stride, colorSpace: typeof colours === "string" ? colours : undefined };
+  accepted.set(data, { channels: channelsGiven, stride: strideGiven, length: data.length, checked });
+  return checked;
 }

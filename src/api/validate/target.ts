@@ -1,7 +1,7 @@
 import { ConvolutionError } from "../../errors.js";
 import type { EngineMemory } from "../../runtime/memory.js";
 import type { SampleType } from "../../types.js";
-import { overlap, samplesStretch } from "../claims.js";
+import { samplesOverlap } from "../claims.js";
 import { checkedRaster, type CheckedRaster } from "./raster.js";
 import type { ImageShape } from "./request.js";
 
@@ -13,7 +13,7 @@ const shapeOf = ({ width, height, channels, sample }: ImageShape): string => `${
  * @throws ConvolutionError `layout-mismatch`, and those of a raster
  */
 export function checkedSource(where: string, image: unknown, layout: ImageShape): CheckedRaster {
-  const source = checkedRaster(`${where}: image`, image);
+  const source = checkedRaster(where, "image", image);
   const same = source.width === layout.width && source.height === layout.height && source.channels === layout.channels && source.sample === layout.sample;
   if (same) return source;
   const message = `${where}: the image is ${shapeOf(source)}, the filter was prepared for ${shapeOf(layout)}. Prepare a filter for this layout.`;
@@ -32,13 +32,13 @@ export function checkedTarget(
   memory: EngineMemory,
   result: { width: number; height: number; channels: 1 | 2 | 3 | 4; sample: SampleType },
 ): CheckedRaster {
-  const checked = checkedRaster(`${where}: target`, target);
+  const checked = checkedRaster(where, "target", target);
   const same = checked.width === result.width && checked.height === result.height && checked.channels === result.channels && checked.sample === result.sample;
   if (!same) {
     const message = `${where}: the target is ${shapeOf(checked)}, the result is ${shapeOf(result)}. Give a target of that shape, or none to get a new raster.`;
     throw new ConvolutionError("invalid-target", message, { expected: shapeOf(result), received: shapeOf(checked) });
   }
-  if (overlap(samplesStretch(checked.data, memory), samplesStretch(source.data, memory))) {
+  if (samplesOverlap(checked.data, source.data, memory)) {
     const message = `${where}: target and image lie in the same stretch of memory, where results could be read as samples. Give a target of its own.`;
     throw new ConvolutionError("overlapping-target", message, { expected: "memory apart from the image", received: "overlapping memory" });
   }
