@@ -38,15 +38,13 @@ async function measured(group: Group): Promise<GroupResult> {
   return result;
 }
 
-const parts: Record<string, unknown> = {};
 let missed = 0;
 for (const group of chosen) {
   const result = await measured(group);
   if (result.contests.length + Object.keys(result.notes).length === 0) continue;
   missed += [...result.contests, ...result.means].filter(({ verdict }) => verdict === "MISS").length;
-  parts[group.name] = { title: group.title, host, turns, ...result };
+  mergeResult("yardsticks", host, "groups", { [group.name]: { title: group.title, host, turns, ...result } });
 }
 engine.dispose();
-mergeResult("yardsticks", host, "groups", parts);
 if (missed > 0) console.log(`${missed} bars missed`);
 process.exitCode = missed > 0 ? 1 : 0;
