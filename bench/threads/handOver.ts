@@ -3,11 +3,11 @@ import { shippedProfiles } from "../../src/planning/profile.js";
 import { planesOf } from "../inputs.js";
 import { spreadOf } from "../spread.js";
 
-const small: Required<Layout> = { width: 64, height: 64, channels: 1, sample: "u8" };
+const small: Required<Layout> = { width: 256, height: 128, channels: 1, sample: "u8" };
 const runs = 400;
 const restMilliseconds = 20;
 
-/** What handing half of a tiny image to another thread adds to a run, in microseconds: at once, and where the threads have slept. */
+/** What handing half of a small image to another thread adds to a run, in microseconds: at once, and where the threads have slept. */
 export async function handOverPrices(
   single: Engine,
   createWorker: NonNullable<EngineOptions["createWorker"]>,
