@@ -1,10 +1,14 @@
 import type { InspectorSession } from "./session.js";
 
+/** How a frame comes and goes: rasters that are made once, new ones of the same arrays for each frame, or the filter's own views. */
+export const ways = ["the same rasters", "new rasters", "views"] as const;
+
 /** What is filtered: one size, one kernel. */
 export interface FrameWork {
   width: number;
   height: number;
   taps: number;
+  way: (typeof ways)[number];
   frames: number;
 }
 
