@@ -51,8 +51,8 @@ async function heapGrowth(host: FrameHost): Promise<number[]> {
 async function measure(host: FrameHost, way: (typeof ways)[number]) {
   const { method, arithmetic } = await host.prepare({ ...work, way });
   // A collection makes the host forget some of what it has compiled: the frames that are sampled come after the last warm-up.
-  const engineBefore = await host.engineBytes();
   await host.warmUp(warmFrames);
+  const engineBefore = await host.engineBytes();
   await liveHeap(host.session);
   await host.warmUp(warmFrames);
   const allocations = await allocationsDuring(host.session, () => host.run(frames));
