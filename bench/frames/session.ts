@@ -35,9 +35,12 @@ export async function allocationsDuring(session: InspectorSession, work: () => u
 }
 
 function allocationsOf({ callFrame, selfSize, children }: ProfileNode): Allocation[] {
-  const own = selfSize > 0 ? [{ name: callFrame.functionName || "(anonymous)", url: callFrame.url, byteLength: selfSize }] : [];
+  const own = selfSize > 0 ? [{ name: callFrame.functionName || "(anonymous)", url: placeOf(callFrame.url), byteLength: selfSize }] : [];
   return [...own, ...children.flatMap(allocationsOf)];
 }
 
+/** Folder and file of a script: where it lies on this machine is nobody's business. */
+const placeOf = (url: string): string => url.split("/").slice(-2).join("/");
+
 /** Frames of the library itself. */
-export const ofTheLibrary = ({ url }: Allocation): boolean => url.includes("/dist/");
+export const ofTheLibrary = ({ url }: Allocation): boolean => url.startsWith("dist/");
