@@ -39,7 +39,7 @@ function allocationsOf({ callFrame, selfSize, children }: ProfileNode): Allocati
   return [...own, ...children.flatMap(allocationsOf)];
 }
 
-/** Folder and file of a script: where it lies on this machine is nobody's business. */
+/** Folder and file of a script; the rest of its address belongs to the machine. */
 const placeOf = (url: string): string => url.split("/").slice(-2).join("/");
 
 /** Frames of the library itself. */
