@@ -69,9 +69,10 @@ const recordOf = (timed: Timed, prices: Prices): Record<string, unknown> => ({
 const withoutZeros = (counts: Counts): Counts => Object.fromEntries(Object.entries(counts).filter(([, count]) => count !== 0));
 
 const profileOf = (host: Host, build: Build, prices: Prices): HardwareProfile => ({
-  version: 1,
+  version: 2,
   host: `${host.processor}, node ${host.versions["node"]}`,
   build,
+  threads: 1,
   date: host.date.slice(0, 10),
   nanoseconds: prices,
 });

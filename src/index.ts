@@ -20,6 +20,7 @@ export type {
   Method,
   Output,
   PrepareOptions,
+  ProfileCheck,
   Raster,
   Region,
   ResultArray,
@@ -27,5 +28,6 @@ export type {
   RunOptions,
   Samples,
   SampleType,
+  Verdict,
   ViewArray,
 } from "./types.js";

@@ -197,15 +197,45 @@ export interface Explanation {
  */
 export type Build = "simd" | "scalar" | "relaxed-simd";
 
-/** Nanoseconds per counted operation, measured on some hardware. */
+/** Which method was fastest for problems of one shape when they were timed. */
+export interface Verdict {
+  /** What such problems have in common: layout, kernel size and structure, options. Written by the engine, not to be composed by hand. */
+  shape: string;
+  method: Method;
+  /** Measured time of one run of each method that was timed. */
+  milliseconds: Partial<Record<Method, number>>;
+  /** ISO 8601. */
+  date: string;
+}
+
+/** A problem that a profile was held against, which it was not fitted to. */
+export interface ProfileCheck {
+  problem: string;
+  method: Method;
+  /** Milliseconds of one run. */
+  predicted: number;
+  measured: number;
+}
+
+/** What counted operations cost on some hardware: plain data, JSON as it is. */
 export interface HardwareProfile {
-  version: 1;
+  version: 2;
   /** Where the profile comes from, for people. */
   host: string;
   build: Build;
+  /** Threads of the engine that was measured. */
+  threads: number;
+  /** ISO 8601. */
   date: string;
   /** Nanoseconds per count, by the names of planning/cost. */
   nanoseconds: Record<string, number>;
+  /** Standard error of each price as a share of it, where it was measured. A price without one was taken over in proportion to others. */
+  spread?: Record<string, number>;
+  checks?: ProfileCheck[];
+  /** What `prepare(…, { measure: true })` found: used for such problems instead of predictions. */
+  verdicts?: Verdict[];
+  /** Sentences for people: what was left out, what was adapted. */
+  notes?: string[];
 }
 
 /** As much of a worker as an engine uses: a page's `Worker` and one of Node's `worker_threads` both fit. */
@@ -307,6 +337,8 @@ export interface Filter<T extends SampleType = never, S extends SampleType = Sam
 
 export interface Engine {
   readonly build: Build;
+  /** What predictions are made from: a copy, JSON as it is, with the verdicts of `prepare(…, { measure: true })`. Keep it, and give it to `createEngine` the next time. */
+  readonly profile: HardwareProfile;
   /** Threads that are there now, the calling one included: fewer than asked for where the host lets none start, or where workers were lost. */
   readonly threads: number;
   /** Convolves (taps reversed) and returns a new raster. */

@@ -11,9 +11,10 @@ function entryOf({ host, build, date, nanoseconds }: HardwareProfile): string {
   const prices = operationNames.map((name) => lineOf(name, nanoseconds[name]!));
   return [
     "  {",
-    "    version: 1,",
+    "    version: 2,",
     `    host: ${JSON.stringify(host)},`,
     `    build: "${build}",`,
+    "    threads: 1,",
     `    date: "${date}",`,
     "    nanoseconds: {",
     ...prices,

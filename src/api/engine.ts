@@ -28,7 +28,8 @@ import type { Crew } from "../runtime/workers/crew.js";
 import type { EngineParts } from "./engineParts.js";
 import { PreparedFilter } from "./filter.js";
 import { loadCore, type Core } from "./loading.js";
-import { checkedEngineOptions, profileForBuild } from "./validate/engineOptions.js";
+import { checkedEngineOptions } from "./validate/engineOptions.js";
+import { profileFor } from "./validate/profile.js";
 import { checkedRaster } from "./validate/raster.js";
 import { checkedLayout, checkedRequest } from "./validate/request.js";
 import { warmUp } from "./warming.js";
@@ -52,6 +53,10 @@ class ConvolutionEngine implements Engine {
 
   get threads(): number {
     return 1 + (this.#parts.crew?.ready.length ?? 0);
+  }
+
+  get profile(): HardwareProfile {
+    return structuredClone(this.#profile);
   }
 
   convolve<S extends Samples, T extends SampleType = never>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions<T>): ResultRaster<ResultArray<S, T>> {
@@ -135,7 +140,7 @@ async function startCrew(others: number, core: Core, createWorker: EngineOptions
 export async function engineWithPacing(options: EngineOptions | undefined, pacing: Pacing): Promise<Engine> {
   const checked = checkedEngineOptions(options);
   const core = await loadCore(checked);
-  const profile = checked.profile ? profileForBuild(checked.profile, core.build) : shippedProfileFor(core.build);
+  const profile = checked.profile ? profileFor(checked.profile, core.build, checked.threads) : shippedProfileFor(core.build);
   const crew = checked.threads > 1 ? await startCrew(checked.threads - 1, core, checked.createWorker) : undefined;
   return new ConvolutionEngine(core, profile, pacing, crew);
 }

@@ -6,9 +6,10 @@ import type { HardwareProfile } from "../types.js";
  */
 export const shippedProfiles: readonly HardwareProfile[] = [
   {
-    version: 1,
+    version: 2,
     host: "AMD EPYC, node 20.20.2",
     build: "simd",
+    threads: 1,
     date: "2026-12-01",
     nanoseconds: {
       run: 1271,
@@ -57,9 +58,10 @@ export const shippedProfiles: readonly HardwareProfile[] = [
     },
   },
   {
-    version: 1,
+    version: 2,
     host: "AMD EPYC, node 20.20.2",
     build: "scalar",
+    threads: 1,
     date: "2026-12-01",
     nanoseconds: {
       run: 1465,

@@ -70,7 +70,8 @@ async function withoutMemory(act: () => unknown): Promise<unknown> {
   }
 }
 
-const profile = (change: object): HardwareProfile => untyped({ version: 1, host: "a test", build: "simd", date: "2026-01-01", nanoseconds: {}, ...change });
+const profile = (change: object): HardwareProfile =>
+  untyped({ version: 2, host: "a test", build: "simd", threads: 1, date: "2026-01-01", nanoseconds: {}, ...change });
 
 export const states: Pick<
   Record<ErrorCode, ErrorCase[]>,
@@ -153,7 +154,7 @@ export const states: Pick<
     },
   ],
   "invalid-profile": [
-    { title: "another version", act: () => createEngine({ profile: profile({ version: 7 }) }), says: ["7", "1"] },
+    { title: "another version", act: () => createEngine({ profile: profile({ version: 7 }) }), says: ["7", "2"] },
     { title: "no coefficients", act: () => createEngine({ profile: profile({ nanoseconds: undefined }) }), says: ["nanoseconds"] },
     { title: "missing coefficients", act: () => createEngine({ profile: profile({}) }) },
     { title: "not an object", act: () => createEngine({ profile: untyped("fast") }) },

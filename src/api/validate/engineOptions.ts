@@ -1,8 +1,8 @@
 import { ConvolutionError, shown } from "../../errors.js";
 import { checkedNumber, checkOptionNames, chosenWord } from "../../kernels/options.js";
-import { operationNames } from "../../planning/cost.js";
 import { mostBytes, pageBytes } from "../../runtime/memory.js";
 import type { Build, EngineOptions, HardwareProfile } from "../../types.js";
+import { builds, checkedProfile } from "./profile.js";
 
 /** Checked options of `createEngine`. */
 export interface CheckedEngineOptions {
@@ -13,8 +13,6 @@ export interface CheckedEngineOptions {
   threads: number;
   createWorker: EngineOptions["createWorker"];
 }
-
-const builds: readonly Build[] = ["simd", "scalar", "relaxed-simd"];
 
 /** More threads than this are refused: no image has work for them, and each takes memory. */
 const mostThreads = 64;
@@ -53,32 +51,4 @@ export function checkedEngineOptions(given: unknown): CheckedEngineOptions {
     threads: checkedThreads(options["threads"]),
     createWorker: checkedCreateWorker(options["createWorker"]),
   };
-}
-
-function refuseProfile(found: string, expected: string): never {
-  const message = `createEngine: profile: ${found}. Needed: ${expected}. Leave profile out to use the shipped one.`;
-  throw new ConvolutionError("invalid-profile", message, { expected, received: found });
-}
-
-/** A profile as plain data: version, build and a finite price, 0 or more, for every operation. */
-function checkedProfile(given: unknown): HardwareProfile {
-  if (typeof given !== "object" || given === null) refuseProfile(`it is ${given === null ? "null" : typeof given}`, "an object");
-  const { version, host, build, date, nanoseconds } = given as Partial<Record<keyof HardwareProfile, unknown>>;
-  if (version !== 1) refuseProfile(`version is ${String(version)}`, "version 1");
-  if (!builds.includes(build as Build)) refuseProfile(`build is ${String(build)}`, builds.map((name) => `"${name}"`).join(" or "));
-  if (typeof nanoseconds !== "object" || nanoseconds === null) refuseProfile("nanoseconds is missing", "nanoseconds by operation");
-  const prices: Record<string, number> = {};
-  for (const name of operationNames) {
-    const price = Object.hasOwn(nanoseconds, name) ? (nanoseconds as Record<string, unknown>)[name] : undefined;
-    if (typeof price !== "number" || !Number.isFinite(price) || price < 0)
-      refuseProfile(`nanoseconds.${name} is ${String(price)}`, "a finite number, 0 or more");
-    prices[name] = price;
-  }
-  return { version, host: String(host), build: build as Build, date: String(date), nanoseconds: prices };
-}
-
-/** @throws ConvolutionError `invalid-profile` where it was measured with another build */
-export function profileForBuild(profile: HardwareProfile, build: Build): HardwareProfile {
-  if (profile.build !== build) refuseProfile(`it was measured with the ${profile.build} build`, `a profile of the ${build} build`);
-  return profile;
 }
