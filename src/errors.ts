@@ -28,6 +28,7 @@ export const faultOfCode = {
   "file-exists": "caller",
   "file-unwritable": "host",
   "usage": "caller",
+  "interrupted": "caller",
   "array-in-use": "caller",
   "samples-changed": "caller",
   "kernel-mismatch": "caller",

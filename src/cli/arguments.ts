@@ -1,15 +1,13 @@
 import { type Command, Option } from "commander";
-import type { Alpha, BorderRule, Build, EngineOptions, Extent, Kernel, Light, Method, Origin, PrepareOptions, Region, SampleType } from "../index.js";
-import { kernel } from "../index.js";
+import type { Alpha, BorderRule, Extent, Light, Method, Origin, PrepareOptions, Region, SampleType } from "../index.js";
 import { borderOf, borderRule, borderRuleForms } from "./border.js";
-import { readKernelExpression } from "./kernelExpression.js";
-import { readKernelFile } from "./kernelFile.js";
-import { byteCount, numberOption, wholeNumbers } from "./numbers.js";
+import { type EngineArguments, addEngineOptions } from "./engineArguments.js";
+import { given } from "./given.js";
+import type { KernelArguments } from "./kernelArgument.js";
+import { numberOption, wholeNumbers } from "./numbers.js";
 
 /** The options that `filter` and `explain` share, as the parser hands them over. */
-export interface PlanArguments {
-  kernel: string;
-  origin?: Origin;
+export interface PlanArguments extends KernelArguments, EngineArguments {
   correlate?: true;
   border?: BorderRule;
   borderRows?: BorderRule;
@@ -23,17 +21,19 @@ export interface PlanArguments {
   outputSample?: SampleType;
   gain?: number;
   offset?: number;
-  build?: Build | "auto";
-  memoryLimit?: number;
+  /** File that the engine's profile comes from. */
+  profile?: string;
 }
 
 /** Adds the options of {@link PlanArguments}; results may be of the given sample types. */
 export function addPlanOptions(command: Command, outputSamples: readonly SampleType[]): Command {
   const number = (name: string) => (text: string) => numberOption(text, name);
   const rule = (name: string) => (text: string) => borderRule(text, name);
-  return command
-    .requiredOption("-k, --kernel <kernel>", "builder, taps or .json file, see below")
-    .option("--origin <x,y>", "tap that lies on the pixel computed (default: the middle one)", readOrigin)
+  command
+    .requiredOption("-k, --kernel <kernel>", "builder, taps, .json or .png file, see below")
+    .option("--origin <x,y>", "tap that lies on the pixel computed (default: the middle one; of a PNG its centre of gravity)", readOrigin)
+    .option("--kernel-background <levels>", "level of a PNG kernel without light, in its own units (default: 0)", number("--kernel-background"))
+    .option("--kernel-as-stored", "do not divide the levels of a PNG kernel by their sum")
     .option("--correlate", "lay the taps on the image as written; else they are turned by 180°, as convolution does")
     .option("--border <rule>", `what the image is outside itself: ${borderRuleForms.join(", ")} (default: replicate)`, rule("--border"))
     .option("--border-rows <rule>", "another rule above and below", rule("--border-rows"))
@@ -57,9 +57,8 @@ export function addPlanOptions(command: Command, outputSamples: readonly SampleT
     .addOption(choice("--output-sample <type>", "samples of the result (default: as the image); values are not rescaled, see --gain", outputSamples))
     .option("--gain <factor>", "result = gain · y + offset, such as 1/257 from 16 to 8 bits (default: 1)", number("--gain"))
     .option("--offset <levels>", "see --gain, such as 128 for signed results (default: 0)", number("--offset"))
-    .addOption(choice("--build <build>", "WebAssembly build of the engine (default: auto)", ["auto", "simd", "scalar", "relaxed-simd"]))
-    .option("--memory-limit <bytes>", "memory the engine may take, such as 256MiB", (text) => byteCount(text, "--memory-limit"))
-    .option("--json", "print one JSON object for programs, errors too");
+    .option("--profile <file>", 'costs to choose by, as "tapwise measure --profile" wrote them (default: those of the package)');
+  return addEngineOptions(command).option("--json", "print one JSON object for programs, errors too");
 }
 
 function choice(flags: string, description: string, words: readonly string[]): Option {
@@ -76,19 +75,6 @@ function readRegion(text: string): Region {
   return { x: x!, y: y!, width: width!, height: height! };
 }
 
-/** The kernel that is meant, from an expression or a file. */
-export async function kernelOf({ kernel: text, origin }: PlanArguments): Promise<Kernel> {
-  const read = text.trim().endsWith(".json") ? await readKernelFile(text.trim()) : readKernelExpression(text);
-  if (origin === undefined) return read;
-  const taps = read.taps;
-  const rows = Array.from({ length: read.height }, (_, row) => [...taps.subarray(row * read.width, (row + 1) * read.width)]);
-  return kernel(rows, { origin });
-}
-
-export function engineOptionsOf({ build, memoryLimit }: PlanArguments): EngineOptions {
-  return given({ build, memoryLimit });
-}
-
 export function prepareOptionsOf(options: PlanArguments): PrepareOptions {
   const { correlate, extent, region, method, tolerance, alpha, light, outputSample, gain, offset } = options;
   const output = given({ sample: outputSample, gain, offset });
@@ -103,11 +89,4 @@ export function prepareOptionsOf(options: PlanArguments): PrepareOptions {
     border: borderOf(options),
     output: Object.keys(output).length > 0 ? output : undefined,
   });
-}
-
-type Given<T> = { [Name in keyof T]?: Exclude<T[Name], undefined> };
-
-/** The options that were given: an absent one leaves the library its default. */
-function given<T extends object>(options: T): Given<T> {
-  return Object.fromEntries(Object.entries(options).filter(([, value]) => value !== undefined)) as Given<T>;
 }

@@ -1,6 +1,8 @@
-import { type Channels, ConvolutionError, type Layout, createEngine } from "../index.js";
-import { type PlanArguments, engineOptionsOf, kernelOf, prepareOptionsOf } from "./arguments.js";
+import { type Channels, ConvolutionError, type Layout } from "../index.js";
+import { type PlanArguments, prepareOptionsOf } from "./arguments.js";
+import { makeEngine } from "./engineArguments.js";
 import { readInput } from "./files.js";
+import { kernelOf } from "./kernelArgument.js";
 import { formName, readLayout } from "./png.js";
 import type { Report } from "./report.js";
 
@@ -12,14 +14,18 @@ export interface ExplainArguments extends PlanArguments {
 
 /** Says which method would be chosen for an image and why; computes no pixel. */
 export async function explainPlan(input: string | undefined, options: ExplainArguments): Promise<Report> {
-  const kernel = await kernelOf(options);
+  const { kernel, notes } = await kernelOf(options);
   const layout = await layoutOf(input, options);
-  const engine = await createEngine(engineOptionsOf(options));
+  const { engine, notes: engineNotes } = await makeEngine(options);
   try {
     const explanation = engine.explain(kernel, layout, prepareOptionsOf(options));
     const { width, height, origin, sum } = kernel;
     const heading = `Kernel ${width}×${height}, origin (${origin.x}, ${origin.y}), sum ${Number(sum.toPrecision(12))}, on ${layout.width}×${layout.height} ${formName(layout)}`;
-    return { text: `${heading}\n\n${String(explanation).trimEnd()}\n`, notes: [], data: { ...explanation, kernel: { width, height, origin, sum }, layout } };
+    return {
+      text: `${heading}\n\n${String(explanation).trimEnd()}\n`,
+      notes: [...notes, ...engineNotes],
+      data: { ...explanation, kernel: { width, height, origin, sum }, layout, notes: [...notes, ...engineNotes] },
+    };
   } finally {
     engine.dispose();
   }

@@ -1,14 +1,16 @@
 import { CommanderError } from "commander";
 import { ConvolutionError, type ErrorCode } from "../index.js";
+import { exitCodeOfSignal } from "./interruption.js";
 
 /** Exit codes of the command line. */
 export const exitCodes = { done: 0, failed: 1, wrongUsage: 2 } as const;
 
 /** The caller's errors that no other command line would mend: the files are at fault. */
-const fileCodes: ReadonlySet<ErrorCode> = new Set(["invalid-png", "file-unreadable", "file-exists", "file-unwritable"]);
+const fileCodes: ReadonlySet<ErrorCode> = new Set(["invalid-png", "file-unreadable", "file-exists", "file-unwritable", "invalid-profile"]);
 
-/** 2 where the command asks for what cannot be done and has to be written differently, else 1. */
+/** 2 where the command asks for what cannot be done and has to be written differently, 128 + the signal's number after an interruption, else 1. */
 export function exitCodeOf(error: ConvolutionError): number {
+  if (error.code === "interrupted") return exitCodeOfSignal(error.received);
   return error.fault === "caller" && !fileCodes.has(error.code) ? exitCodes.wrongUsage : exitCodes.failed;
 }
 

@@ -1,20 +1,26 @@
 import { randomBytes } from "node:crypto";
-import { type Stats, unlinkSync } from "node:fs";
-import { chmod, open, readFile, realpath, rename, stat, unlink } from "node:fs/promises";
+import type { Stats } from "node:fs";
+import { chmod, mkdir, open, readFile, realpath, rename, stat, unlink } from "node:fs/promises";
 import { dirname, join } from "node:path";
 import { ConvolutionError } from "../index.js";
+import { removeWhenInterrupted } from "./interruption.js";
 
 /** @throws ConvolutionError `file-unreadable` */
 export async function readInput(path: string): Promise<Uint8Array> {
   try {
     return await readFile(path);
   } catch (error) {
-    throw new ConvolutionError("file-unreadable", `${path} cannot be read: ${reasonOf(error)}. Check the path and its permissions.`, {
-      expected: "a readable file",
-      received: codeOf(error),
-      cause: error,
-    });
+    throw unreadable(path, error);
   }
+}
+
+/** What reading a file came to. */
+export function unreadable(path: string, cause: unknown): ConvolutionError {
+  return new ConvolutionError("file-unreadable", `${path} cannot be read: ${reasonOf(cause)}. Check the path and its permissions.`, {
+    expected: "a readable file",
+    received: codeOf(cause),
+    cause,
+  });
 }
 
 /**
@@ -31,11 +37,35 @@ export async function checkOutput(path: string, force: boolean): Promise<void> {
   const status = await existing(path);
   if (status === undefined) return;
   if (!status.isFile()) throw unwritable(path, status.isDirectory() ? "it is a folder" : "it is not a plain file");
-  if (!force)
-    throw new ConvolutionError("file-exists", `${path} exists and was left as it is. Choose another name, or add --force to replace it.`, {
-      expected: "a name that is free, or --force",
-      received: path,
-    });
+  if (!force) throw fileExists(path);
+}
+
+/** What a file that stands in the way comes to. */
+export function fileExists(path: string): ConvolutionError {
+  return new ConvolutionError("file-exists", `${path} exists and was left as it is. Choose another name, or add --force to replace it.`, {
+    expected: "a name that is free, or --force",
+    received: path,
+  });
+}
+
+/**
+ * Checks a place for a folder: one that is there, or a free name in one that is there.
+ *
+ * @throws ConvolutionError `file-unwritable`
+ */
+export async function checkPlaceForFolder(path: string): Promise<void> {
+  const status = await existing(path);
+  if (status === undefined) return checkOutput(path, false);
+  if (!status.isDirectory()) throw unwritable(path, "it is not a folder");
+}
+
+/** Makes a folder and those above it, where they are missing. @throws ConvolutionError `file-unwritable` */
+export async function makeFolder(path: string): Promise<void> {
+  try {
+    await mkdir(path, { recursive: true });
+  } catch (error) {
+    throw unwritable(path, codeOf(error) === "EEXIST" ? "it is not a folder" : reasonOf(error), error);
+  }
 }
 
 /**
@@ -73,25 +103,6 @@ async function writeDurably(path: string, content: Uint8Array): Promise<void> {
   }
 }
 
-/** Signal numbers of POSIX: a process that ends by one reports 128 + number (common practice of shells). */
-const numberOfSignal = { SIGHUP: 1, SIGINT: 2, SIGTERM: 15 } as const;
-
-function removeWhenInterrupted(path: string): () => void {
-  const stop = (signal: NodeJS.Signals): void => {
-    try {
-      unlinkSync(path);
-    } catch {
-      // Not begun yet, or already under its final name.
-    }
-    process.exit(128 + numberOfSignal[signal as keyof typeof numberOfSignal]);
-  };
-  const signals = Object.keys(numberOfSignal) as NodeJS.Signals[];
-  for (const signal of signals) process.once(signal, stop);
-  return () => {
-    for (const signal of signals) process.removeListener(signal, stop);
-  };
-}
-
 async function existing(path: string): Promise<Stats | undefined> {
   return stat(path).catch((error: unknown) => {
     if (codeOf(error) === "ENOENT") return undefined;
@@ -99,7 +110,13 @@ async function existing(path: string): Promise<Stats | undefined> {
   });
 }
 
-function unwritable(path: string, reason: string, cause?: unknown): ConvolutionError {
+/** True for an error of writing that every other file would meet as well. */
+export function isForAllFiles(error: unknown): boolean {
+  return error instanceof ConvolutionError && ["ENOSPC", "EDQUOT", "EROFS"].includes(codeOf(error.cause));
+}
+
+/** What writing a file came to. */
+export function unwritable(path: string, reason: string, cause?: unknown): ConvolutionError {
   return new ConvolutionError("file-unwritable", `${path} cannot be written: ${reason}. Choose a place that exists and may be written to.`, {
     expected: "a writable place",
     received: reason,
@@ -114,7 +131,9 @@ const reasonOfCode: Readonly<Record<string, string>> = {
   EPERM: "not permitted",
   EISDIR: "it is a folder",
   ENOTDIR: "a part of the path is not a folder",
+  ELOOP: "its links lead round in a circle",
   ENOSPC: "no space left on the device",
+  EDQUOT: "the disk quota is used up",
   EROFS: "the file system is read-only",
   EFBIG: "the file would be too large",
   ENAMETOOLONG: "the name is too long",

@@ -2,7 +2,7 @@ import { readFileSync } from "node:fs";
 import { Argument, Command, Option } from "commander";
 import { addPlanOptions } from "./arguments.js";
 import { explainPlan } from "./explainCommand.js";
-import { filterFile } from "./filterCommand.js";
+import { filterPath } from "./filterCommand.js";
 import { explainHelp, filterHelp, programHelp } from "./help.js";
 import { wholeNumbers } from "./numbers.js";
 import type { Report } from "./report.js";
@@ -10,14 +10,15 @@ import type { Report } from "./report.js";
 /** Where a command line prints: `process` fits. */
 export interface Streams {
   stdout: { write(text: string): unknown; columns?: number };
-  stderr: { write(text: string): unknown };
+  stderr: { write(text: string): unknown; isTTY?: boolean; columns?: number };
 }
 
 /** Text of the help is set for this many columns, fewer on a narrower terminal. */
 const helpColumns = 110;
 
 /** The commands and their options; `deliver` takes what a command reports. */
-export function makeProgram({ stdout, stderr }: Streams, deliver: (report: Report) => void): Command {
+export function makeProgram(streams: Streams, deliver: (report: Report) => void): Command {
+  const { stdout, stderr } = streams;
   const program = new Command("tapwise")
     .description("Convolves PNG images. The fastest way for the kernel and the image is chosen and told.")
     .version(packageVersion(), "-V, --version", "print the version")
@@ -31,12 +32,12 @@ export function makeProgram({ stdout, stderr }: Streams, deliver: (report: Repor
       getErrHelpWidth: () => helpColumns,
     })
     .addHelpText("after", programHelp);
-  addFilter(program, deliver);
+  addFilter(program, streams, deliver);
   addExplain(program, deliver);
   return program;
 }
 
-function addFilter(program: Command, deliver: (report: Report) => void): void {
+function addFilter(program: Command, streams: Streams, deliver: (report: Report) => void): void {
   const command = program
     .command("filter")
     .summary("filter a PNG into another")
@@ -46,7 +47,7 @@ function addFilter(program: Command, deliver: (report: Report) => void): void {
     .option("--force", "replace the output where it exists");
   addPlanOptions(command, ["u8", "u16"])
     .addHelpText("after", filterHelp)
-    .action(async (input: string, output: string, options) => deliver(await filterFile(input, output, options)));
+    .action(async (input: string, output: string, options) => deliver(await filterPath(input, output, options, streams)));
 }
 
 function addExplain(program: Command, deliver: (report: Report) => void): void {

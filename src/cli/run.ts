@@ -7,11 +7,14 @@ import { type Report, asJson } from "./report.js";
  * Runs one command line.
  *
  * @param argv the words after the program's name
- * @returns 0 done, 1 failed, 2 wrong usage; never rejects
+ * @returns 0 done, 1 failed, 2 wrong usage, 128 + the signal's number when interrupted; never rejects
  */
 export async function run(argv: readonly string[], { stdout, stderr }: Streams): Promise<number> {
   const json = argv.includes("--json");
-  const deliver = ({ text, notes, data }: Report): void => {
+  let exitCode: number = exitCodes.done;
+  const deliver = (report: Report): void => {
+    const { text, notes, data } = report;
+    exitCode = report.exitCode ?? exitCodes.done;
     if (json) {
       stdout.write(asJson(data));
       return;
@@ -21,7 +24,7 @@ export async function run(argv: readonly string[], { stdout, stderr }: Streams):
   };
   try {
     await makeProgram({ stdout, stderr }, deliver).parseAsync(argv, { from: "user" });
-    return exitCodes.done;
+    return exitCode;
   } catch (error) {
     if (error instanceof CommanderError && error.exitCode === 0) return exitCodes.done;
     // Without a command, the parser has printed the help on standard error.

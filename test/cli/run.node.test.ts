@@ -78,7 +78,8 @@ describe("a wrong command exits with 2 and writes nothing", () => {
 describe("what fails although the command is right exits with 1 and writes nothing", () => {
   it.each([
     ["filter | @absent.png | OUT | --kernel | delta", "file-unreadable", "caller"],
-    ["filter | @folder | OUT | --kernel | delta", "file-unreadable", "caller"],
+    ["filter | @folder | @notes.png | --kernel | delta", "file-unwritable", "host"],
+    ["filter | @folder | @absent/out | --kernel | delta", "file-unwritable", "host"],
     ["filter | @notes.png | OUT | --kernel | delta", "invalid-png", "caller"],
     ["filter | @vast.png | OUT | --kernel | delta", "invalid-png", "caller"],
     ["filter | IN | @notes.png | --kernel | delta", "file-exists", "caller"],
