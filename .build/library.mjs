@@ -11,7 +11,7 @@ const root = join(dirname(fileURLToPath(import.meta.url)), "..");
 const accountFile = join(root, "node_modules", ".cache", "tapwise", "dist.json");
 
 /** Modules that are files of their own in dist/ because somebody loads them by name: the public faces and the worker. */
-const named = { index: "src/index.ts", worker: "src/runtime/workers/worker.ts" };
+const named = { index: "src/index.ts", measure: "src/measure/index.ts", worker: "src/runtime/workers/worker.ts" };
 
 /** Cores that a default page does not load: all but the SIMD one, which is part of the library. */
 function otherCores() {

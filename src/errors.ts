@@ -39,6 +39,7 @@ export const faultOfCode = {
   "webassembly-missing": "host",
   "webassembly-blocked": "host",
   "self-test-failed": "host",
+  "clock-unusable": "host",
   "internal": "internal",
 } as const satisfies Record<string, Fault>;
 

@@ -34,17 +34,47 @@ import { checkedRaster } from "./validate/raster.js";
 import { checkedLayout, checkedRequest } from "./validate/request.js";
 import { warmUp } from "./warming.js";
 
+/** What measuring may do with an engine beyond its public face. */
+export interface Insides {
+  /** The threads share the engine's memory. */
+  readonly shared: boolean;
+  /** An engine with other prices on the same core and memory, alone or with all threads. It ends with the engine that lent them. */
+  alike(profile: HardwareProfile, threads: "one" | "all"): Engine;
+}
+
+const insides = /* @__PURE__ */ new WeakMap<object, Insides>();
+
+/** @throws ConvolutionError `unknown-value` for what is no engine */
+export function insidesOf(call: string, engine: unknown): Insides {
+  const found = typeof engine === "object" && engine !== null ? insides.get(engine) : undefined;
+  if (found) return found;
+  const message = `${call}: engine is ${engine === null ? "null" : typeof engine}. Needed: what createEngine of this package gave.`;
+  throw new ConvolutionError("unknown-value", message, { expected: "an engine", received: typeof engine });
+}
+
 class ConvolutionEngine implements Engine {
   readonly #core: Core;
   readonly #parts: EngineParts;
   readonly #profile: HardwareProfile;
   readonly #filters = new Set<{ dispose(): void }>();
+  readonly #lent: boolean;
   #disposed = false;
 
-  constructor(core: Core, profile: HardwareProfile, pacing: Pacing, crew: Crew | undefined) {
+  /** `lent`: core and crew are another engine's, which ends them. */
+  constructor(core: Core, profile: HardwareProfile, pacing: Pacing, crew: Crew | undefined, lent = false) {
     this.#core = core;
     this.#parts = { core, turns: new Turns(pacing), views: new ViewMemory(core.memory), crew };
     this.#profile = profile;
+    this.#lent = lent;
+    insides.set(this, {
+      shared: core.shared,
+      alike: (prices, threads) => {
+        this.#usable("measuring");
+        const other = new ConvolutionEngine(core, prices, pacing, threads === "one" ? undefined : crew, true);
+        this.#filters.add(other);
+        return other;
+      },
+    });
   }
 
   get build(): Build {
@@ -82,7 +112,7 @@ class ConvolutionEngine implements Engine {
   dispose(): void {
     this.#disposed = true;
     for (const filter of this.#filters) filter.dispose();
-    this.#parts.crew?.dispose();
+    if (!this.#lent) this.#parts.crew?.dispose();
   }
 
   #usable(call: string): void {

@@ -23,7 +23,7 @@ const mayImport: Record<string, readonly string[]> = {
   generated: [],
   errors: [],
   types: [],
-  measure: ["index", "api", "planning", "kernels", "types", "errors"],
+  measure: ["index", "api", "planning", "runtime", "kernels", "types", "errors"],
   report: ["index", "measure"],
   probe: ["index"],
   cli: ["index", "measure", "report"],
