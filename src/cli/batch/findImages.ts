@@ -41,6 +41,7 @@ export async function findImages(folder: string, signal: AbortSignal): Promise<F
     }
   }
   for (const list of [found.images, found.failures]) list.sort((a, b) => (a.name < b.name ? -1 : 1));
+  found.linkedFolders.sort();
   return found;
 }
 
