@@ -31,15 +31,27 @@ const runtimeOf = ({ versions }: Host): string => `node-${versions["node"] ?? ""
 const nameOf = (what: string, host: Host, runtime: string): string => `${what}-${plain(host.processor)}-${plain(runtime)}.json`;
 
 /**
- * Writes bench/results/<what>-<processor>-<runtime>.json and says where.
+ * Writes bench/results/<what>-<processor>-<runtime>.json.
  *
  * @param runtime where the measured code ran, with its version
+ * @returns the file's path in the repository
  */
-export function writeResult(what: string, host: Host, content: Record<string, unknown>, runtime = runtimeOf(host)): void {
+export function saveResult(what: string, host: Host, content: Record<string, unknown>, runtime = runtimeOf(host)): string {
   mkdirSync(folder, { recursive: true });
   const name = nameOf(what, host, runtime);
   writeFileSync(join(folder, name), `${laidOut({ what, host, ...content })}\n`);
-  console.log(`\nwritten: bench/results/${name}`);
+  return `bench/results/${name}`;
+}
+
+/** The same, and says where. */
+export function writeResult(what: string, host: Host, content: Record<string, unknown>, runtime = runtimeOf(host)): void {
+  console.log(`\nwritten: ${saveResult(what, host, content, runtime)}`);
+}
+
+/** What the file holds, where there is one. */
+export function readResult(what: string, host: Host, runtime = runtimeOf(host)): Record<string, unknown> | undefined {
+  const path = join(folder, nameOf(what, host, runtime));
+  return existsSync(path) ? (JSON.parse(readFileSync(path, "utf8")) as Record<string, unknown>) : undefined;
 }
 
 /**
@@ -48,7 +60,6 @@ export function writeResult(what: string, host: Host, content: Record<string, un
  * @param under the property that holds the parts by name; each says itself when and with what it was measured
  */
 export function mergeResult(what: string, host: Host, under: string, parts: Record<string, unknown>): void {
-  const path = join(folder, nameOf(what, host, runtimeOf(host)));
-  const known = existsSync(path) ? (JSON.parse(readFileSync(path, "utf8")) as Record<string, unknown>)[under] : {};
+  const known = readResult(what, host)?.[under] ?? {};
   writeResult(what, host, { [under]: { ...(known as Record<string, unknown>), ...parts } });
 }

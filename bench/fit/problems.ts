@@ -1,6 +1,7 @@
 import { box, gaussian, kernel, outer, type Channels, type Kernel, type Layout, type PrepareOptions, type SampleType } from "../../src/index.js";
 import { noise } from "../../test/support/noise.js";
 import { structureless } from "../cases.js";
+import { fittedWidth } from "../heldOut.js";
 
 /** One question whose methods are timed. Kernels are made anew for each preparation: what is known of a kernel is kept with it. */
 export interface Question {
@@ -53,7 +54,7 @@ function drawLayout(draw: Draw): Required<Layout> {
   const side = Math.sqrt(spreadEvenly(draw, 24 * 24, 1_600_000) / (across * down));
   const sample = oneOf<SampleType>(draw, ["u8", "u8", "u16", "f32", "f32"]);
   const channels = oneOf<Channels>(draw, [1, 1, 3, 4, 4]);
-  return { width: Math.max(1, Math.round(side * across)), height: Math.max(1, Math.round(side * down)), channels, sample };
+  return { width: fittedWidth(side * across), height: Math.max(1, Math.round(side * down)), channels, sample };
 }
 
 function drawOptions(draw: Draw, { channels, sample }: Required<Layout>): PrepareOptions {

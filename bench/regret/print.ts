@@ -1,0 +1,104 @@
+import { median } from "simple-statistics";
+import type { HardwareProfile } from "../../src/index.js";
+import { digits, printTable } from "../table.js";
+import type { FirstSight } from "./firstSight.js";
+import type { Bars, Judged } from "./judge.js";
+import { missed } from "./judge.js";
+import { biases, reasonOf, type Prediction, type Reason } from "./reasons.js";
+import type { RegretSummary } from "./statistics.js";
+
+export const percent = (part: number): string => `${(100 * part).toFixed(1)} %`;
+
+/** A line of the table of regrets. */
+export interface RegretLine {
+  name: string;
+  summary: RegretSummary;
+  bars: Bars;
+}
+
+export function printRegrets(lines: readonly RegretLine[]): void {
+  const verdict = ({ summary, bars }: RegretLine): string => {
+    if (Object.keys(bars).length === 0) return "";
+    const misses = missed(summary, bars);
+    return misses.length === 0 ? "pass" : `MISS ${misses.map((name) => `${name} > ${percent(bars[name as keyof Bars]!)}`).join(", ")}`;
+  };
+  printTable(
+    ["regret of the choice", "problems", "median", "mean", "p90", "p95", "p99", "worst", ""],
+    lines.map((line) => {
+      const { problems, ...parts } = line.summary;
+      return [line.name, String(problems), ...(["median", "mean", "p90", "p95", "p99", "worst"] as const).map((name) => percent(parts[name])), verdict(line)];
+    }),
+  );
+}
+
+const times = ({ method, measured, stopped, predicted }: Prediction): string[] => [method, `${stopped ? "> " : ""}${digits(measured)}`, digits(predicted)];
+
+function because({ culprit: { method, variant, factor, leading }, price }: Reason): string {
+  const off = factor > 1 ? `${factor.toFixed(2)} × as long as predicted` : `predicted ${(1 / factor).toFixed(2)} × too long`;
+  const charged = price ? `: ${price.needed.toPrecision(3)} ns would fit, ${price.charged.toPrecision(3)} charged` : ", which alone cannot explain it";
+  return `${method} (${variant}) ${off}; ${leading.operation} is ${(100 * leading.share).toFixed(0)} % of it${charged}`;
+}
+
+/** The worst choices, each with what was mispredicted. */
+export function printWorst(judged: readonly Judged[], profile: HardwareProfile, count = 20): void {
+  const worst = judged.filter(({ regret }) => regret > 0).toSorted((a, b) => b.regret - a.regret);
+  printTable(
+    ["", "regret", "chosen", "ms", "predicted", "best", "ms", "predicted", "problem, and the reason"],
+    worst.slice(0, count).flatMap((one, rank) => {
+      const reason = reasonOf(one, profile);
+      return [
+        [String(rank + 1), percent(one.regret), ...times(reason.chosen), ...times(reason.best), ""],
+        ["", "", "", "", "", "", "", "", `#${one.record.index} ${one.record.name}`],
+        ["", "", "", "", "", "", "", "", because(reason)],
+      ];
+    }),
+  );
+}
+
+/** Where predictions lean, whether or not a choice was wrong for it. */
+export function printBiases(judged: readonly Judged[], profile: HardwareProfile): void {
+  printTable(
+    ["measured ÷ predicted of", "mostly", "runs", "p10", "median", "p90"],
+    biases(judged, profile)
+      .filter(({ problems }) => problems >= 5)
+      .map(({ variant, operation, problems, p10, median: middle, p90 }) => [
+        variant,
+        operation,
+        String(problems),
+        ...[p10, middle, p90].map((one) => one.toFixed(2)),
+      ]),
+  );
+}
+
+/** Largest planning times that are good enough. Milliseconds. */
+export const planningBars = { known: 1, firstSight: 10 };
+
+export function printPlanning(known: readonly number[], sights: readonly FirstSight[]): boolean {
+  const told = (value: number, bar: number): string => (value <= bar ? "pass" : "MISS");
+  const middle = median([...known]);
+  console.log(
+    `explain, known kernel: median ${digits(middle)} ms over ${known.length} problems, worst ${digits(Math.max(...known))}; at most ${planningBars.known}: ${told(middle, planningBars.known)}`,
+  );
+  if (sights.length === 0) return middle <= planningBars.known;
+  const kinds = [...new Set(sights.map(({ kernel }) => kernel))];
+  console.log("\nexplain, 255×255 taps seen for the first time");
+  printTable(
+    ["kernel", "median ms", "slowest setting's", "single worst", "slowest setting"],
+    kinds.map((kind) => {
+      const all = sights.filter(({ kernel }) => kernel === kind);
+      const slowest = all.reduce((most, one) => (one.medianMilliseconds > most.medianMilliseconds ? one : most));
+      return [
+        kind,
+        digits(median(all.map(({ medianMilliseconds }) => medianMilliseconds))),
+        digits(slowest.medianMilliseconds),
+        digits(Math.max(...all.map(({ worstMilliseconds }) => worstMilliseconds))),
+        slowest.setting,
+      ];
+    }),
+  );
+  const worst = sights.reduce((most, one) => (one.medianMilliseconds > most.medianMilliseconds ? one : most));
+  console.log(
+    `worst: ${worst.kernel}, ${worst.setting}: ${digits(worst.medianMilliseconds)} ms; at most ${planningBars.firstSight}: ${told(worst.medianMilliseconds, planningBars.firstSight)}`,
+  );
+  return middle <= planningBars.known && worst.medianMilliseconds <= planningBars.firstSight;
+}

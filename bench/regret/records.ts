@@ -1,0 +1,71 @@
+import type { Method } from "../../src/index.js";
+import { operationNames, type Counts } from "../../src/planning/cost.js";
+import { describeHost } from "../host.js";
+import { readResult, saveResult } from "../resultFile.js";
+import type { FirstSight } from "./firstSight.js";
+import type { OnceTook } from "./once.js";
+import type { Planned } from "./planned.js";
+import { seed } from "./problems.js";
+import { typical, type MethodTook } from "./statistics.js";
+
+/** A method's time with what it counted, for those who fit prices: operations in the order of the file's list, as pairs [operation, count]. */
+export type TimedMethod = MethodTook & { variant: string; run: number[]; setup: number[] };
+
+/** What was measured on a problem. The problem itself is rebuilt from seed and index. */
+export interface ProblemRecord {
+  index: number;
+  name: string;
+  methods: TimedMethod[];
+  /** Timed again, with more turns, because a choice had seemed to be wrong: counts in place of the first. */
+  again?: MethodTook[];
+  /** Single calls with a kernel that is new. */
+  once?: OnceTook[];
+  /** Milliseconds of `explain` with a known kernel. */
+  explain: number;
+  /** True where even the best method took more than a second: not judged. */
+  dropped?: true;
+}
+
+/** What a campaign has found so far: a file that is valid after every step. */
+export interface Campaign {
+  clock: string;
+  build: string;
+  seed: number;
+  /** Names of the counted operations, by the numbers that stand for them. */
+  operations: string[];
+  problems: ProblemRecord[];
+  firstSights: FirstSight[];
+}
+
+const what = "regret";
+
+const pairs = (counts: Counts): number[] => operationNames.flatMap((name, operation) => (counts[name] ? [operation, Number(counts[name].toPrecision(4))] : []));
+
+export function recordOf(took: MethodTook, planned: readonly Planned[]): TimedMethod {
+  const { variant, work } = planned.find(({ method }) => method === took.method)!;
+  return { ...took, variant, run: pairs(work.run), setup: pairs(work.setup) };
+}
+
+/** What counts: the second timing where there is one. */
+export const settled = ({ methods, again }: ProblemRecord): readonly MethodTook[] => again ?? methods;
+
+export const tookOf = (record: ProblemRecord, method: Method): MethodTook => {
+  const took = settled(record).find((one) => one.method === method);
+  if (!took) throw new Error(`${record.name}: ${method} was not timed. Methods have changed since: begin anew with --fresh.`);
+  return took;
+};
+
+export const bestMilliseconds = (record: ProblemRecord): number => Math.min(...settled(record).map(typical));
+
+/** The campaign that is on file for this host, or a new one. Records of other problems than today's are left out. */
+export function openCampaign(place: { name: string; clock: string }, build: string, nameOf: (index: number) => string | undefined, fresh: boolean): Campaign {
+  const empty: Campaign = { clock: place.clock, build, seed, operations: operationNames, problems: [], firstSights: [] };
+  const known = fresh ? undefined : (readResult(what, describeHost(""), place.name) as Campaign | undefined);
+  if (known === undefined || known.seed !== seed || known.build !== build) return empty;
+  return { ...empty, problems: known.problems.filter(({ index, name }) => nameOf(index) === name), firstSights: known.firstSights };
+}
+
+export function saveCampaign(place: { name: string }, core: string, campaign: Campaign, judgement: Record<string, unknown>): string {
+  const versions = place.name.startsWith("Chromium") ? { chromium: place.name.split(" ")[1] } : {};
+  return saveResult(what, describeHost(core, versions), { ...judgement, ...campaign }, place.name);
+}
