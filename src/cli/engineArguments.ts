@@ -30,13 +30,18 @@ export interface MadeEngine {
   notes: string[];
 }
 
-/** Makes the engine that is meant; with a profile from a file where one is named. */
-export async function makeEngine({ build, memoryLimit, threads, profile: path }: EngineArguments & { profile?: string }): Promise<MadeEngine> {
-  const options = given({ build, memoryLimit, threads });
-  if (path === undefined) return { engine: await createEngine(options), notes: [] };
-  const profile = await readProfile(path);
-  const engine = await createEngineWith(profile, options, path);
-  return { engine, notes: adaptationsOf(profile, engine.profile).map((note) => `${path}: ${note}`) };
+export function engineOptionsOf({ build, memoryLimit, threads }: EngineArguments): EngineOptions {
+  return given({ build, memoryLimit, threads });
+}
+
+/** Makes the engine that is meant; with the profile of a file where one is named. */
+export async function makeEngine(options: EngineArguments, path?: string): Promise<MadeEngine> {
+  const profile = path === undefined ? undefined : await readProfile(path);
+  const engine = profile === undefined ? await createEngine(engineOptionsOf(options)) : await createEngineWith(profile, engineOptionsOf(options), path!);
+  const notes = profile === undefined ? [] : adaptationsOf(profile, engine.profile).map((note) => `${path}: ${note}`);
+  const { threads = 1 } = options;
+  if (engine.threads < threads) notes.push(`Of ${threads} threads, ${engine.threads} could be had here.`);
+  return { engine, notes };
 }
 
 async function createEngineWith(profile: HardwareProfile, options: EngineOptions, path: string): Promise<Engine> {

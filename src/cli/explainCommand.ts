@@ -16,7 +16,7 @@ export interface ExplainArguments extends PlanArguments {
 export async function explainPlan(input: string | undefined, options: ExplainArguments): Promise<Report> {
   const { kernel, notes } = await kernelOf(options);
   const layout = await layoutOf(input, options);
-  const { engine, notes: engineNotes } = await makeEngine(options);
+  const { engine, notes: engineNotes } = await makeEngine(options, options.profile);
   try {
     const explanation = engine.explain(kernel, layout, prepareOptionsOf(options));
     const { width, height, origin, sum } = kernel;

@@ -17,7 +17,8 @@ export function exitCodeOf(error: ConvolutionError): number {
 /** Any thrown thing as the one class of errors. */
 export function asConvolutionError(error: unknown): ConvolutionError {
   if (error instanceof ConvolutionError) return error;
-  if (error instanceof CommanderError) return usageError(error.code === "commander.help" ? "the command is missing: filter or explain" : error.message);
+  if (error instanceof CommanderError)
+    return usageError(error.code === "commander.help" ? "the command is missing: filter, explain or measure" : error.message);
   if (error instanceof RangeError && /alloc|length/i.test(error.message))
     return new ConvolutionError(
       "memory-exhausted",

@@ -52,7 +52,7 @@ interface Filtered {
 }
 
 async function filterImage(source: SourceImage, kernel: Kernel, options: PlanArguments): Promise<Filtered> {
-  const { engine, notes: engineNotes } = await makeEngine(options);
+  const { engine, notes: engineNotes } = await makeEngine(options, options.profile);
   try {
     const start = performance.now();
     const filter = engine.prepare(kernel, source.layout, prepareOptionsOf(options));

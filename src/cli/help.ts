@@ -11,13 +11,15 @@ function builderLines(): string {
   return forms.map(({ form, summary }) => `    ${form.padEnd(width)}  ${summary}`).join("\n");
 }
 
-const exitCodeLine = "Exit codes: 0 done, 1 failed (files, memory, host), 2 the command has to be written differently.";
+const exitCodeLine = "Exit codes: 0 done, 1 failed (files, memory, host), 2 the command has to be written differently, 130 interrupted.";
 
 /** After the list of commands. */
 export const programHelp = `
 Examples:
   $ tapwise filter leaf.png soft.png --kernel "gaussian 3"
+  $ tapwise filter sheets soft --kernel "gaussian 3"
   $ tapwise explain leaf.png --kernel "gaussian 3"
+  $ tapwise measure
 
 "tapwise filter --help" lists the kernels and more examples.
 
@@ -34,6 +36,9 @@ ${builderLines()}
            "1 2 1; 2 4 2; 1 2 1 /16"
   file     a name that ends in .json: [[1, 2, 1], [2, 4, 2], [1, 2, 1]]
            or { "taps": [[1, 2, 1]], "origin": { "x": 0, "y": 0 } }
+  picture  a name that ends in .png: a measured point spread function, 8 or 16 bits, such as a photographed point of
+           light. taps = (level - background) / their sum; the level is the mean of the colours, as stored (with the
+           sRGB curve it would have to be linear first); alpha does not count.
 
 Borders:
   replicate              a a a | a b c d | d d d      periodic                b c d | a b c d | a b c
@@ -52,6 +57,14 @@ Files:
   renamed, so that an error or an interruption leaves no partial file.
   Up to ${pixelLimit} pixels are read.
 
+Folders:
+  All files of the folder and of those below it whose names end in .png, each into the same place below the output,
+  which is made where it is missing. Hidden names (those that begin with a dot) and links to folders are left out.
+  Neither folder may lie in the other. An image that cannot be done is told at the end and stops no other; a full disk
+  stops all. After an interruption the same command goes on: results that are newer than their images are not made
+  again. What they were made with is kept beside them in .tapwise-batch.json; with other settings the output has to be
+  another folder, or --force makes all of them anew.
+
 Examples:
   $ tapwise filter leaf.png soft.png --kernel "gaussian 3"
   $ tapwise filter leaf.png crisp.png --kernel "sharpen 0.8" --force
@@ -60,6 +73,8 @@ Examples:
   $ tapwise filter leaf.png soft.png --kernel "1 2 1; 2 4 2; 1 2 1 /16" --border-rows zero --border-columns periodic
   $ tapwise filter sheet16.png sheet8.png --kernel "delta" --output-sample u8 --gain 1/257
   $ tapwise filter leaf.png corner.png --kernel psf.json --region 0,0,640,480 --json
+  $ tapwise filter leaf.png soft.png --kernel pinhole.png --kernel-background 12 --light linear
+  $ tapwise filter sheets soft --kernel "gaussian 3" --profile kiosk.json --threads 4
 
 ${exitCodeLine}
 `;
@@ -69,6 +84,32 @@ Examples:
   $ tapwise explain leaf.png --kernel "disk 12"
   $ tapwise explain --size 1920x1080 --channels 4 --sample u8 --kernel "gaussian 3"
   $ tapwise explain --size 4000x3000 --channels 3 --kernel psf.json --method fft --json
+  $ tapwise explain leaf.png --kernel "disk 12" --profile kiosk.json
+
+${exitCodeLine}
+`;
+
+export const measureHelp = `
+What it prints:
+  A line for each kernel size: milliseconds of one run of each method, measured and predicted; which was fastest, which
+  one would be chosen, and how much longer the chosen one takes (regret; 0 % where the two are nearer than the noise).
+  Then where one method overtakes another, with an interval that covers the noise, and how good the profile is.
+  Sizes near a crossing are measured more often than others. Results hold for this machine, this runtime and images like
+  these: leave the machine alone meanwhile, and measure on the hardware that you ship to.
+
+The profile:
+  What each operation costs here. It does not depend on --size and the options after it, and takes two seconds. With it
+  choices fit this machine: --profile of filter and explain, createEngine({ profile }) in a program. It is for the build
+  and the threads that it was measured with.
+
+Examples:
+  $ tapwise measure
+  $ tapwise measure --profile kiosk.json --report kiosk.html
+  $ tapwise measure --profile kiosk.json --no-crossover
+  $ tapwise measure --size 640x480 --channels 4 --kernels unstructured --seconds 5
+  $ tapwise measure --size 4000x3000 --sample f32 --sizes 5,9,17,33,65 --seconds 60 --json
+
+While it measures, a bar on standard error shows the time left. Ctrl-C ends it; nothing is written then.
 
 ${exitCodeLine}
 `;

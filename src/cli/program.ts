@@ -3,9 +3,10 @@ import { Argument, Command, Option } from "commander";
 import { addPlanOptions } from "./arguments.js";
 import { explainPlan } from "./explainCommand.js";
 import { filterPath } from "./filterCommand.js";
-import { explainHelp, filterHelp, programHelp } from "./help.js";
-import { wholeNumbers } from "./numbers.js";
+import { explainHelp, filterHelp, measureHelp, programHelp } from "./help.js";
+import { addMeasureOptions } from "./measure/measureArguments.js";
 import type { Report } from "./report.js";
+import { readSize } from "./size.js";
 
 /** Where a command line prints: `process` fits. */
 export interface Streams {
@@ -20,7 +21,7 @@ const helpColumns = 110;
 export function makeProgram(streams: Streams, deliver: (report: Report) => void): Command {
   const { stdout, stderr } = streams;
   const program = new Command("tapwise")
-    .description("Convolves PNG images. The fastest way for the kernel and the image is chosen and told.")
+    .description("Convolves PNG images. The fastest way for the kernel and the image is chosen and told; what is fastest here can be measured.")
     .version(packageVersion(), "-V, --version", "print the version")
     .helpOption("-h, --help", "print this help; after a command, the help of that command")
     .exitOverride()
@@ -34,17 +35,18 @@ export function makeProgram(streams: Streams, deliver: (report: Report) => void)
     .addHelpText("after", programHelp);
   addFilter(program, streams, deliver);
   addExplain(program, deliver);
+  addMeasure(program, streams, deliver);
   return program;
 }
 
 function addFilter(program: Command, streams: Streams, deliver: (report: Report) => void): void {
   const command = program
     .command("filter")
-    .summary("filter a PNG into another")
-    .description("Filters a PNG into another of the same kind: grey, grey with alpha, RGB or RGBA, 8 or 16 bits.")
-    .argument("<input>", "PNG to read")
-    .argument("<output>", "PNG to write")
-    .option("--force", "replace the output where it exists");
+    .summary("filter a PNG into another, or a folder of them")
+    .description("Filters a PNG into another of the same kind: grey, grey with alpha, RGB or RGBA, 8 or 16 bits. Or those of a folder into another folder.")
+    .argument("<input>", "PNG to read, or folder")
+    .argument("<output>", "PNG to write, or folder")
+    .option("--force", "replace outputs that exist");
   addPlanOptions(command, ["u8", "u16"])
     .addHelpText("after", filterHelp)
     .action(async (input: string, output: string, options) => deliver(await filterPath(input, output, options, streams)));
@@ -64,9 +66,20 @@ function addExplain(program: Command, deliver: (report: Report) => void): void {
     .action(async (image: string | undefined, options) => deliver(await explainPlan(image, options)));
 }
 
-function readSize(text: string): { width: number; height: number } {
-  const [width, height] = wholeNumbers(text, 2, "--size", "width and height, such as 1920x1080");
-  return { width: width!, height: height! };
+function addMeasure(program: Command, streams: Streams, deliver: (report: Report) => void): void {
+  const command = program
+    .command("measure")
+    .summary("measure which method is fastest on this machine, and from which kernel size on")
+    .description(
+      "Measures on this machine what each operation costs (the profile), and then how long each method takes for small to large kernels: where one overtakes another, and how good the choice by the profile is.",
+    );
+  addMeasureOptions(command)
+    .addHelpText("after", measureHelp)
+    .action(async (options) => {
+      // What draws the report takes longer to load than filtering a small image takes.
+      const { measure } = await import("./measure/measureCommand.js");
+      deliver(await measure(options, streams));
+    });
 }
 
 /** package.json lies two folders above this code, in the repository and in the package alike. */

@@ -45,7 +45,7 @@ async function filterFound(batch: Batch, { kernel, notes }: ReadKernel, options:
   if (before.otherKernel !== undefined && hasResults && !force) throw otherSettings(output, settings, before.otherKernel);
   account.begin(found, surveyed);
   if (surveyed.due.length === 0) return account.report();
-  const { engine, notes: engineNotes } = await makeEngine(options);
+  const { engine, notes: engineNotes } = await makeEngine(options, options.profile);
   engineNotes.forEach((note) => account.note(note));
   const progress = showProgress(streams, wordsOf(0, surveyed));
   try {
