@@ -145,6 +145,13 @@ export interface ConvolveOptions<T extends SampleType = SampleType> {
 export interface PrepareOptions<T extends SampleType = SampleType> extends ConvolveOptions<T> {
   /** Lay the taps on the image as written instead of reversed. @defaultValue `false` */
   correlate?: boolean;
+  /**
+   * `prepare` times the two or three best candidates on this layout before it decides: for at most about 0.2 seconds, or one run of each where that takes
+   * longer, never more than a second. The verdict is kept for all problems of the shape, in `engine.profile` too. `explain` tells what is known already.
+   *
+   * @defaultValue `false`: predictions, and verdicts that are known
+   */
+  measure?: boolean;
 }
 
 /** One method as `explain` sees it. */

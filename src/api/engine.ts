@@ -1,10 +1,11 @@
 import { ConvolutionError } from "../errors.js";
 import type { Kernel } from "../kernels/index.js";
-import { choose, type Choice } from "../planning/choose.js";
+import { choose, eligibleCandidates, type Choice } from "../planning/choose.js";
 import { explanationOf } from "../planning/explanation.js";
 import { choiceExplained, type KernelChange } from "../planning/kernelChange.js";
 import { problemOf, type Problem, type Request } from "../planning/problem.js";
 import { shippedProfiles } from "../planning/profile.js";
+import { shapeOf } from "../planning/shape.js";
 import type {
   Build,
   ConvolveOptions,
@@ -14,12 +15,14 @@ import type {
   Filter,
   HardwareProfile,
   Layout,
+  Method,
   PrepareOptions,
   Raster,
   ResultArray,
   ResultRaster,
   Samples,
   SampleType,
+  Verdict,
 } from "../types.js";
 import { hostPacing, type Pacing } from "../runtime/pacing.js";
 import { Turns } from "../runtime/turns.js";
@@ -32,6 +35,7 @@ import { checkedEngineOptions } from "./validate/engineOptions.js";
 import { profileFor } from "./validate/profile.js";
 import { checkedRaster } from "./validate/raster.js";
 import { checkedLayout, checkedRequest } from "./validate/request.js";
+import { tryOut } from "./trial.js";
 import { warmUp } from "./warming.js";
 
 /** What measuring may do with an engine beyond its public face. */
@@ -58,6 +62,9 @@ class ConvolutionEngine implements Engine {
   readonly #profile: HardwareProfile;
   readonly #filters = new Set<{ dispose(): void }>();
   readonly #lent: boolean;
+  readonly #now: () => number;
+  /** What trials found, by the shape of problems; from the profile, and since. */
+  readonly #verdicts: Map<string, Verdict>;
   #disposed = false;
 
   /** `lent`: core and crew are another engine's, which ends them. */
@@ -66,6 +73,8 @@ class ConvolutionEngine implements Engine {
     this.#parts = { core, turns: new Turns(pacing), views: new ViewMemory(core.memory), crew };
     this.#profile = profile;
     this.#lent = lent;
+    this.#now = () => pacing.now();
+    this.#verdicts = new Map((profile.verdicts ?? []).map((verdict) => [verdict.shape, verdict]));
     insides.set(this, {
       shared: core.shared,
       alike: (prices, threads) => {
@@ -86,7 +95,7 @@ class ConvolutionEngine implements Engine {
   }
 
   get profile(): HardwareProfile {
-    return structuredClone(this.#profile);
+    return structuredClone(this.#verdicts.size > 0 ? { ...this.#profile, verdicts: [...this.#verdicts.values()] } : this.#profile);
   }
 
   convolve<S extends Samples, T extends SampleType = never>(image: Raster<S>, kernel: Kernel, options?: ConvolveOptions<T>): ResultRaster<ResultArray<S, T>> {
@@ -141,17 +150,44 @@ class ConvolutionEngine implements Engine {
   #chosen(request: Request, once: boolean): { problem: Problem; choice: Choice } {
     const crew = { threads: this.threads, shared: this.#core.shared };
     const problem = problemOf(request, this.#core.build, this.#core.memory.largestBlock, crew);
-    return { problem, choice: choose(problem, this.#profile, once) };
+    const verdict = once || this.#verdicts.size === 0 ? undefined : this.#verdicts.get(shapeOf(problem));
+    return { problem, choice: choose(problem, this.#profile, once, verdict) };
   }
 
   #prepared<T extends SampleType, S extends SampleType>(request: Request, once: boolean): PreparedFilter<T, S> {
-    const { problem, choice } = this.#chosen(request, once);
+    const { problem, choice: expected } = this.#chosen(request, once);
+    const untried = request.measure === true && request.method === "auto" && expected.verdict === undefined;
+    const choice = untried ? this.#tried(problem, expected) : expected;
     if (!once) warmUp(this.#core, choice.plan, problem);
+    return this.#installed(problem, choice, once);
+  }
+
+  #installed<T extends SampleType, S extends SampleType>(problem: Problem, choice: Choice, once: boolean): PreparedFilter<T, S> {
     const explain = (of: Problem, made: Choice, change?: KernelChange): Explanation =>
       explanationOf(change ? choiceExplained(change, this.#profile) : made, of, this.#profile, once);
     const filter: PreparedFilter<T, S> = new PreparedFilter<T, S>(problem, choice, explain, this.#parts, () => this.#filters.delete(filter));
     this.#filters.add(filter);
     return filter;
+  }
+
+  /** The choice after the best candidates were timed; the same where they could not be. */
+  #tried(problem: Problem, choice: Choice): Choice {
+    const { request } = problem;
+    const prepare = (method: Method): Filter | undefined => this.#preparedIfItFits({ ...request, method, measure: false });
+    const found = tryOut(eligibleCandidates(problem, choice), choice.plan.name, request, prepare, this.#now);
+    if (!found) return choice;
+    const verdict = { shape: shapeOf(problem), ...found, date: new Date().toISOString() };
+    this.#verdicts.set(verdict.shape, verdict);
+    return choose(problem, this.#profile, false, verdict);
+  }
+
+  #preparedIfItFits(request: Request): Filter | undefined {
+    try {
+      return this.#prepared(request, false);
+    } catch (error) {
+      if (error instanceof ConvolutionError && error.fault === "capacity") return undefined;
+      throw error;
+    }
   }
 }
 

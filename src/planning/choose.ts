@@ -1,5 +1,5 @@
 import { ConvolutionError } from "../errors.js";
-import type { Candidate, HardwareProfile, Method } from "../types.js";
+import type { Candidate, HardwareProfile, Method, Verdict } from "../types.js";
 import { divisionOf, type Division } from "./bands.js";
 import { priceOf, type Prices } from "./cost.js";
 import type { MethodPlan } from "./method.js";
@@ -18,6 +18,8 @@ export interface Choice {
   chosen: Candidate;
   candidates: Candidate[];
   division: Division;
+  /** What decided instead of predictions, where problems of the shape have been timed. */
+  verdict?: Verdict;
 }
 
 /** Two costs nearer than a hundredth, or than a microsecond, are a tie: no profile predicts better. */
@@ -54,13 +56,25 @@ function better(a: Priced, b: Priced, once: boolean): Priced {
   return a.candidate.bytes! <= b.candidate.bytes! ? a : b;
 }
 
+/** Those that may win: where results are integers, not the ones that may be off by more than a level, as long as another may not. */
+function eligible<T>(all: readonly T[], candidateOf: (one: T) => Candidate, integers: boolean): T[] {
+  const open = all.filter((one) => candidateOf(one).refused === undefined);
+  const close = open.filter((one) => candidateOf(one).errorBound! <= 1);
+  return integers && close.length > 0 ? close : open;
+}
+
+/** Candidates of a choice that may win. */
+export const eligibleCandidates = (problem: Problem, { candidates }: Choice): Candidate[] =>
+  eligible(candidates, (candidate) => candidate, problem.request.output.sample !== "f32");
+
 /**
- * Compares the methods. Where results are integers, those that may be off by more than a level do not win as long as another may not.
+ * Compares the methods that apply.
  *
  * @param once true where the filter will run a single time: setting up counts then
+ * @param verdict of problems of this shape that have been timed: it decides, where its method applies and fits
  * @throws ConvolutionError `method-not-applicable` for a forced method, `memory-limit` where none fits
  */
-export function choose(problem: Problem, profile: HardwareProfile, once: boolean): Choice {
+export function choose(problem: Problem, profile: HardwareProfile, once: boolean, verdict?: Verdict): Choice {
   const all: Priced[] = methodNames.map((name) => {
     const plan = variantFor(name, problem);
     return { plan, candidate: price(plan, problem, profile) };
@@ -74,12 +88,11 @@ export function choose(problem: Problem, profile: HardwareProfile, once: boolean
     division: divisionOf(plan, problem, profile.nanoseconds as Prices),
   });
   if (method !== "auto") return outcome(forced(all, method, problem));
-  const open = all.filter(({ candidate }) => candidate.refused === undefined);
+  const open = eligible(all, ({ candidate }) => candidate, problem.request.output.sample !== "f32");
   if (open.length === 0) throw outOfMemory(candidates, problem);
-  const close = open.filter(({ candidate }) => candidate.errorBound! <= 1);
-  const integers = problem.request.output.sample !== "f32" && close.length > 0;
-  const winner = (integers ? close : open).reduce((a, b) => better(a, b, once));
-  return outcome(winner);
+  const measured = open.find(({ plan }) => plan.name === verdict?.method);
+  if (measured && verdict) return { ...outcome(measured), verdict };
+  return outcome(open.reduce((a, b) => better(a, b, once)));
 }
 
 function forced(all: Priced[], method: Method, problem: Problem): Priced {

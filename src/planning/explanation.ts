@@ -1,4 +1,4 @@
-import type { Build, Candidate, Explanation, HardwareProfile } from "../types.js";
+import type { Build, Candidate, Explanation, HardwareProfile, Verdict } from "../types.js";
 import type { Choice } from "./choose.js";
 import type { Problem } from "./problem.js";
 
@@ -39,6 +39,12 @@ function printed(explanation: Explanation): string {
   return lines.join("\n");
 }
 
+const shownTimes = ({ milliseconds }: Verdict): string =>
+  Object.entries(milliseconds)
+    .toSorted(([, a], [, b]) => a - b)
+    .map(([method, time]) => `${method} ${threeDigits(time)} ms`)
+    .join(", ");
+
 /** Why the method was taken, in one sentence. */
 function reason(choice: Choice, problem: Problem, once: boolean): string {
   const { chosen, candidates } = choice;
@@ -46,6 +52,7 @@ function reason(choice: Choice, problem: Problem, once: boolean): string {
   const what = `${chosen.method}${threads} for ${problem.horizontal.taps}×${problem.vertical.taps} taps on ${problem.horizontal.count}×${problem.vertical.count}×${problem.channels} results`;
   if (problem.like) return `${what}: the method that the filter was prepared with.`;
   if (problem.request.method !== "auto") return `${what}: asked for by name.`;
+  if (choice.verdict) return `${what}: fastest when timed (${shownTimes(choice.verdict)}), ${choice.verdict.date.slice(0, 10)}.`;
   const time = (candidate: Candidate): number => candidate.milliseconds! + (once ? candidate.setupMilliseconds! : 0);
   const others = candidates.filter((candidate) => candidate.refused === undefined && candidate !== chosen);
   if (others.length === 0) return `${what}: the only method that applies.`;

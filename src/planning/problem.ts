@@ -19,6 +19,8 @@ export interface Request {
   /** The part of the output that is wanted, inside it. */
   region: Region;
   method: Method | "auto";
+  /** Time the candidates before deciding. */
+  measure?: boolean;
   /** A form of the method by its word, for tests and benchmarks; callers cannot ask for one. */
   variant?: string;
   tolerance: number;

@@ -23,7 +23,7 @@ const mayImport: Record<string, readonly string[]> = {
   generated: [],
   errors: [],
   types: [],
-  measure: ["index", "api", "planning", "runtime", "kernels", "types", "errors"],
+  measure: ["index", "api", "planning", "runtime", "kernels", "math", "types", "errors"],
   report: ["index", "measure"],
   probe: ["index"],
   cli: ["index", "measure", "report"],

@@ -133,6 +133,12 @@ function checkedOutput(where: string, given: unknown, sample: SampleType): Reque
 const wordOr = <W extends string>(where: string, name: string, value: unknown, words: readonly W[], otherwise: W): W =>
   value === undefined ? otherwise : chosenWord(where, name, value, words);
 
+function checkedFlag(where: string, name: string, flag: unknown): boolean {
+  if (flag === undefined || typeof flag === "boolean") return flag === true;
+  const message = `${where}: ${name} is ${String(flag)}. It must be true or false.`;
+  throw new ConvolutionError("unknown-value", message, { expected: [true, false], received: flag });
+}
+
 /**
  * Checks a kernel and options against an image's shape, and fills every default in.
  *
@@ -142,15 +148,10 @@ const wordOr = <W extends string>(where: string, name: string, value: unknown, w
  */
 export function checkedRequest(where: string, kernelGiven: unknown, shape: ImageShape, given: unknown, correlate?: boolean): Request {
   const kernel = asKernel(kernelGiven);
-  const names = correlate === undefined ? [...optionNames, "correlate"] : optionNames;
+  const names = correlate === undefined ? [...optionNames, "correlate", "measure"] : optionNames;
   if (given !== undefined) checkOptionNames(where, given, names);
   const options = (given ?? {}) as Record<string, unknown>;
-  const flag = options["correlate"];
-  if (flag !== undefined && typeof flag !== "boolean") {
-    const message = `${where}: correlate is ${String(flag)}. It must be true or false.`;
-    throw new ConvolutionError("unknown-value", message, { expected: [true, false], received: flag });
-  }
-  const reversedNot = correlate ?? flag === true;
+  const reversedNot = correlate ?? checkedFlag(where, "correlate", options["correlate"]);
   const extent = wordOr(where, "extent", options["extent"], extents, "same");
   if (extent === "valid" && options["border"] !== undefined) {
     const message = `${where}: extent "valid" never reads outside the image, so a border has no use. Leave border out, or use extent "same" or "full".`;
@@ -167,6 +168,7 @@ export function checkedRequest(where: string, kernelGiven: unknown, shape: Image
     ...border,
     extent,
     region: checkedRegion(where, options["region"], wholeOutput(where, extent, shape, kernel, reversedNot)),
+    measure: checkedFlag(where, "measure", options["measure"]),
     method: wordOr(where, "method", options["method"], methodChoices, "auto"),
     tolerance:
       tolerance === undefined
