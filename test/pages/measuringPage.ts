@@ -1,0 +1,93 @@
+import { readFile } from "node:fs/promises";
+import type { Browser, BrowserContextOptions, Page } from "playwright-core";
+
+/** How long a measurement of the shortest kind may take on a busy machine. */
+const patience = 120_000;
+
+/** The page that measures, as somebody uses it: everything by names that are read and seen. */
+export class MeasuringPage {
+  readonly requests: string[] = [];
+  readonly complaints: string[] = [];
+
+  private constructor(
+    readonly page: Page,
+    readonly address: string,
+  ) {
+    page.setDefaultTimeout(patience);
+    page.on("request", (request) => {
+      if (/^https?:/.test(request.url())) this.requests.push(request.url());
+    });
+    page.on("pageerror", (error) => this.complaints.push(error.message));
+    page.on("console", (message) => this.complaints.push(message.text()));
+  }
+
+  static async open(browser: Browser, address: string, options: BrowserContextOptions = {}): Promise<MeasuringPage> {
+    const context = await browser.newContext({ viewport: { width: 1100, height: 900 }, ...options });
+    const opened = new MeasuringPage(await context.newPage(), address);
+    await opened.page.goto(address);
+    return opened;
+  }
+
+  async close(): Promise<void> {
+    await this.page.context().close();
+  }
+
+  button(name: string | RegExp) {
+    return this.page.getByRole("button", { name, exact: typeof name === "string" });
+  }
+
+  /** Chooses the smallest picture and the shortest measurement. */
+  async chooseLittle(): Promise<void> {
+    const choices = this.page.locator("#choices");
+    if ((await choices.getAttribute("open")) === null) await choices.locator("summary").click();
+    await this.page.getByLabel("Picture").selectOption({ index: 0 });
+    await this.page.getByLabel("Take").selectOption({ index: 0 });
+  }
+
+  async start(): Promise<void> {
+    await this.button(/^Measure/).click();
+  }
+
+  async untilDone(): Promise<void> {
+    await this.page.getByRole("heading", { name: "What was found", exact: true }).waitFor();
+    await this.page.locator("#underway").waitFor({ state: "hidden" });
+  }
+
+  async measureLittle(): Promise<void> {
+    await this.chooseLittle();
+    await this.start();
+    await this.untilDone();
+  }
+
+  /** Waits until the chart shows a first size, while the measurement goes on. */
+  async untilGrowing(): Promise<void> {
+    await this.page.getByRole("heading", { name: "What is found so far" }).waitFor();
+    await this.page.locator("#table tbody tr").first().waitFor();
+  }
+
+  text(id: string): Promise<string> {
+    return this.page.locator(`#${id}`).innerText();
+  }
+
+  /** What a button saves: its name and what it holds. */
+  async saved(button: string): Promise<{ name: string; content: unknown }> {
+    const [download] = await Promise.all([this.page.waitForEvent("download"), this.button(button).click()]);
+    return { name: download.suggestedFilename(), content: JSON.parse(await readFile(await download.path(), "utf8")) };
+  }
+
+  async choose(name: string, content: string | Buffer): Promise<void> {
+    const [chooser] = await Promise.all([this.page.waitForEvent("filechooser"), this.button(/^Choose/).click()]);
+    await chooser.setFiles({ name, mimeType: "application/json", buffer: Buffer.from(content) });
+  }
+
+  /** Drops files on the heading, which is no place made for them: any place will do. */
+  async drop(...files: { name: string; content: string }[]): Promise<void> {
+    const carried = await this.page.evaluateHandle((given) => {
+      const transfer = new DataTransfer();
+      for (const { name, content } of given) transfer.items.add(new File([content], name, { type: "application/json" }));
+      return transfer;
+    }, files);
+    await this.page.dispatchEvent("h1", "dragover", { dataTransfer: carried });
+    await this.page.dispatchEvent("h1", "drop", { dataTransfer: carried });
+  }
+}
