@@ -46,8 +46,7 @@ const place = await (executablePath === undefined ? openNode() : openChromium(ex
 const build: Build = "simd";
 const shipped = shippedProfiles.find((profile) => profile.build === build)!;
 const all = candidates(build, shipped, wanted);
-const names = new Map(all.map(({ problem }) => [problem.index, problem.name]));
-const campaign = openCampaign(place, build, (index) => names.get(index), given.fresh);
+const campaign = openCampaign(place, build, given.fresh);
 
 const fromFiles = given.profile.map((path): Named => ({ name: path, profile: JSON.parse(readFileSync(path, "utf8")) as HardwareProfile }));
 const profiles: Named[] = [{ name: "shipped", profile: shipped }, ...fromFiles];

@@ -8,7 +8,7 @@ import { shortestMilliseconds, took, turnsFor, type Bench, type Effort } from ".
 /** What a single call took, by what was asked for: a method by its name, or the engine's own choice. */
 export type OnceTook = { method: Method | "auto" } & Took;
 
-const effort: Effort = { milliseconds: 200, turns: [5, 11] };
+const effort: Effort = { milliseconds: 250, turns: [5, 21] };
 
 /** A call that a single look has shown to take more than this is not looked at twice. */
 const longMilliseconds = 30;

@@ -33,26 +33,45 @@ export function printRegrets(lines: readonly RegretLine[]): void {
 
 const times = ({ method, measured, stopped, predicted }: Prediction): string[] => [method, `${stopped ? "> " : ""}${digits(measured)}`, digits(predicted)];
 
-function because({ culprit: { method, variant, factor, leading }, price }: Reason): string {
-  const off = factor > 1 ? `${factor.toFixed(2)} × as long as predicted` : `predicted ${(1 / factor).toFixed(2)} × too long`;
-  const charged = price ? `: ${price.needed.toPrecision(3)} ns would fit, ${price.charged.toPrecision(3)} charged` : ", which alone cannot explain it";
-  return `${method} (${variant}) ${off}; ${leading.operation} is ${(100 * leading.share).toFixed(0)} % of it${charged}`;
-}
+/** The mispredicted method, how far off it is, the operation that its prediction mostly consists of, and at which price that would explain it. */
+const because = ({ culprit: { method, variant, factor, leading }, price }: Reason): string[] => [
+  `${method}, ${variant}`,
+  factor.toFixed(2),
+  leading.operation,
+  `${(100 * leading.share).toFixed(0)} %`,
+  price ? price.charged.toPrecision(3) : "",
+  price ? price.needed.toPrecision(3) : "no price",
+];
 
 /** The worst choices, each with what was mispredicted. */
 export function printWorst(judged: readonly Judged[], profile: HardwareProfile, count = 20): void {
-  const worst = judged.filter(({ regret }) => regret > 0).toSorted((a, b) => b.regret - a.regret);
+  const worst = judged
+    .filter(({ regret }) => regret > 0)
+    .toSorted((a, b) => b.regret - a.regret)
+    .slice(0, count);
   printTable(
-    ["", "regret", "chosen", "ms", "predicted", "best", "ms", "predicted", "problem, and the reason"],
-    worst.slice(0, count).flatMap((one, rank) => {
+    [
+      "problem",
+      "regret",
+      "chosen",
+      "ms",
+      "predicted",
+      "best",
+      "ms",
+      "predicted",
+      "mispredicted",
+      "measured ÷ predicted",
+      "mostly",
+      "of it",
+      "ns charged",
+      "would fit",
+    ],
+    worst.map((one) => {
       const reason = reasonOf(one, profile);
-      return [
-        [String(rank + 1), percent(one.regret), ...times(reason.chosen), ...times(reason.best), ""],
-        ["", "", "", "", "", "", "", "", `#${one.record.index} ${one.record.name}`],
-        ["", "", "", "", "", "", "", "", because(reason)],
-      ];
+      return [`#${one.record.index}`, percent(one.regret), ...times(reason.chosen), ...times(reason.best), ...because(reason)];
     }),
   );
+  for (const { record } of worst) console.log(`#${record.index} ${record.name}`);
 }
 
 /** Where predictions lean, whether or not a choice was wrong for it. */

@@ -5,11 +5,11 @@ import { readResult, saveResult } from "../resultFile.js";
 import type { FirstSight } from "./firstSight.js";
 import type { OnceTook } from "./once.js";
 import type { Planned } from "./planned.js";
-import { seed } from "./problems.js";
-import { typical, type MethodTook } from "./statistics.js";
+import { problemAt, seed } from "./problems.js";
+import { typical, wasStopped, type MethodTook } from "./statistics.js";
 
-/** A method's time with what it counted, for those who fit prices: operations in the order of the file's list, as pairs [operation, count]. */
-export type TimedMethod = MethodTook & { variant: string; run: number[]; setup: number[] };
+/** A method's time with what a run counts, for those who fit prices: pairs [operation by its place in the file's list, count]. Not where it was stopped. */
+export type TimedMethod = MethodTook & { variant: string; run?: number[] };
 
 /** What was measured on a problem. The problem itself is rebuilt from seed and index. */
 export interface ProblemRecord {
@@ -39,11 +39,11 @@ export interface Campaign {
 
 const what = "regret";
 
-const pairs = (counts: Counts): number[] => operationNames.flatMap((name, operation) => (counts[name] ? [operation, Number(counts[name].toPrecision(4))] : []));
+const pairs = (counts: Counts): number[] => operationNames.flatMap((name, operation) => (counts[name] ? [operation, Number(counts[name].toPrecision(3))] : []));
 
 export function recordOf(took: MethodTook, planned: readonly Planned[]): TimedMethod {
   const { variant, work } = planned.find(({ method }) => method === took.method)!;
-  return { ...took, variant, run: pairs(work.run), setup: pairs(work.setup) };
+  return wasStopped(took) ? { ...took, variant } : { ...took, variant, run: pairs(work.run) };
 }
 
 /** What counts: the second timing where there is one. */
@@ -58,11 +58,11 @@ export const tookOf = (record: ProblemRecord, method: Method): MethodTook => {
 export const bestMilliseconds = (record: ProblemRecord): number => Math.min(...settled(record).map(typical));
 
 /** The campaign that is on file for this host, or a new one. Records of other problems than today's are left out. */
-export function openCampaign(place: { name: string; clock: string }, build: string, nameOf: (index: number) => string | undefined, fresh: boolean): Campaign {
+export function openCampaign(place: { name: string; clock: string }, build: string, fresh: boolean): Campaign {
   const empty: Campaign = { clock: place.clock, build, seed, operations: operationNames, problems: [], firstSights: [] };
   const known = fresh ? undefined : (readResult(what, describeHost(""), place.name) as Campaign | undefined);
   if (known === undefined || known.seed !== seed || known.build !== build) return empty;
-  return { ...empty, problems: known.problems.filter(({ index, name }) => nameOf(index) === name), firstSights: known.firstSights };
+  return { ...empty, problems: known.problems.filter(({ index, name }) => problemAt(index).name === name), firstSights: known.firstSights };
 }
 
 export function saveCampaign(place: { name: string }, core: string, campaign: Campaign, judgement: Record<string, unknown>): string {
