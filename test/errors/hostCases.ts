@@ -1,4 +1,7 @@
 import { createEngine, kernel, type ErrorCode, type HardwareProfile } from "../../src/index.js";
+import { crossoverBy } from "../../src/measure/crossover.js";
+import { profileBy } from "../../src/measure/profile.js";
+import { hostPacing } from "../../src/runtime/pacing.js";
 import * as simdCore from "../../src/generated/simd.js";
 import { untyped, type ErrorCase } from "./errorCase.js";
 
@@ -70,12 +73,21 @@ async function withoutMemory(act: () => unknown): Promise<unknown> {
   }
 }
 
+/** The host, with another clock. */
+const withClock = (now: () => number) => ({ ...hostPacing(), now });
+
+/** Each look tells an earlier time than the one before. */
+function backwards(): () => number {
+  let time = 0;
+  return () => --time;
+}
+
 const profile = (change: object): HardwareProfile =>
   untyped({ version: 2, host: "a test", build: "simd", threads: 1, date: "2026-01-01", nanoseconds: {}, ...change });
 
 export const states: Pick<
   Record<ErrorCode, ErrorCase[]>,
-  "disposed" | "invalid-profile" | "memory-limit" | "memory-exhausted" | "webassembly-missing" | "webassembly-blocked" | "self-test-failed"
+  "disposed" | "invalid-profile" | "memory-limit" | "memory-exhausted" | "webassembly-missing" | "webassembly-blocked" | "self-test-failed" | "clock-unusable"
 > = {
   disposed: [
     {
@@ -158,6 +170,8 @@ export const states: Pick<
     { title: "no coefficients", act: () => createEngine({ profile: profile({ nanoseconds: undefined }) }), says: ["nanoseconds"] },
     { title: "missing coefficients", act: () => createEngine({ profile: profile({}) }) },
     { title: "not an object", act: () => createEngine({ profile: untyped("fast") }) },
+    { title: "a list in place of coefficients", act: () => createEngine({ profile: profile({ nanoseconds: [1, 2] }) }), says: ["an array"] },
+    { title: "no number of threads", act: () => createEngine({ profile: profile({ threads: undefined }) }), says: ["threads", "1 or more"] },
   ],
   "memory-limit": [
     {
@@ -192,5 +206,35 @@ export const states: Pick<
     { title: "a module that multiplies wrongly", act: () => createEngine({ build: "simd", module: brokenCore(vectorDifference) }) },
     { title: "a module that traps", act: () => createEngine({ build: "simd", module: brokenCore(trap) }) },
     { title: "a module that exports nothing", act: () => createEngine({ module: emptyModule() }) },
+  ],
+  "clock-unusable": [
+    {
+      title: "a profile by a clock that stands still",
+      act: ({ engine }) =>
+        profileBy(
+          withClock(() => 5),
+          engine,
+        ),
+      says: ["stands still", "performance.now()"],
+    },
+    { title: "a profile by a clock that runs backwards", act: ({ engine }) => profileBy(withClock(backwards()), engine), says: ["backwards"] },
+    {
+      title: "a profile by a clock that tells no number",
+      act: ({ engine }) =>
+        profileBy(
+          withClock(() => NaN),
+          engine,
+        ),
+    },
+    {
+      title: "a crossover by a clock that stands still",
+      act: ({ engine }) =>
+        crossoverBy(
+          withClock(() => 5),
+          engine,
+          { width: 32, height: 24 },
+        ),
+      says: ["stands still"],
+    },
   ],
 };
