@@ -2,6 +2,7 @@ import { spawnSync } from "node:child_process";
 import { mkdir, readFile, readdir, writeFile } from "node:fs/promises";
 import { fileURLToPath } from "node:url";
 import { beforeEach, describe, expect, it } from "vitest";
+import { createEngine } from "../../src/index.js";
 import { builders } from "../../src/cli/builders.js";
 import { tapwise } from "./commandLine.js";
 import { headerChunk, patternedSamples, signature, writePng } from "./pngFiles.js";
@@ -131,7 +132,7 @@ describe("help", () => {
   it("of the program names the commands, examples and exit codes", async () => {
     const { exitCode, stdout, stderr } = await tapwise("--help");
     expect({ exitCode, stderr }).toEqual({ exitCode: 0, stderr: "" });
-    for (const words of ["filter", "explain", "Examples:", "Exit codes: 0 done"]) expect(stdout).toContain(words);
+    for (const words of ["filter", "explain", "measure", "Examples:", "Exit codes: 0 done"]) expect(stdout).toContain(words);
   });
 
   it.each(["filter", "explain"])("of %s lists every builder, border and option", async (command) => {
@@ -142,28 +143,44 @@ describe("help", () => {
     for (const line of stdout.split("\n")) expect(line.length).toBeLessThanOrEqual(120);
   });
 
-  it.each(["filter", "explain"])("examples of %s are right", async (command) => {
+  it("of measure lists every option, and what is printed", async () => {
+    const { exitCode, stdout } = await tapwise("measure", "--help");
+    expect(exitCode).toBe(0);
+    for (const words of ["--profile", "--report", "--no-crossover", "--sizes", "--seconds", "--threads", "regret", "Examples:"])
+      expect(stdout).toContain(words);
+    for (const line of stdout.split("\n")) expect(line.length).toBeLessThanOrEqual(120);
+  });
+
+  it.each(["filter", "explain", "measure"])("examples of %s are right", async (command) => {
     const { stdout } = await tapwise(command, "--help");
     const examples = [...stdout.matchAll(/^ {2}\$ tapwise (.*)$/gm)].map(([, line]) => line!);
     expect(examples.length).toBeGreaterThan(2);
-    await writeFile(
-      at("psf.json"),
-      JSON.stringify([
-        [0, 0.25],
-        [0.25, 0.5],
-      ]),
-    );
-    await writeFile(
-      at("sheet16.png"),
-      writePng({ width: 640, height: 480, bitDepth: 16, colorType: 0, samples: Array.from({ length: 640 * 480 }, (_, index) => index % 65536) }),
-    );
+    await writeExampleFiles();
     for (const example of examples) {
       const words = [...example.replace("leaf.png corner", "sheet16.png corner").matchAll(/"([^"]*)"|(\S+)/g)].map(([, quoted, bare]) => quoted ?? bare!);
-      const outcome = await tapwise(...words.map((word) => (/\.(png|json)$/.test(word) ? at(word) : word)), ...(command === "filter" ? ["--force"] : []));
+      const placed = words.map((word) => (/\.(png|json|html)$|^(sheets|soft)$/.test(word) ? at(word) : word));
+      const outcome = await tapwise(...placed, ...(command === "explain" ? [] : ["--force"]), ...(command === "measure" ? quickly(example) : []));
       expect({ example, ...outcome }).toMatchObject({ example, exitCode: 0 });
     }
   });
 });
+
+/** What makes an example of measure a short one; the last of an option counts. */
+function quickly(example: string): string[] {
+  return ["--seconds", "0.5", ...(example.includes("--no-crossover") ? [] : ["--size", "48x32", "--sizes", "3,9"])];
+}
+
+async function writeExampleFiles(): Promise<void> {
+  const engine = await createEngine();
+  await writeFile(at("kiosk.json"), JSON.stringify(engine.profile));
+  engine.dispose();
+  await writeFile(at("psf.json"), "[[0, 0.25], [0.25, 0.5]]");
+  await writeFile(at("pinhole.png"), writePng({ width: 3, height: 1, bitDepth: 8, colorType: 0, samples: [12, 90, 15] }));
+  await mkdir(at("sheets"));
+  await writeFile(at("sheets/leaf.png"), await readFile(at("leaf.png")));
+  const samples = Array.from({ length: 640 * 480 }, (_, index) => index % 65536);
+  await writeFile(at("sheet16.png"), writePng({ width: 640, height: 480, bitDepth: 16, colorType: 0, samples }));
+}
 
 describe("the program", () => {
   const entry = fileURLToPath(new URL("../../src/cli/tapwise.ts", import.meta.url));
