@@ -11,17 +11,20 @@ type Job = Extract<ToMeasurer, { kind: "measure" }>;
 const stopping = new AbortController();
 const tell = (message: FromMeasurer): void => (globalThis as unknown as Worker).postMessage(message, []);
 
-/** Milliseconds between two messages about progress: often enough to look live. */
-const tellEvery = 200;
+/** Milliseconds between two messages about progress, and between two drawings of the same sizes: often enough to look live, and little work beside what is timed. */
+const tellEvery = 300;
+const drawEvery = 1200;
 
-/** Tells how far a step is, not oftener than the page can use. */
+/** Tells how far a step is, and what it has found where that is new. */
 function teller(step: Step): (done: number, soFar?: Crossover) => void {
-  let last = -Infinity;
+  const last = { told: -Infinity, drawn: -Infinity, sizes: 0 };
   return (done, soFar) => {
     const now = performance.now();
-    if (now - last < tellEvery && done < 1) return;
-    last = now;
-    tell({ kind: "progress", step, done, ...(soFar === undefined ? {} : { soFar }) });
+    if (now - last.told < tellEvery && done < 1) return;
+    last.told = now;
+    const isNew = soFar !== undefined && (soFar.rows.length > last.sizes || now - last.drawn > drawEvery);
+    if (isNew) [last.drawn, last.sizes] = [now, soFar.rows.length];
+    tell({ kind: "progress", step, done, ...(isNew ? { soFar } : {}) });
   };
 }
 
