@@ -16,7 +16,9 @@ export async function readInput(path: string): Promise<Uint8Array> {
 
 /** What reading a file came to. */
 export function unreadable(path: string, cause: unknown): ConvolutionError {
-  return new ConvolutionError("file-unreadable", `${path} cannot be read: ${reasonOf(cause)}. Check the path and its permissions.`, {
+  // What is no UTF-8 in a name comes as this character, and leads nowhere.
+  const reason = path.includes("\uFFFD") ? `${reasonOf(cause)}, or its name is not in UTF-8` : reasonOf(cause);
+  return new ConvolutionError("file-unreadable", `${path} cannot be read: ${reason}. Check the path and its permissions.`, {
     expected: "a readable file",
     received: codeOf(cause),
     cause,
@@ -117,11 +119,10 @@ export function isForAllFiles(error: unknown): boolean {
 
 /** What writing a file came to. */
 export function unwritable(path: string, reason: string, cause?: unknown): ConvolutionError {
-  return new ConvolutionError("file-unwritable", `${path} cannot be written: ${reason}. Choose a place that exists and may be written to.`, {
-    expected: "a writable place",
-    received: reason,
-    cause,
-  });
+  const advice = ["ENOSPC", "EDQUOT"].includes(codeOf(cause))
+    ? "Make room there, or choose another place."
+    : "Choose a place that exists and may be written to.";
+  return new ConvolutionError("file-unwritable", `${path} cannot be written: ${reason}. ${advice}`, { expected: "a writable place", received: reason, cause });
 }
 
 /** What the system's error codes mean, in words; any other code is shown as it is. */

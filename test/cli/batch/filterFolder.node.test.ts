@@ -99,6 +99,15 @@ describe("what cannot be filtered", () => {
     expect((await filter()).stdout).toContain("1 of 1 image filtered");
   });
 
+  it("may have a name that is no UTF-8, on systems that allow it", async () => {
+    await writeLeaves(at("sheets"), ["a.png"]);
+    await writeFile(Buffer.concat([Buffer.from(`${at("sheets")}/bl`), Buffer.of(0xe4), Buffer.from("tter.png")]), leaf(1));
+    const { exitCode, stdout, stderr } = await filter();
+    expect(exitCode).toBe(1);
+    expect(stdout).toContain("1 of 2 images filtered, 1 failed");
+    expect(stderr).toMatch(/bl\uFFFDtter\.png cannot be read: .*its name is not in UTF-8.*\[file-unreadable\]\n$/);
+  });
+
   it("cannot steer the terminal by its name", async () => {
     await mkdir(at("sheets"));
     await writeFile(at("sheets/\u001b[31mred\n.png"), "veins");
