@@ -62,6 +62,8 @@ export function crossoverChart(crossover: Crossover, { document, width, earlier 
     ],
   }) as SVGSVGElement;
   svg.querySelector("style")?.remove();
+  // The parts of an image have no names of their own.
+  for (const part of svg.querySelectorAll("[aria-label], [aria-hidden]")) for (const name of ["aria-label", "aria-hidden"]) part.removeAttribute(name);
   svg.setAttribute("font-size", String(fontSize));
   svg.setAttribute("role", "img");
   svg.setAttribute("aria-label", `Time of one run against kernel size, ${series.length === 0 ? "empty" : "one line a method"}. ${answerSentence(crossover)}`);

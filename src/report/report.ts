@@ -4,11 +4,12 @@ import { crossoverChart } from "./chart.js";
 import { chartStyle } from "./chart/colours.js";
 import { dateInWords, threadsInWords } from "./figures.js";
 import { borderInWords, kernelsInWords, layoutInWords } from "./layoutWords.js";
+import { capitalised } from "./methodNames.js";
 import { escaped, facts, list, paragraph } from "./page/markup.js";
 import { profileSection } from "./page/profileSection.js";
 import { sizeTable } from "./page/sizeTable.js";
 import { reportStyle } from "./page/style.js";
-import { answerSentence, otherCrossingSentences, regretSentence, subjectSentence } from "./sentences.js";
+import { answerOf, otherCrossingSentences, regretSentence, subjectSentence } from "./sentences.js";
 
 /** What a report tells. */
 export interface Findings {
@@ -24,8 +25,11 @@ export interface Findings {
 /** A page may show its own style, and nothing that comes from elsewhere or acts. */
 const policy = "default-src 'none'; style-src 'unsafe-inline'; base-uri 'none'; form-action 'none'";
 
-/** Two drawings, of which the style shows the one that fits. */
-const widths = { wide: 1000, narrow: 340 } as const;
+/** Three drawings, of which the style shows the one that fits. */
+const widths = { narrow: 340, medium: 660, wide: 1040 } as const;
+
+const tableHint =
+  "Measured times are medians, the fastest in bold, with the middle half of the times below. Regret is how much longer the method that the engine would choose takes than the fastest one; 0 % where the two are nearer than the noise.";
 
 /**
  * The findings as one HTML file that needs nothing else: no script, no fonts, no network.
@@ -53,7 +57,7 @@ export function reportHtml({ crossover, profile, document, earlier }: Findings):
 <body>
 <header>
 <h1>${escaped(`Which method is fastest on ${crossover.host}?`)}</h1>
-${paragraph(answerSentence(crossover), "answer")}
+${answer(crossover)}
 ${paragraph(subjectSentence(crossover), "subject")}
 </header>
 <main>
@@ -66,7 +70,7 @@ ${howToRead(earlier)}
 <section aria-labelledby="sizes">
 <h2 id="sizes">Every size that was measured</h2>
 ${paragraph(regretSentence(crossover))}
-${paragraph("Regret is how much longer the method that the engine would choose takes than the fastest one; 0 % where the two are nearer than the noise.", "aside")}
+${paragraph(tableHint, "aside")}
 ${sizeTable(crossover)}
 </section>
 <section aria-labelledby="machine">
@@ -82,9 +86,14 @@ ${profileSection(profile)}
 `;
 }
 
+function answer(crossover: Crossover): string {
+  const { answer, certainty } = answerOf(crossover);
+  return `${paragraph(`${answer}.`, "answer")}${certainty === "" ? "" : paragraph(`${capitalised(certainty)}.`, "certainty")}`;
+}
+
 function otherCrossings(crossover: Crossover): string {
   const sentences = otherCrossingSentences(crossover);
-  return sentences.length === 0 ? "" : list(sentences);
+  return sentences.length > 1 ? list(sentences) : sentences.map((sentence) => paragraph(sentence)).join("");
 }
 
 function howToRead(earlier: Crossover | undefined): string {
@@ -97,7 +106,7 @@ function howToRead(earlier: Crossover | undefined): string {
   return `<h3>How to read it</h3>\n${list(hints)}`;
 }
 
-function machineFacts({ host, build, threads, date, layout, separable, border, profile }: Crossover): [string, string][] {
+function machineFacts({ host, build, threads, date, layout, separable, border, profile, rows }: Crossover): [string, string][] {
   return [
     ["Host", host],
     ["Engine", `${build} build, ${threadsInWords(threads)}`],
@@ -105,6 +114,7 @@ function machineFacts({ host, build, threads, date, layout, separable, border, p
     ["Images", layoutInWords(layout)],
     ["Kernels", kernelsInWords(separable)],
     ["Border", borderInWords(border)],
+    ["Times taken", `${rows.reduce((sum, { samples }) => sum + samples, 0)} at ${rows.length} kernel sizes`],
     ["Predicted by", profile],
   ];
 }

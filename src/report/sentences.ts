@@ -3,6 +3,13 @@ import { bySide, dateInWords, listed, percent, threadsInWords } from "./figures.
 import { borderInWords, kernelsInWords, layoutInWords } from "./layoutWords.js";
 import { capitalised, methodOrder, nameAndVerb, nameInSentence } from "./methodNames.js";
 
+/** The answer, and how sure it is: both without a full stop. */
+export interface Answer {
+  answer: string;
+  /** Between which sizes the changes lie; "" where there are none. */
+  certainty: string;
+}
+
 /**
  * What was found, in one sentence for somebody who knows nothing of the methods.
  *
@@ -12,11 +19,16 @@ import { capitalised, methodOrder, nameAndVerb, nameInSentence } from "./methodN
  * answerSentence(crossover); // "From about 9×9 taps on, the FFT is faster than direct sums on this device; the change lies between 7×7 and 11×11."
  */
 export function answerSentence(crossover: Crossover): string {
-  const { rows } = crossover;
-  if (rows.length === 0) return "No kernel size has been measured yet.";
-  const leading = leadingCrossings(crossover);
-  if (leading.length === 1) return oneChange(leading[0]!);
-  return leading.length > 1 ? severalChanges(leading) : noChange(rows);
+  const { answer, certainty } = answerOf(crossover);
+  return certainty === "" ? `${answer}.` : `${answer}; ${certainty}.`;
+}
+
+/** The same in two parts. */
+export function answerOf({ rows, crossings }: Crossover): Answer {
+  if (rows.length === 0) return { answer: "No kernel size has been measured yet", certainty: "" };
+  const leading = crossings.filter((one) => one.leading).toSorted((a, b) => a.size - b.size);
+  if (leading.length === 0) return { answer: noChange(rows), certainty: "" };
+  return { answer: leading.length === 1 ? oneChange(leading[0]!) : severalChanges(leading), certainty: certaintyOf(leading) };
 }
 
 /** Where lines meet that no user of the fastest method would notice: one sentence for each. */
@@ -55,20 +67,21 @@ export function regretSentence({ rows }: Crossover): string {
   );
 }
 
-/** Crossings of the fastest lines, by size, as far as each goes on from where the one before it led. */
-function leadingCrossings({ crossings }: Crossover): Crossing[] {
-  return crossings.filter(({ leading }) => leading).toSorted((a, b) => a.size - b.size);
-}
-
 function oneChange(crossing: Crossing): string {
-  return `From ${about(crossing)} taps on, ${nameAndVerb(crossing.to)} faster than ${nameInSentence(crossing.from)} on this device${changeLies([crossing])}.`;
+  return `From ${about(crossing)} taps on, ${nameAndVerb(crossing.to)} faster than ${nameInSentence(crossing.from)} on this device`;
 }
 
+/** Who leads from where to where; change by change where noise hides how one lead follows the other. */
 function severalChanges(leading: readonly Crossing[]): string {
+  const isChain = leading.every((one, k) => k === 0 || one.from === leading[k - 1]!.to);
+  if (!isChain) {
+    const changes = leading.map((one) => `${nameAndVerb(one.to)} faster than ${nameInSentence(one.from)} from ${about(one)} taps on`);
+    return `On this device ${listed(changes)}`;
+  }
   const first = `${nameAndVerb(leading[0]!.from)} fastest up to ${about(leading[0]!)} taps`;
-  const middle = leading.slice(1).map((next, k) => `${nameInSentence(leading[k]!.to)} from there to ${about(next)}`);
+  const middle = leading.slice(1).map((next) => `${nameInSentence(next.from)} from there to ${about(next)}`);
   const last = `${nameInSentence(leading.at(-1)!.to)} for larger kernels`;
-  return `On this device ${listed([first, ...middle, last])}${changeLies(leading)}.`;
+  return `On this device ${listed([first, ...middle, last])}`;
 }
 
 function noChange(rows: readonly CrossoverRow[]): string {
@@ -76,10 +89,10 @@ function noChange(rows: readonly CrossoverRow[]): string {
   const [low, high] = [Math.min(...sizes), Math.max(...sizes)];
   const where = low === high ? `at ${bySide(low)} taps, the only size measured` : `at every size measured, from ${bySide(low)} to ${bySide(high)} taps`;
   const timed = methodOrder.filter((method) => rows.some(({ milliseconds }) => milliseconds[method] !== undefined));
-  if (timed.length < 2) return `Only ${nameInSentence(timed[0] ?? rows[0]!.fastest)} could be timed, so there is nothing to compare.`;
-  const [fastest, ...others] = new Set(rows.map((row) => row.fastest));
-  if (others.length === 0) return `On this device ${nameAndVerb(fastest!)} fastest ${where}.`;
-  return `On this device ${listed([fastest!, ...others].map(nameInSentence))} are fastest in turn from ${bySide(low)} to ${bySide(high)} taps; no crossing stands out from the noise.`;
+  if (timed.length < 2) return `Only ${nameInSentence(timed[0] ?? rows[0]!.fastest)} could be timed, so there is nothing to compare`;
+  const leaders = methodOrder.filter((method) => rows.some(({ fastest }) => fastest === method));
+  if (leaders.length === 1) return `On this device ${nameAndVerb(leaders[0]!)} fastest ${where}`;
+  return `On this device ${listed(leaders.map(nameInSentence))} are fastest in turn from ${bySide(low)} to ${bySide(high)} taps; where they change places, they are nearer than the noise`;
 }
 
 /** "about 9×9": the size is where two lines between measured sizes meet. */
@@ -98,8 +111,8 @@ function interval({ interval: [low, high] }: Crossing): string {
   return from === to ? "" : `${bySide(from)} and ${bySide(to)}`;
 }
 
-function changeLies(crossings: readonly Crossing[]): string {
+function certaintyOf(crossings: readonly Crossing[]): string {
   const known = crossings.map(interval).filter((bounds) => bounds !== "");
   if (known.length === 0) return "";
-  return known.length === 1 ? `; the change lies between ${known[0]}` : `; the changes lie ${listed(known.map((bounds) => `between ${bounds}`))}`;
+  return known.length === 1 ? `the change lies between ${known[0]}` : `the changes lie ${listed(known.map((bounds) => `between ${bounds}`))}`;
 }

@@ -122,6 +122,7 @@ describe("the drawing is one image to a screen reader, and brings nothing", () =
     const svg = draw();
     expect(svg.getAttribute("role")).toBe("img");
     expect(svg.getAttribute("aria-label")).toContain(answerSentence(sampleCrossover()));
+    expect(count(svg, "[aria-label],[aria-hidden]")).toBe(0);
   });
 
   test("it has no style, script, identifier or address", () => {

@@ -1,5 +1,6 @@
 import { describe, expect, test } from "vitest";
 import { parseHTML } from "linkedom";
+import { capitalised } from "../../src/report/methodNames.js";
 import { nodeDocument } from "../../src/report/nodeDocument.js";
 import { reportHtml } from "../../src/report/report.js";
 import { answerSentence } from "../../src/report/sentences.js";
@@ -12,7 +13,9 @@ const texts = (selector: string): string[] => [...page.querySelectorAll(selector
 
 describe("the report tells everything", () => {
   test("the answer comes first", () => {
-    expect(texts("header .answer")).toEqual([answerSentence(crossover)]);
+    const [answer, certainty] = answerSentence(crossover).replace(/\.$/, "").split("; ") as [string, string];
+    expect(texts("header .answer")).toEqual([`${answer}.`]);
+    expect(texts("header .certainty")).toEqual([`${capitalised(certainty)}.`]);
   });
 
   test("headings go down one level at a time from one h1", () => {

@@ -38,9 +38,15 @@ describe("the answer in one sentence", () => {
       "From about 5×5 taps on, running sums are faster than direct sums on this device.",
     ],
     [
+      "two changes, and what lies between them is noise",
+      withCrossings(leading("direct", "separable", 5.2, [5, 7]), leading("running-sum", "fft", 50.6, [45, 63])),
+      "On this device separable passes are faster than direct sums from about 5×5 taps on and the FFT is faster than running sums from about 51×51 taps on; " +
+        "the changes lie between 5×5 and 7×7 and between 45×45 and 63×63.",
+    ],
+    [
       "the fastest changes, and noise hides where",
       { ...sampleCrossover(), crossings: [] },
-      "On this device direct sums, separable passes and the FFT are fastest in turn from 3×3 to 127×127 taps; no crossing stands out from the noise.",
+      "On this device direct sums, separable passes and the FFT are fastest in turn from 3×3 to 127×127 taps; where they change places, they are nearer than the noise.",
     ],
   ])("%s", (_, crossover, sentence) => {
     expect(answerSentence(crossover)).toBe(sentence);

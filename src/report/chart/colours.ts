@@ -10,9 +10,9 @@ export interface Sign {
 /** At least 4.5:1 on white, or on near-black, and apart from each other with any of the three kinds of dichromacy: test/report/colours. */
 export const signs: Record<Method, Sign> = {
   "direct": { light: "#b84a00", dark: "#ff9a52", symbol: "square" },
-  "separable": { light: "#00745a", dark: "#45c8a2", symbol: "circle" },
+  "separable": { light: "#00745a", dark: "#52d6ae", symbol: "circle" },
   "running-sum": { light: "#9a3f80", dark: "#e79bd0", symbol: "triangle" },
-  "fft": { light: "#0a4f9e", dark: "#7db7ff", symbol: "diamond" },
+  "fft": { light: "#0a4f9e", dark: "#6fabff", symbol: "diamond" },
 };
 
 /** The method's colour as a page may set it; without a style sheet, the one for light surroundings. */

@@ -24,7 +24,7 @@ export function labelledCrossings(
     .toSorted((a, b) => a.size - b.size);
   const words = onAxis.map((crossing) => labelOf(crossing, isCompact(width)));
   // Bold letters are wider.
-  const poles = onAxis.map(({ size, leading }, k) => ({ at: x(size) + 5, extent: (leading ? 1.08 : 1) * textWidth(words[k]!, fontSize) }));
+  const poles = onAxis.map(({ size, leading }, k) => ({ at: x(size) + 5, extent: (leading ? 1.16 : 1) * textWidth(words[k]!, fontSize) }));
   const places = flags(poles, [2, width], fontSize);
   return onAxis.map((crossing, k) => ({ ...crossing, words: words[k]!, flag: places[k]! }));
 }

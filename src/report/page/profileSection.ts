@@ -66,7 +66,7 @@ function verdictDetails({ verdicts = [] }: HardwareProfile): string {
     return [shape, shortName(method), times.join(", "), dateInWords(date)];
   });
   const columns = ["problem", "fastest", "measured", "date"].map((heading) => ({ heading }));
-  return `<details><summary>${escaped(String(verdicts.length))} problems decided by measuring them</summary>
-${plainTable("Used for such problems instead of predictions", columns, rows)}
+  return `<details><summary>Decided by measuring: ${escaped(String(verdicts.length))}</summary>
+${plainTable("Problems that were timed; what was found is used for such problems instead of predictions", columns, rows)}
 </details>`;
 }
