@@ -14,6 +14,12 @@ const silent: Progress = { reach: () => undefined, end: () => undefined };
 /** Steps of a bar: finer than the columns of any terminal. */
 const steps = 10_000;
 
+/** The bar is told so often at most. */
+const millisecondsBetween = 100;
+
+/** The time left is judged by so many of the latest: five seconds or more, as first runs are slower than later ones. */
+const latestCount = 50;
+
 /** A bar with the time left, on standard error where that is a terminal; else nothing. */
 export function showProgress({ stderr }: Streams, words: string): Progress {
   if (stderr.isTTY !== true) return silent;
@@ -22,13 +28,18 @@ export function showProgress({ stderr }: Streams, words: string): Progress {
     format: "{words} [{bar}] {percentage} %  {eta_formatted}",
     barsize: 24,
     formatTime: timeLeft,
-    etaBuffer: steps, // an average over the whole: what is measured or filtered next is like what was
+    etaBuffer: latestCount,
     linewrap: true, // the terminal's own mode is left alone; longer lines are cut
     clearOnComplete: true,
   });
   bar.start(steps, 0, { words });
+  let told = performance.now();
   return {
-    reach: (part, latest) => bar.update(Math.round(part * steps), { words: latest }),
+    reach(part, latest) {
+      if (performance.now() - told < millisecondsBetween) return;
+      told = performance.now();
+      bar.update(Math.round(part * steps), { words: latest });
+    },
     end: () => bar.stop(),
   };
 }

@@ -13,8 +13,9 @@ import type { MeasureArguments } from "./measureArguments.js";
 
 const defaultSeconds = 12;
 
-/** Of the time, what the profile gets where crossings are measured as well. */
+/** What the profile gets of the time where crossings are measured as well: a sixth, and where time is short this much, half of it at most. */
 const profileShare = 1 / 6;
+const leastProfileSeconds = 0.5;
 
 /** What was measured. */
 export interface Measured {
@@ -47,7 +48,7 @@ export async function measure(options: MeasureArguments, streams: Streams): Prom
 
 async function measureWith(engine: Engine, options: MeasureArguments, progress: Progress, signal: AbortSignal): Promise<Measured> {
   const { seconds = options.crossover ? defaultSeconds : defaultSeconds * profileShare } = options;
-  const share = options.crossover ? profileShare : 1;
+  const share = options.crossover ? Math.max(profileShare, Math.min(0.5, leastProfileSeconds / seconds)) : 1;
   const profile = await measureProfile(engine, { milliseconds: 1000 * seconds * share, signal, onProgress: (part) => progress.reach(part * share, "profile") });
   if (!options.crossover) return { profile };
   const fitted = await createEngine({ ...engineOptionsOf(options), profile });
