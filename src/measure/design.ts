@@ -13,7 +13,8 @@ const fixedMilliseconds = 2;
 const expectedError = 0.07;
 
 const sharesOf = (counts: Counts, prices: Prices): Float64Array => {
-  const total = priceOf(counts, prices);
+  // What costs nothing has no shares, and tells nothing.
+  const total = priceOf(counts, prices) || 1;
   return Float64Array.from(operationNames, (name) => ((counts[name] ?? 0) * prices[name]) / total);
 };
 

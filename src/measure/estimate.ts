@@ -30,6 +30,9 @@ const modelError = 0.05;
 const outlying = 2;
 const reweightings = 4;
 
+/** A ratio below this counts as this where shares of it are taken. */
+const leastLevel = 0.05;
+
 const operationCount = operationNames.length;
 const groupOf = operationNames.map((name) => groups.findIndex((names) => names.includes(name)));
 /** Unknowns: a ratio for each operation, one for each group, one for all. */
@@ -51,16 +54,21 @@ function shares({ counts, nanoseconds }: Observation, units: Float64Array): Floa
   return row;
 }
 
-/** Rows that say how prices hang together: ratio = its group's ± stray, group's = that of all ± stray, that of all = anything near 1. */
-function addKinship(gram: Gram, right: Float64Array): void {
+/**
+ * Rows that say how prices hang together: ratio = its group's ± stray, group's = that of all ± stray, that of all = anything near 1.
+ *
+ * @param levels ratios as far as they are known: strays are shares of the group's, or of that of all
+ */
+function addKinship(gram: Gram, right: Float64Array, levels: Float64Array): void {
+  const level = (k: number): number => Math.max(levels[k]!, leastLevel);
   const kin = (a: number, b: number, deviation: number): void => {
     const row = new Float64Array(unknownCount);
     row[a] = 1;
     row[b] = -1;
     addRow(gram, row, 1 / (deviation * deviation));
   };
-  for (let k = 0; k < operationCount; k++) kin(k, operationCount + groupOf[k]!, stray.price);
-  for (let g = 0; g < groups.length; g++) kin(operationCount + g, allIndex, stray.group);
+  for (let k = 0; k < operationCount; k++) kin(k, operationCount + groupOf[k]!, stray.price * level(operationCount + groupOf[k]!));
+  for (let g = 0; g < groups.length; g++) kin(operationCount + g, allIndex, stray.group * level(allIndex));
   const weight = 1 / (stray.all * stray.all);
   gram.values[allIndex * unknownCount + allIndex]! += weight;
   right[allIndex]! += weight;
@@ -86,7 +94,7 @@ export function estimate(observations: readonly Observation[], known: Prices): E
   for (let pass = 0; pass < (observations.length > 0 ? reweightings : 1); pass++) {
     gram = gramOf(unknownCount);
     const right = new Float64Array(unknownCount);
-    addKinship(gram, right);
+    addKinship(gram, right, solution);
     for (const [o, row] of rows.entries()) {
       const deviation = Math.hypot(modelError, observations[o]!.noise);
       const beyond = Math.abs(errors[o]!) / (outlying * deviation);
@@ -106,7 +114,7 @@ function unitsOf(known: Prices, scale: number): Float64Array {
 
 function estimateFrom(solution: Float64Array, units: Float64Array, inverse: Gram): Estimate {
   const pairs = (value: (k: number) => number): Prices => Object.fromEntries(operationNames.map((name, k) => [name, value(k)])) as Prices;
-  const ratio = (k: number): number => Math.max(solution[k]!, 0.05);
+  const ratio = (k: number): number => Math.max(solution[k]!, leastLevel);
   const covariance = gramOf(operationCount);
   for (let i = 0; i < operationCount; i++) {
     for (let j = 0; j < operationCount; j++) covariance.values[i * operationCount + j] = inverse.values[i * unknownCount + j]! / (ratio(i) * ratio(j));
