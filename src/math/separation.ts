@@ -31,14 +31,14 @@ export function separate(taps: Float64Array, rows: number, columns: number, most
   const rest = taps.slice();
   const total = absoluteSum(rest);
   const separation: Separation = { terms: [], residuals: [total] };
-  let left = total;
-  while (left > negligible * total && separation.terms.length < mostTerms) {
-    const term = cross(rest, rows, columns);
+  let left: Rest = { sum: total, largest: largestOf(rest) };
+  while (left.sum > negligible * total && separation.terms.length < mostTerms) {
+    const term = cross(rest, rows, columns, left.largest);
     left = subtractTerm(rest, term);
     separation.terms.push(term);
-    separation.residuals.push(left);
+    separation.residuals.push(left.sum);
   }
-  if (separation.terms.length === 1 && left <= negligible * total) separation.terms[0] = integerTerm(taps, separation.terms[0]!);
+  if (separation.terms.length === 1 && left.sum <= negligible * total) separation.terms[0] = integerTerm(taps, separation.terms[0]!);
   separation.terms = separation.terms.map(held);
   return separation;
 }
@@ -57,9 +57,19 @@ export function absoluteSum(values: ArrayLike<number>): number {
   return sum;
 }
 
-function cross(rest: Float64Array, rows: number, columns: number): SeparableTerm {
+/** What is left of a matrix: Σ|elements|, and where the largest is (the first of several). */
+interface Rest {
+  sum: number;
+  largest: number;
+}
+
+function largestOf(values: Float64Array): number {
   let at = 0;
-  for (let k = 1; k < rest.length; k++) if (Math.abs(rest[k]!) > Math.abs(rest[at]!)) at = k;
+  for (let k = 1; k < values.length; k++) if (Math.abs(values[k]!) > Math.abs(values[at]!)) at = k;
+  return at;
+}
+
+function cross(rest: Float64Array, rows: number, columns: number, at: number): SeparableTerm {
   const pivot = rest[at]!;
   const i = Math.floor(at / columns);
   const j = at % columns;
@@ -70,18 +80,25 @@ function cross(rest: Float64Array, rows: number, columns: number): SeparableTerm
   return { column, row };
 }
 
-/** Takes a term away and tells Σ|what is left|. */
-function subtractTerm(rest: Float64Array, { column, row }: SeparableTerm): number {
-  let left = 0;
+/** Takes a term away. */
+function subtractTerm(rest: Float64Array, { column, row }: SeparableTerm): Rest {
+  let sum = 0;
+  let most = -1;
+  let largest = 0;
   for (let r = 0, k = 0; r < column.length; r++) {
     const factor = column[r]!;
     for (let c = 0; c < row.length; c++, k++) {
       const value = rest[k]! - factor * row[c]!;
       rest[k] = value;
-      left += Math.abs(value);
+      const size = Math.abs(value);
+      sum += size;
+      if (size > most) {
+        most = size;
+        largest = k;
+      }
     }
   }
-  return left;
+  return { sum, largest };
 }
 
 /**

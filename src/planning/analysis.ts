@@ -1,6 +1,6 @@
 import { readTaps, type Kernel } from "../kernels/kernel.js";
 import { absoluteSum, separate, type Separation } from "../math/separation.js";
-import { weightLeftOut } from "./tiny.js";
+import { keptCount, weightLeftOut } from "./tiny.js";
 
 /** More separable terms than this are not looked for: they would not pay, and looking takes time. */
 export const mostTerms = 16;
@@ -16,6 +16,8 @@ export interface KernelAnalysis {
   negative: boolean;
   /** Σ|taps that weigh next to nothing|: see planning/tiny. */
   leftOut(): number;
+  /** Taps that are not next to nothing: see planning/tiny. */
+  kept(): number;
   /** Separable terms, found when first asked for. */
   separation(): Separation;
 }
@@ -39,6 +41,7 @@ function analyseTaps(kernel: Kernel): KernelAnalysis {
   }
   let separation: Separation | undefined;
   let leftOut: number | undefined;
+  let kept: number | undefined;
   const limit = Math.min(mostTerms, kernel.width, kernel.height);
   return {
     sum: kernel.sum,
@@ -46,6 +49,7 @@ function analyseTaps(kernel: Kernel): KernelAnalysis {
     constant,
     integer,
     negative,
+    kept: () => (kept ??= keptCount(taps)),
     leftOut: () => (leftOut ??= weightLeftOut(taps)),
     separation: () => (separation ??= separate(taps, kernel.height, kernel.width, limit)),
   };

@@ -54,15 +54,8 @@ function listOf(problem: Problem): Int32Array<ArrayBuffer> {
   return Int32Array.from(entries);
 }
 
-const counts = /* @__PURE__ */ new WeakMap<Float32Array, number>();
-
-/** How many taps are not 0, counted once for all parts of a problem. */
-function countOf(problem: Problem): number {
-  const taps = floatTaps(problem);
-  let count = counts.get(taps);
-  if (count === undefined) counts.set(taps, (count = taps.reduce((sum, tap) => sum + (tap === 0 ? 0 : 1), 0)));
-  return count;
-}
+/** How many taps are not 0. */
+const countOf = ({ analysis }: Problem): number => analysis.kept();
 
 export const direct: MethodPlan = {
   name: "direct",

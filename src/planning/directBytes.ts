@@ -61,19 +61,32 @@ function error(problem: Problem): number {
   return 255 * ofTaps + offsetError(offset, shift);
 }
 
-const tables = /* @__PURE__ */ new WeakMap<FixedTaps, Int32Array<ArrayBuffer>>();
+/** By the taps that they are made of: as written, and reversed. */
+const tables = /* @__PURE__ */ new WeakMap<FixedTaps, [PairTable?, PairTable?]>();
 
-/** Taps as pairs of rows meet them; parts of one problem share the table. */
-function pairTaps(problem: Problem): Int32Array<ArrayBuffer> {
-  const { horizontal, vertical, reversed } = problem;
-  const taps = fixed(problem);
-  let table = tables.get(taps);
-  if (!table) {
-    const inOrder = reversed ? taps.integers.slice().reverse() : taps.integers;
-    tables.set(taps, (table = tapsByPairs(inOrder, vertical.taps, horizontal.taps)));
-  }
-  return table;
+interface PairTable {
+  taps: Int32Array<ArrayBuffer>;
+  /** Pairs of which either result row's is not 0. */
+  entries: number;
 }
+
+/** Taps as pairs of rows meet them; made once for a kernel. */
+function pairTable(problem: Problem): PairTable {
+  const { horizontal, vertical, reversed } = problem;
+  const fixedTaps = fixed(problem);
+  const made = tables.get(fixedTaps) ?? [];
+  tables.set(fixedTaps, made);
+  const known = made[reversed ? 1 : 0];
+  if (known) return known;
+  const taps = tapsByPairs(reversed ? fixedTaps.integers.slice().reverse() : fixedTaps.integers, vertical.taps, horizontal.taps);
+  let entries = 0;
+  for (let k = 0; k < taps.length; k += 2) if (taps[k] !== 0 || taps[k + 1] !== 0) entries++;
+  return (made[reversed ? 1 : 0] = { taps, entries });
+}
+
+const pairTaps = (problem: Problem): Int32Array<ArrayBuffer> => pairTable(problem).taps;
+
+const entriesOf = (problem: Problem): number => pairTable(problem).entries;
 
 /** Pairs of taps of a kernel of which either result row's is not 0, as entries: see the core's bytes/sparse. */
 function listOf(problem: Problem): Int32Array<ArrayBuffer> {
@@ -85,13 +98,6 @@ function listOf(problem: Problem): Int32Array<ArrayBuffer> {
     if (upper !== 0 || lower !== 0) entries.push(4 * Math.floor(k / horizontal.taps), 4 * channels * (k % horizontal.taps), upper, lower);
   }
   return Int32Array.from(entries);
-}
-
-function entriesOf(problem: Problem): number {
-  const table = pairTaps(problem);
-  let count = 0;
-  for (let k = 0; k < table.length; k += 2) if (table[k] !== 0 || table[k + 1] !== 0) count++;
-  return count;
 }
 
 function applicable(problem: Problem): true | string {

@@ -1,4 +1,4 @@
-import { readTaps } from "../kernels/kernel.js";
+import { readTaps, type Kernel } from "../kernels/kernel.js";
 import { integersOf } from "../math/dyadic.js";
 import type { Problem, Request } from "./problem.js";
 
@@ -97,12 +97,21 @@ export function tapsByPairs(integers: Float64Array, rows: number, columns: numbe
   return table;
 }
 
-const directTaps = new WeakMap<Request, FixedTaps | string>();
+const directTaps = /* @__PURE__ */ new WeakMap<Kernel, Map<string, FixedTaps | string>>();
 
-/** Taps of the direct method, gain included, in the kernel's order; or why there are none, as a sentence. */
+/** Outputs and tolerances that a kernel's integer taps are kept for; a caller that changes them all the time gets them anew. */
+const mostKept = 4;
+
+/** Taps of the direct method, gain included, in the kernel's order; or why there are none, as a sentence. Made once for a kernel. */
 export function fixedKernel(request: Request): FixedTaps | string {
-  let found = directTaps.get(request);
-  if (found === undefined) directTaps.set(request, (found = findFixedKernel(request)));
+  const { kernel, output, tolerance } = request;
+  const made = directTaps.get(kernel) ?? new Map<string, FixedTaps | string>();
+  directTaps.set(kernel, made);
+  const key = `${output.gain} ${output.offset} ${tolerance}`;
+  let found = made.get(key);
+  if (found !== undefined) return found;
+  if (made.size >= mostKept) made.clear();
+  made.set(key, (found = findFixedKernel(request)));
   return found;
 }
 

@@ -158,13 +158,15 @@ export function correlationTaps(problem: Problem): Float64Array<ArrayBuffer> {
   return problem.reversed ? taps.reverse() : taps;
 }
 
-const floats = new WeakMap<Request, Float32Array<ArrayBuffer>>();
+/** By kernel: the taps as written, and reversed. */
+const floats = /* @__PURE__ */ new WeakMap<Kernel, [Float32Array<ArrayBuffer>?, Float32Array<ArrayBuffer>?]>();
 
-/** The same in single precision, without those that weigh next to nothing; parts of one problem share the array. */
-export function floatTaps(problem: Problem): Float32Array<ArrayBuffer> {
-  let taps = floats.get(problem.request);
-  if (!taps) floats.set(problem.request, (taps = keptFloats(correlationTaps(problem))));
-  return taps;
+/** The same in single precision, without those that weigh next to nothing; made once for a kernel. */
+export function floatTaps({ request: { kernel }, reversed }: Problem): Float32Array<ArrayBuffer> {
+  const made = floats.get(kernel) ?? [];
+  floats.set(kernel, made);
+  const asWritten = (made[0] ??= keptFloats(readTaps(kernel)));
+  return reversed ? (made[1] ??= asWritten.slice().reverse()) : asWritten;
 }
 
 /** A vector of a separable term in correlation order. */

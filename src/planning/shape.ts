@@ -1,6 +1,6 @@
 import type { BorderRule } from "../types.js";
 import { methodNames, variantFor } from "./methods.js";
-import { floatTaps, type Problem } from "./problem.js";
+import type { Problem } from "./problem.js";
 
 const shownRule = (rule: BorderRule): string => (typeof rule === "object" ? "constant" : rule);
 
@@ -11,11 +11,7 @@ function forms(problem: Problem): string {
 }
 
 /** Taps that are not 0, to the next power of 2: what a list of them costs. */
-function magnitude(problem: Problem): number {
-  let count = 0;
-  for (const tap of floatTaps(problem)) if (tap !== 0) count++;
-  return 32 - Math.clz32(count);
-}
+const magnitude = ({ analysis }: Problem): number => 32 - Math.clz32(analysis.kept());
 
 /**
  * What problems have in common for which one method is fastest on one machine, whatever the values of the taps and samples. Two problems of one

@@ -29,6 +29,13 @@ export function keptFloats(taps: Float64Array, factor = 1): Float32Array<ArrayBu
   return floats;
 }
 
+/** How many of them are not 0. */
+export function keptCount(taps: Float64Array): number {
+  let count = 0;
+  for (const tap of keptFloats(taps)) if (tap !== 0) count++;
+  return count;
+}
+
 /** Σ|taps that become 0| */
 export function weightLeftOut(taps: Float64Array, factor = 1): number {
   const least = leastKept(taps, factor);

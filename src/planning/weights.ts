@@ -1,3 +1,4 @@
+import type { Kernel } from "../kernels/kernel.js";
 import { correlationTaps, type Axis, type Problem } from "./problem.js";
 
 /**
@@ -41,60 +42,83 @@ function patternsOf(axis: Axis): { of: Int32Array<ArrayBuffer>; patterns: Patter
   return { of, patterns };
 }
 
-/** Sums of stretches of a list, never as differences: small weights beside large ones would drown. */
+/**
+ * Sums of stretches of lists, never as differences: small weights beside large ones would drown. Lists lie side by side: value k of list i is
+ * values[k · lists + i].
+ */
 class StretchSums {
-  readonly #values: ArrayLike<number>;
+  readonly #values: Float64Array;
+  readonly #lists: number;
+  readonly #length: number;
   readonly #upTo: Float64Array;
   readonly #from: Float64Array;
   #blocks: { length: number; upTo: Float64Array; from: Float64Array } | undefined;
 
-  constructor(values: ArrayLike<number>) {
+  constructor(values: Float64Array, lists: number) {
     this.#values = values;
-    this.#upTo = sumsUpTo(values, values.length);
-    this.#from = sumsFrom(values, values.length);
+    this.#lists = lists;
+    this.#length = values.length / lists;
+    this.#upTo = sumsUpTo(values, lists, this.#length);
+    this.#from = sumsFrom(values, lists, this.#length);
   }
 
-  /** Σ values[before] … values[after − 1]. */
-  inside({ before, after }: Pattern): number {
+  /** Σ values[before] … values[after − 1] of list i. */
+  inside({ before, after }: Pattern, i: number): number {
+    const lists = this.#lists;
     const length = after - before;
     if (length === 0) return 0;
-    if (before === 0) return this.#upTo[after - 1]!;
-    if (after === this.#values.length) return this.#from[before]!;
+    if (before === 0) return this.#upTo[(after - 1) * lists + i]!;
+    if (after === this.#length) return this.#from[before * lists + i]!;
     const { upTo, from } = this.#blocksOf(length);
-    return before % length === 0 ? upTo[after - 1]! : from[before]! + upTo[after - 1]!;
+    const last = upTo[(after - 1) * lists + i]!;
+    return before % length === 0 ? last : from[before * lists + i]! + last;
   }
 
   /** Stretches that touch neither end are all of one length (the image's): two blocks of that length cover each. */
   #blocksOf(length: number): { upTo: Float64Array; from: Float64Array } {
-    if (this.#blocks?.length !== length) this.#blocks = { length, upTo: sumsUpTo(this.#values, length), from: sumsFrom(this.#values, length) };
+    if (this.#blocks?.length !== length) {
+      this.#blocks = { length, upTo: sumsUpTo(this.#values, this.#lists, length), from: sumsFrom(this.#values, this.#lists, length) };
+    }
     return this.#blocks;
   }
 
   /** Σ of all others. */
-  outside({ before, after }: Pattern): number {
-    return (before > 0 ? this.#upTo[before - 1]! : 0) + (after < this.#values.length ? this.#from[after]! : 0);
+  outside({ before, after }: Pattern, i: number): number {
+    return (before > 0 ? this.#upTo[(before - 1) * this.#lists + i]! : 0) + (after < this.#length ? this.#from[after * this.#lists + i]! : 0);
   }
 }
 
-/** Entry k: the sum from the start of its block of `length` values up to value k. */
-function sumsUpTo(values: ArrayLike<number>, length: number): Float64Array {
-  const sums = new Float64Array(values.length);
-  for (let k = 0; k < values.length; k++) sums[k] = (k % length === 0 ? 0 : sums[k - 1]!) + values[k]!;
+/** Entry k: the sum from the start of its block of `length` values up to value k, list by list. */
+function sumsUpTo(values: Float64Array, lists: number, length: number): Float64Array {
+  const sums = values.slice();
+  for (let k = 0, at = 0; at < values.length; k++) {
+    if (k % length === 0) at += lists;
+    else for (let i = 0; i < lists; i++, at++) sums[at] = sums[at - lists]! + values[at]!;
+  }
   return sums;
 }
 
 /** Entry k: the sum from value k to the end of its block. */
-function sumsFrom(values: ArrayLike<number>, length: number): Float64Array {
-  const sums = new Float64Array(values.length);
-  for (let k = values.length - 1; k >= 0; k--) sums[k] = ((k + 1) % length === 0 || k + 1 === values.length ? 0 : sums[k + 1]!) + values[k]!;
+function sumsFrom(values: Float64Array, lists: number, length: number): Float64Array {
+  const sums = values.slice();
+  const count = values.length / lists;
+  for (let k = count - 2; k >= 0; k--) {
+    if ((k + 1) % length === 0) continue;
+    for (let i = 0, at = k * lists; i < lists; i++, at++) sums[at] = sums[at + lists]! + values[at]!;
+  }
   return sums;
 }
 
 /** For one row pattern: the weight inside of each column of taps, and the weight of outside rows that count all the same. */
-function rowSums(problem: Problem, columns: StretchSums[], rows: Pattern): { inside: StretchSums; whole: number } {
-  const inside = new StretchSums(columns.map((column) => column.inside(rows)));
-  const counted = problem.vertical.rule === "renormalised" ? 0 : columns.reduce((sum, column) => sum + column.outside(rows), 0);
-  return { inside, whole: counted };
+function rowSums(problem: Problem, columns: StretchSums, rows: Pattern): { inside: StretchSums; whole: number } {
+  const { taps } = problem.horizontal;
+  const inside = new Float64Array(taps);
+  let counted = 0;
+  for (let i = 0; i < taps; i++) {
+    inside[i] = columns.inside(rows, i);
+    if (problem.vertical.rule !== "renormalised") counted += columns.outside(rows, i);
+  }
+  return { inside: new StretchSums(inside, 1), whole: counted };
 }
 
 /** 2⁻¹⁰⁰: a smaller share of the weight counts as nothing inside (contributions that small may be taken as 0, and Σh ÷ weight must not overflow). */
@@ -102,33 +126,46 @@ const leastShare = 7.888609052210118e-31;
 
 function tabulate(problem: Problem): Weights {
   const { horizontal, vertical, analysis } = problem;
-  const taps = correlationTaps(problem);
-  const columnOf = (i: number): Float64Array => Float64Array.from({ length: vertical.taps }, (_, j) => taps[j * horizontal.taps + i]!);
-  const tapColumns = Array.from({ length: horizontal.taps }, (_, i) => new StretchSums(columnOf(i)));
+  const tapColumns = new StretchSums(correlationTaps(problem), horizontal.taps);
   const rows = patternsOf(vertical);
   const columns = patternsOf(horizontal);
   const everyColumn = { before: 0, after: horizontal.taps };
   const stride = columns.patterns.length;
   const factors = new Float32Array(rows.patterns.length * stride);
+  const least = leastShare * analysis.sum;
   let smallest = Infinity;
-  rows.patterns.forEach((row, r) => {
+  for (const [r, row] of rows.patterns.entries()) {
     const { inside, whole } = rowSums(problem, tapColumns, row);
-    columns.patterns.forEach((column, c) => {
-      const complete = row.after - row.before === vertical.taps && column.after - column.before === horizontal.taps;
-      const found = whole + inside.inside(horizontal.rule === "renormalised" ? column : everyColumn);
-      const weight = found > leastShare * analysis.sum ? found : 0;
+    const completeRows = row.after - row.before === vertical.taps;
+    for (let c = 0; c < stride; c++) {
+      const column = columns.patterns[c]!;
+      const found = whole + inside.inside(horizontal.rule === "renormalised" ? column : everyColumn, 0);
+      const weight = found > least ? found : 0;
       if (weight > 0) smallest = Math.min(smallest, weight);
+      const complete = completeRows && column.after - column.before === horizontal.taps;
       factors[r * stride + c] = complete ? 1 : weight > 0 ? analysis.sum / weight : 0;
-    });
-  });
+    }
+  }
   return { rows: rows.of, columns: columns.of, stride, factors, smallest };
 }
 
-const known = new WeakMap<Problem, Weights>();
+const known = /* @__PURE__ */ new WeakMap<Problem, Weights>();
+
+/** By kernel, the last table that was made, and for what: `explain` and `prepare` often follow each other. */
+const last = /* @__PURE__ */ new WeakMap<Kernel, { axes: string; weights: Weights }>();
+
+const axisKey = ({ rule, count, taps, first, map }: Axis): string => `${JSON.stringify(rule)} ${count} ${taps} ${first} ${map.at(-1)} ${map[0]}`;
 
 export function weightsOf(problem: Problem): Weights {
-  let weights = known.get(problem);
-  if (!weights) known.set(problem, (weights = tabulate(problem)));
+  const found = known.get(problem);
+  if (found) return found;
+  const { kernel } = problem.request;
+  const { width, height } = problem.request;
+  const axes = `${width}×${height} ${problem.reversed} ${axisKey(problem.horizontal)} ${axisKey(problem.vertical)}`;
+  const before = last.get(kernel);
+  const weights = before?.axes === axes ? before.weights : tabulate(problem);
+  last.set(kernel, { axes, weights });
+  known.set(problem, weights);
   return weights;
 }
 
