@@ -25,8 +25,6 @@ export interface ChartOptions {
  *
  * @param crossover its strings are not shown
  * @returns an SVG element with a text alternative, without style sheet, script or identifiers; `chartStyle` gives it its colours
- * @example
- * figure.replaceChildren(crossoverChart(crossover, { document, width: figure.clientWidth }));
  */
 export function crossoverChart(crossover: Crossover, { document, width, earlier }: ChartOptions): SVGSVGElement {
   const [series, before] = [seriesOf(crossover), earlier === undefined ? [] : seriesOf(earlier)];

@@ -35,9 +35,6 @@ const tableHint =
  * The findings as one HTML file that needs nothing else: no script, no fonts, no network.
  *
  * Every string of the findings, whoever wrote it, appears as text.
- *
- * @example
- * await writeFile("report.html", reportHtml({ crossover, profile: engine.profile, document: nodeDocument() }));
  */
 export function reportHtml({ crossover, profile, document, earlier }: Findings): string {
   const drawn = Object.entries(widths).map(([kind, width]) => {

@@ -15,8 +15,7 @@ export interface Answer {
  *
  * @param crossover finished, or what has been measured so far
  * @returns plain text; it holds no string of the crossover but method names and numbers
- * @example
- * answerSentence(crossover); // "From about 9×9 taps on, the FFT is faster than direct sums on this device; the change lies between 7×7 and 11×11."
+ * such as "From about 9×9 taps on, the FFT is faster than direct sums on this device; the change lies between 7×7 and 11×11."
  */
 export function answerSentence(crossover: Crossover): string {
   const { answer, certainty } = answerOf(crossover);
