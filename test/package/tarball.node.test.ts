@@ -39,7 +39,7 @@ describe("the tarball", () => {
     );
     const unexpected = files.filter((path) => !/^(package\.json|README\.md|LICENSE|CHANGELOG\.md|dist\/.+\.(js|d\.ts)|dist\/cli\/LICENCES\.txt)$/.test(path));
     expect(unexpected).toEqual([]);
-    expect(files.filter((path) => /debug|test|bench/.test(path))).toEqual([]);
+    expect(files.filter((path) => /(^|\/)(debug|test|bench)/.test(path))).toEqual([]);
   });
 
   test("every export leads to files that are there and can be imported", () => {
@@ -81,8 +81,24 @@ worker.on("exit", (code) => console.log("ended", code));`);
     expect(stdout).toMatch(/explain/);
   });
 
+  test("the command measures, and writes a profile and a report that need nothing else", () => {
+    const command = join(installation.folder, "node_modules", ".bin", "tapwise");
+    const options = ["--size", "64x48", "--sizes", "3,9,31", "--seconds", "1", "--threads", "2", "--profile", "kiosk.json", "--report", "kiosk.html", "--json"];
+    const { status, stdout, stderr } = spawnSync(command, ["measure", ...options], { cwd: installation.folder, encoding: "utf8" });
+    expect({ status, stderr }).toEqual({ status: 0, stderr: "" });
+    expect(JSON.parse(stdout)).toMatchObject({ profile: { version: 2, threads: 2 }, written: ["kiosk.json", "kiosk.html"] });
+    const report = readFileSync(join(installation.folder, "kiosk.html"), "utf8");
+    expect(report).toContain("<svg");
+    expect(report).not.toMatch(/<script|<link|src=|https?:\/\/(?!www\.w3\.org)/);
+    const explained = spawnSync(command, ["explain", "--size", "64x48", "--kernel", "disk 3", "--threads", "2", "--profile", "kiosk.json", "--json"], {
+      cwd: installation.folder,
+      encoding: "utf8",
+    });
+    expect(JSON.parse(explained.stdout)).toMatchObject({ profile: JSON.parse(stdout).profile.host, notes: [] });
+  });
+
   test("the command's licence texts are those of what is bundled", () => {
     const text = readFileSync(join(installation.folder, "node_modules", "tapwise", "dist", "cli", "LICENCES.txt"), "utf8");
-    for (const name of ["commander", "pngjs"]) expect(text).toMatch(new RegExp(`^${name} ${manifest.devDependencies[name]} \\(MIT\\)$`, "m"));
+    for (const name of ["commander", "pngjs", "cli-progress"]) expect(text).toMatch(new RegExp(`^${name} ${manifest.devDependencies[name]} \\(MIT\\)$`, "m"));
   });
 });
