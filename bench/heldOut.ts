@@ -1,8 +1,10 @@
+import { isExperimentWidth } from "../src/measure/experiments.js";
+
 /**
  * Which problems prices are fitted to and which they are judged by, told apart by the width of the image: even widths are for fitting
  * (bench/fit, src/measure), odd ones are held out (bench/regret). No problem can be among both, however either set is drawn.
  */
-export const isHeldOut = ({ width }: { width: number }): boolean => width % 2 === 1;
+export const isHeldOut = ({ width }: { width: number }): boolean => !isExperimentWidth(width);
 
 /** The nearest even width, at least 2: for experiments that prices are fitted to. */
 export const fittedWidth = (width: number): number => Math.max(2, 2 * Math.round(width / 2));

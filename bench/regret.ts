@@ -1,6 +1,7 @@
 /**
- * `npm run bench:regret [-- --chromium] [--seconds 50] [--problems 420] [--profile file.json …] [--fresh]`: how much time the choice of a method
- * loses, on problems that no price was fitted to. What was measured stays in a file, and further runs go on from there.
+ * `npm run bench:regret [-- --chromium] [--seconds 50] [--problems 420] [--profile file.json …] [--fresh] [--anew] [--judge]`: how much time the
+ * choice of a method loses, on problems that no price was fitted to. What was measured stays in a file and further runs go on from there; --fresh forgets it, --anew
+ * forgets the measured profiles and the planning times, --judge times nothing.
  */
 import { readFileSync } from "node:fs";
 import { parseArgs } from "node:util";
@@ -10,12 +11,12 @@ import { shippedProfiles } from "../src/planning/profile.js";
 import { keepToOneCore } from "./host.js";
 import { makeBundle } from "./regret/bundle.js";
 import { candidateCount, candidates } from "./regret/candidates.js";
-import { bars, judgeAuto, judgeOnce, judgeRuns, measured, missed, summarise, type Named } from "./regret/judge.js";
-import { confirmRegrets, measurePlanning, measureProblems, type Pace } from "./regret/measuring.js";
+import { measured, type Named } from "./regret/judge.js";
+import { judgement } from "./regret/judgement.js";
+import { confirmRegrets, measurePlanning, measureProblems, measureProfiles, type Pace } from "./regret/measuring.js";
 import { openChromium, openNode } from "./regret/places.js";
-import { percent, printBiases, printPlanning, printRegrets, printWorst, type RegretLine } from "./regret/print.js";
+import { percent, printAgreement, printBiases, printPlanning, printRegrets, printWorst } from "./regret/print.js";
 import { openCampaign, saveCampaign, type Campaign } from "./regret/records.js";
-import { summaryOf } from "./regret/statistics.js";
 
 const { values: given } = parseArgs({
   options: {
@@ -24,6 +25,8 @@ const { values: given } = parseArgs({
     problems: { type: "string", default: String(candidateCount) },
     profile: { type: "string", multiple: true, default: [] },
     fresh: { type: "boolean", default: false },
+    anew: { type: "boolean", default: false },
+    judge: { type: "boolean", default: false },
   },
 });
 
@@ -37,19 +40,23 @@ const begun = performance.now();
 const end = given.seconds === undefined ? Infinity : begun + 1000 * numberOf("seconds", given.seconds);
 const wanted = Math.ceil(numberOf("problems", given.problems));
 
-const core = keepToOneCore();
+const core = given.judge ? "" : keepToOneCore();
 await makeBundle();
 const executablePath = given.chromium ? findChromium() : undefined;
 if (given.chromium && executablePath === undefined) throw new Error("No Chromium was found. Install one, or set TAPWISE_CHROMIUM to its path.");
 const place = await (executablePath === undefined ? openNode() : openChromium(executablePath));
 
 const build: Build = "simd";
+/** Of measuring a profile. */
+const repetitions = 10;
 const shipped = shippedProfiles.find((profile) => profile.build === build)!;
 const all = candidates(build, shipped, wanted);
 const campaign = openCampaign(place, build, given.fresh);
+if (given.anew) Object.assign(campaign, { profiles: [], firstSights: [] });
 
 const fromFiles = given.profile.map((path): Named => ({ name: path, profile: JSON.parse(readFileSync(path, "utf8")) as HardwareProfile }));
-const profiles: Named[] = [{ name: "shipped", profile: shipped }, ...fromFiles];
+const measuredHere = (): Named[] => campaign.profiles.map((profile, index) => ({ name: `measured ${index + 1}`, profile }));
+const profiles = (): Named[] => [{ name: "shipped", profile: shipped }, ...measuredHere(), ...fromFiles];
 
 /** Between two writes of the file. */
 const keepEvery = 10_000;
@@ -66,42 +73,34 @@ const pace: Pace = {
 /** Judgement and file. */
 function conclude({ problems, firstSights }: Campaign): void {
   const judgeable = measured(problems, all);
-  const judged = profiles.map((named) => ({ ...named, runs: judgeRuns(judgeable, named.profile) }));
-  const lines = judged.flatMap(({ name, profile, runs }): RegretLine[] => {
-    const limits = name === "shipped" ? bars.shipped : {};
-    return [
-      { name: `${name}, prepared`, summary: summarise(runs), bars: limits },
-      { name: `${name}, single calls`, summary: summaryOf(judgeOnce(judgeable, profile)), bars: limits },
-    ];
-  });
-  lines.push({ name: "auto as it was called, single calls", summary: summaryOf(judgeAuto(judgeable)), bars: {} });
-  console.log();
-  for (const { name, profile, runs } of judged) {
+  const verdict = judgement(judgeable, profiles());
+  for (const { name, profile, runs } of verdict.judged.filter(({ name }) => !/^measured \d/.test(name) || name === "measured 1")) {
     console.log(`\n${name}: the worst twenty`);
     printWorst(runs, profile);
     console.log(`\n${name}: where predictions lean`);
     printBiases(runs, profile);
   }
   console.log();
-  const plans = printPlanning(
-    judgeable.map(({ record: { explain } }) => explain),
-    firstSights,
-  );
+  const explains = judgeable.map(({ record: { explain } }) => explain);
+  const plans = printPlanning(explains, firstSights);
   console.log();
-  printRegrets(lines);
-  if (!plans || lines.some(({ summary, bars: limits }) => missed(summary, limits).length > 0)) process.exitCode = 1;
-  const told = lines.map(({ name, summary }) => ({
-    name,
-    ...Object.fromEntries(Object.entries(summary).map(([part, value]) => [part, Number(value.toFixed(4))])),
-  }));
-  console.log(`\nwritten: ${saveCampaign(place, core, campaign, { regrets: told })}`);
+  printRegrets(verdict.lines);
+  if (verdict.agreement) printAgreement(verdict.agreement, campaign.profiles.length);
+  if (!plans || !verdict.passes) process.exitCode = 1;
+  if (!given.judge) console.log(`\nwritten: ${saveCampaign(place, core, campaign, { regrets: verdict.told })}`);
+}
+
+async function measureAll(): Promise<void> {
+  await measureProblems(place, all, campaign, pace);
+  await measureProfiles(place, campaign, repetitions, pace);
+  await confirmRegrets(place, all, campaign, profiles(), pace);
+  await measurePlanning(place, campaign, pace);
 }
 
 try {
-  await measureProblems(place, all, campaign, pace);
-  await confirmRegrets(place, all, campaign, profiles, pace);
-  await measurePlanning(place, campaign, pace);
+  if (!given.judge) await measureAll();
 } finally {
+  if (!given.judge) saveCampaign(place, core, campaign, {});
   await place.close();
 }
 if (measured(campaign.problems, all).length === 0) throw new Error("No problem was measured: give it more --seconds.");

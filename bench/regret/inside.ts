@@ -1,6 +1,7 @@
 /** Runs where things are timed: bundled with the library's sources as dist/ is, and loaded by Node and by a page alike. */
 import { median } from "simple-statistics";
-import { box, createEngine, type Engine, type Kernel, type Method, type Raster } from "../../src/index.js";
+import { box, createEngine, type Engine, type HardwareProfile, type Kernel, type Method, type Raster } from "../../src/index.js";
+import { measureProfile } from "../../src/measure/index.js";
 import { planesOf } from "../inputs.js";
 import { firstSights, type FirstSight } from "./firstSight.js";
 import { timeOnce, type OnceTook } from "./once.js";
@@ -74,4 +75,12 @@ export async function open(clock: () => number = () => performance.now()): Promi
     explain: (index) => explainMilliseconds(bench, furnished(index)),
     firstSights: (kind) => firstSights((kernel, layout, options) => engine.explain(kernel, layout, options), kind),
   };
+}
+
+/** A profile as a page or a program measures it after loading: in an engine of its own, where nothing has run before. */
+export async function freshProfile(): Promise<HardwareProfile> {
+  const engine = await createEngine();
+  const profile = await measureProfile(engine);
+  engine.dispose();
+  return profile;
 }

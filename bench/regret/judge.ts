@@ -27,7 +27,7 @@ export function measured(records: readonly ProblemRecord[], candidates: readonly
   });
 }
 
-type Measured = ReturnType<typeof measured>[number];
+export type Measured = ReturnType<typeof measured>[number];
 
 const choiceFor = ({ problem, kernel }: Candidate, profile: HardwareProfile, once: boolean): Method =>
   choiceOf(planningProblem(problem, kernel, profile.build), profile, once);

@@ -90,3 +90,11 @@ export async function measurePlanning(place: Place, campaign: Campaign, pace: Pa
     pace.found(campaign);
   }
 }
+
+/** Measures profiles until there are so many. */
+export async function measureProfiles(place: Place, campaign: Campaign, count: number, pace: Pace): Promise<void> {
+  while (campaign.profiles.length < count && pace.goOn()) {
+    campaign.profiles.push(await place.measureProfile());
+    pace.found(campaign);
+  }
+}

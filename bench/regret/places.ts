@@ -1,5 +1,8 @@
+import { execFileSync } from "node:child_process";
+import { fileURLToPath } from "node:url";
 import { chromium } from "playwright-core";
 import { chromiumLaunchOptions } from "../../.build/chromium.mjs";
+import type { HardwareProfile } from "../../src/index.js";
 import { serveRepository } from "../pageServer.js";
 import { processorMilliseconds } from "../processorTime.js";
 import { bundlePath } from "./bundle.js";
@@ -11,19 +14,25 @@ export type Place = {
   name: string;
   clock: "processor time" | "wall clock";
   call<K extends Exclude<keyof Inside, "build">>(name: K, ...parameters: Parameters<Inside[K]>): Promise<Awaited<ReturnType<Inside[K]>>>;
+  /** Measures a profile where nothing has run before: in a new process, in a new page. */
+  measureProfile(): Promise<HardwareProfile>;
   close(): Promise<void>;
 };
 
-type Module = { open(clock?: () => number): Promise<Inside> };
+type Module = { open(clock?: () => number): Promise<Inside>; freshProfile(): Promise<HardwareProfile> };
 type AnyCall = (...parameters: unknown[]) => unknown;
 
+const profileScript = fileURLToPath(new URL("profileInProcess.js", import.meta.url));
+
 export async function openNode(): Promise<Place> {
-  const { open } = (await import(new URL(`../../${bundlePath}`, import.meta.url).href)) as Module;
+  const address = new URL(`../../${bundlePath}`, import.meta.url).href;
+  const { open } = (await import(address)) as Module;
   const inside = await open(processorMilliseconds);
   return {
     name: `Node ${process.versions.node}`,
     clock: "processor time",
     call: async (name, ...parameters) => (await (inside[name] as AnyCall)(...parameters)) as never,
+    measureProfile: async () => JSON.parse(execFileSync(process.execPath, [profileScript, address], { encoding: "utf8" })) as HardwareProfile,
     close: async () => {},
   };
 }
@@ -45,6 +54,16 @@ export async function openChromium(executablePath: string): Promise<Place> {
         name as string,
         parameters as unknown[],
       ] as const) as Promise<never>,
+    async measureProfile() {
+      const context = await browser.newContext();
+      try {
+        const fresh = await context.newPage();
+        await fresh.goto(server.address);
+        return await fresh.evaluate(async (path) => ((await import(/* @vite-ignore */ `${location.origin}/${path}`)) as Module).freshProfile(), bundlePath);
+      } finally {
+        await context.close();
+      }
+    },
     async close() {
       await browser.close();
       server.stop();

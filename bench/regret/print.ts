@@ -3,18 +3,12 @@ import type { HardwareProfile } from "../../src/index.js";
 import { digits, printTable } from "../table.js";
 import type { FirstSight } from "./firstSight.js";
 import type { Bars, Judged } from "./judge.js";
-import { missed } from "./judge.js";
+import { agreementBars, missed } from "./judge.js";
 import { biases, reasonOf, type Prediction, type Reason } from "./reasons.js";
-import type { RegretSummary } from "./statistics.js";
+import type { RegretLine } from "./judgement.js";
+import type { Agreement } from "./statistics.js";
 
 export const percent = (part: number): string => `${(100 * part).toFixed(1)} %`;
-
-/** A line of the table of regrets. */
-export interface RegretLine {
-  name: string;
-  summary: RegretSummary;
-  bars: Bars;
-}
 
 export function printRegrets(lines: readonly RegretLine[]): void {
   const verdict = ({ summary, bars }: RegretLine): string => {
@@ -29,6 +23,13 @@ export function printRegrets(lines: readonly RegretLine[]): void {
       return [line.name, String(problems), ...(["median", "mean", "p90", "p95", "p99", "worst"] as const).map((name) => percent(parts[name])), verdict(line)];
     }),
   );
+}
+
+/** Whether repeated measurements of a profile choose alike. */
+export function printAgreement({ changed, apart }: Agreement, profiles: number): void {
+  const told = (value: number, bar: number): string => `${percent(value)}, at most ${percent(bar)}: ${value <= bar ? "pass" : "MISS"}`;
+  console.log(`\n${profiles} measured profiles choose differently on ${told(changed, agreementBars.changed)}`);
+  console.log(`  methods that they choose there are apart by ${told(apart, agreementBars.apart)}`);
 }
 
 const times = ({ method, measured, stopped, predicted }: Prediction): string[] => [method, `${stopped ? "> " : ""}${digits(measured)}`, digits(predicted)];

@@ -1,4 +1,4 @@
-import type { Method } from "../../src/index.js";
+import type { HardwareProfile, Method } from "../../src/index.js";
 import { operationNames, type Counts } from "../../src/planning/cost.js";
 import { describeHost } from "../host.js";
 import { readResult, saveResult } from "../resultFile.js";
@@ -35,6 +35,8 @@ export interface Campaign {
   operations: string[];
   problems: ProblemRecord[];
   firstSights: FirstSight[];
+  /** As measured here, one after the other. */
+  profiles: HardwareProfile[];
 }
 
 const what = "regret";
@@ -59,10 +61,11 @@ export const bestMilliseconds = (record: ProblemRecord): number => Math.min(...s
 
 /** The campaign that is on file for this host, or a new one. Records of other problems than today's are left out. */
 export function openCampaign(place: { name: string; clock: string }, build: string, fresh: boolean): Campaign {
-  const empty: Campaign = { clock: place.clock, build, seed, operations: operationNames, problems: [], firstSights: [] };
+  const empty: Campaign = { clock: place.clock, build, seed, operations: operationNames, problems: [], firstSights: [], profiles: [] };
   const known = fresh ? undefined : (readResult(what, describeHost(""), place.name) as Campaign | undefined);
   if (known === undefined || known.seed !== seed || known.build !== build) return empty;
-  return { ...empty, problems: known.problems.filter(({ index, name }) => problemAt(index).name === name), firstSights: known.firstSights };
+  const problems = known.problems.filter(({ index, name }) => problemAt(index).name === name);
+  return { ...empty, problems, firstSights: known.firstSights ?? [], profiles: known.profiles ?? [] };
 }
 
 export function saveCampaign(place: { name: string }, core: string, campaign: Campaign, judgement: Record<string, unknown>): string {

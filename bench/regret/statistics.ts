@@ -24,9 +24,10 @@ export function withinNoise(a: Took, b: Took): boolean {
   return Math.abs(a.milliseconds.median - b.milliseconds.median) <= halfWidth(a.milliseconds) + halfWidth(b.milliseconds);
 }
 
-/** The fastest of those that were timed to the end. */
+/** The fastest of those that were timed to the end; of all where none was. */
 export function bestOf<T extends Took>(all: readonly T[]): T {
-  return all.filter((one) => !wasStopped(one)).reduce((best, one) => (typical(one) < typical(best) ? one : best));
+  const timed = all.filter((one) => !wasStopped(one));
+  return (timed.length > 0 ? timed : all).reduce((best, one) => (typical(one) < typical(best) ? one : best));
 }
 
 /** time ÷ time of the best − 1; 0 where the two are nearer than noise. */

@@ -77,7 +77,7 @@ function timeBatch(clock: Bench["clock"], { filter, batch }: Entrant, { image, t
 }
 
 function warm(clock: Bench["clock"], entrant: Entrant, rasters: Rasters): void {
-  for (let spent = 0, run = 0; run < 1 || spent < warmMilliseconds; run += 1) {
+  for (let spent = 0, run = 0; run < (entrant.fastest < patience ? 4 : 1) || spent < warmMilliseconds; run += 1) {
     const time = timeBatch(clock, entrant, rasters);
     spent += time * entrant.batch;
     if (time > 0) entrant.fastest = Math.min(entrant.fastest, time);

@@ -1,0 +1,68 @@
+import {
+  agreementBars,
+  bars,
+  judgeAgreement,
+  judgeAuto,
+  judgeOnce,
+  judgeRuns,
+  missed,
+  summarise,
+  type Bars,
+  type Judged,
+  type Measured,
+  type Named,
+} from "./judge.js";
+import { summaryOf, type Agreement, type RegretSummary } from "./statistics.js";
+
+/** A line of the table of regrets. */
+export interface RegretLine {
+  name: string;
+  summary: RegretSummary;
+  bars: Bars;
+}
+
+export interface Judgement {
+  judged: (Named & { runs: Judged[] })[];
+  lines: RegretLine[];
+  /** Among the profiles that were measured here, where there are several. */
+  agreement?: Agreement;
+  passes: boolean;
+  /** The lines in round numbers, for the file. */
+  told: Record<string, unknown>[];
+}
+
+const isMeasured = ({ name }: Named): boolean => name.startsWith("measured");
+
+const barsFor = (named: Named): Bars => (named.name === "shipped" ? bars.shipped : isMeasured(named) ? bars.measured : {});
+
+/** All profiles on all problems: prepared filters for each profile; single calls for each, those of the measured ones taken together. */
+export function judgement(all: readonly Measured[], profiles: readonly Named[]): Judgement {
+  const judged = profiles.map((named) => ({ ...named, runs: judgeRuns(all, named.profile) }));
+  const lines = judged.map((named): RegretLine => ({ name: `${named.name}, prepared`, summary: summarise(named.runs), bars: barsFor(named) }));
+  const single = (name: string, regrets: readonly number[], limits: Bars): void => {
+    if (regrets.length > 0) lines.push({ name: `${name}, single calls`, summary: summaryOf(regrets), bars: limits });
+  };
+  for (const named of profiles.filter((one) => !isMeasured(one))) single(named.name, judgeOnce(all, named.profile), barsFor(named));
+  const own = profiles.filter(isMeasured);
+  single(
+    "all measured",
+    own.flatMap(({ profile }) => judgeOnce(all, profile)),
+    bars.measured,
+  );
+  single("auto as it was called", judgeAuto(all), bars.shipped);
+  const agreement =
+    own.length > 1
+      ? judgeAgreement(
+          all,
+          own.map(({ profile }) => profile),
+        )
+      : undefined;
+  const agrees = agreement === undefined || (agreement.changed <= agreementBars.changed && agreement.apart <= agreementBars.apart);
+  return {
+    judged,
+    lines,
+    ...(agreement ? { agreement } : {}),
+    passes: agrees && lines.every(({ summary, bars: limits }) => missed(summary, limits).length === 0),
+    told: lines.map(({ name, summary }) => ({ name, ...Object.fromEntries(Object.entries(summary).map(([part, value]) => [part, Number(value.toFixed(4))])) })),
+  };
+}
