@@ -21,8 +21,10 @@ export class MeasuringPage {
     page.on("console", (message) => this.complaints.push(message.text()));
   }
 
-  static async open(browser: Browser, address: string, options: BrowserContextOptions = {}): Promise<MeasuringPage> {
+  /** @param before runs in the page before its own script */
+  static async open(browser: Browser, address: string, options: BrowserContextOptions = {}, before?: () => unknown): Promise<MeasuringPage> {
     const context = await browser.newContext({ viewport: { width: 1100, height: 900 }, ...options });
+    if (before !== undefined) await context.addInitScript(before);
     const opened = new MeasuringPage(await context.newPage(), address);
     await opened.page.goto(address);
     return opened;

@@ -109,11 +109,16 @@ describe("from the button to the files", () => {
     await opened.close();
   });
 
-  test("two threads where the page is isolated and the device has them", async () => {
-    const opened = await MeasuringPage.open(house.browser, house.address);
-    const choices = await opened.page.getByLabel("Work on").locator("option").allInnerTexts();
-    const processors = await opened.page.evaluate(() => navigator.hardwareConcurrency);
-    expect(choices.includes("2 threads")).toBe(processors >= 2);
+  test("an isolated page of a device with four processors offers threads, and measures with them", async () => {
+    const opened = await MeasuringPage.open(house.browser, house.address, {}, () => Object.defineProperty(navigator, "hardwareConcurrency", { value: 4 }));
+    const choice = opened.page.getByLabel("Work on");
+    expect(await choice.locator("option").allInnerTexts()).toEqual(["one thread", "2 threads", "4 threads"]);
+    await choice.selectOption("2 threads");
+    expect(await opened.text("wanted-words")).toContain("2 threads");
+    await opened.measureLittle();
+    expect(((await opened.saved("Save the results")).content as Crossover).threads).toBe(2);
+    expect(((await opened.saved("Save the profile")).content as HardwareProfile).threads).toBe(2);
+    expect(opened.complaints).toEqual([]);
     await opened.close();
   });
 });
@@ -187,6 +192,19 @@ describe("what goes otherwise", () => {
     await opened.page.getByRole("alert").filter({ hasText: "ended early" }).waitFor();
     expect(await opened.text("trouble")).toContain("This browser makes no workers here");
     expect(await opened.button("Measure again").isEnabled()).toBe(true);
+    await opened.close();
+  });
+
+  test("too little memory is told of in words", async () => {
+    const opened = await MeasuringPage.open(house.browser, house.address);
+    await opened.page.evaluate(() => {
+      const script = document.querySelector("#measurer")!;
+      const refusing = 'globalThis.WebAssembly.instantiate = () => Promise.reject(new RangeError("Out of memory"));';
+      script.textContent = refusing + script.textContent;
+    });
+    await opened.start();
+    await opened.page.getByRole("alert").filter({ hasText: "ended early" }).waitFor();
+    expect(await opened.text("trouble")).toContain("This device has too little memory for that picture (Out of memory). Choose a smaller one.");
     await opened.close();
   });
 

@@ -56,10 +56,16 @@ async function measure(job: Job): Promise<void> {
   tell({ kind: "finished", crossover });
 }
 
+/** The engine's errors are for people; the host's own about memory are not. */
+function inWords(error: unknown): string {
+  if (error instanceof RangeError) return `This device has too little memory for that picture (${error.message}). Choose a smaller one.`;
+  return error instanceof Error ? error.message : String(error);
+}
+
 globalThis.addEventListener("message", ({ data }: MessageEvent<ToMeasurer>) => {
   if (data.kind === "stop") return stopping.abort();
   measure(data).catch((error: unknown) => {
     if (stopping.signal.aborted) tell({ kind: "stopped" });
-    else tell({ kind: "failed", message: error instanceof Error ? error.message : String(error) });
+    else tell({ kind: "failed", message: inWords(error) });
   });
 });
