@@ -13,6 +13,8 @@ export interface TableRow {
   chosen: string;
   /** Per cent. */
   regret: string;
+  /** Whether there is any. */
+  costs: boolean;
 }
 
 /** A crossover as rows for people; all times are milliseconds. */
@@ -36,12 +38,19 @@ function tableRow(row: CrossoverRow, methods: readonly Method[]): TableRow {
     times: methods.map((method) => ({
       measured: text(row.milliseconds[method]),
       predicted: text(row.predicted[method]),
-      middleHalf: row.quartiles[method]?.map(threeDigits).join(" … ") ?? "",
+      middleHalf: between(row.quartiles[method]),
     })),
     fastest: shortName(row.fastest),
     chosen: shortName(row.chosen),
     regret: percent(row.regret),
+    costs: row.regret > 0,
   };
+}
+
+/** Both ends, where three digits tell them apart: of a method that was timed once they are one. */
+function between(quartiles: readonly [number, number] | undefined): string {
+  const [low = "", high = ""] = quartiles?.map(threeDigits) ?? [];
+  return low === high ? "" : `${low} … ${high}`;
 }
 
 /**

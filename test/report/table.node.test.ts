@@ -34,7 +34,16 @@ describe("the table says what was measured", () => {
 
   test("regret is in per cent", () => {
     const rows = crossover.rows.slice(0, 3).map((row, k) => ({ ...row, regret: [0, 0.0345, 0.256][k]! }));
-    expect(crossoverTable({ ...crossover, rows }).rows.map(({ regret }) => regret)).toEqual(["0 %", "3.5 %", "26 %"]);
+    const told = crossoverTable({ ...crossover, rows }).rows;
+    expect(told.map(({ regret }) => regret)).toEqual(["0 %", "3.5 %", "26 %"]);
+    expect(told.map(({ costs }) => costs)).toEqual([false, true, true]);
+  });
+
+  test("the middle half of the times has two ends, and is not told of a method that was timed once", () => {
+    const row = { ...crossover.rows[0]!, quartiles: { direct: [1.234, 5.678] as [number, number], fft: [2.5, 2.5] as [number, number] } };
+    const [direct, fft] = crossoverTable({ ...crossover, rows: [row] }).rows[0]!.times;
+    expect(direct?.middleHalf).toBe("1.23 … 5.68");
+    expect(fft?.middleHalf).toBe("");
   });
 
   test("there is none without rows", () => {

@@ -24,13 +24,13 @@ export function sizeTable(crossover: Crossover): string {
   );
 }
 
-/** The fastest time is set in bold. */
-function rowOf({ size, times, fastest, chosen, regret }: TableRow, names: readonly string[]): string {
+/** In bold: the fastest time, and regret. */
+function rowOf({ size, times, fastest, chosen, regret, costs }: TableRow, names: readonly string[]): string {
   const cells = times.map(({ measured, predicted, middleHalf }, column) => {
     const spread = middleHalf === "" ? "" : `<small>${escaped(middleHalf)}</small>`;
     const time = names[column] === fastest ? `<b>${escaped(measured)}</b>` : escaped(measured || "–");
     return `<td class="figure group">${time}${spread}</td><td class="figure">${escaped(predicted || "–")}</td>`;
   });
-  const words = `<td class="group">${escaped(fastest)}</td><td>${escaped(chosen)}</td><td class="figure">${escaped(regret)}</td>`;
+  const words = `<td class="group">${escaped(fastest)}</td><td>${escaped(chosen)}</td><td class="figure">${costs ? `<b>${escaped(regret)}</b>` : escaped(regret)}</td>`;
   return `<tr><th scope="row">${escaped(size)}</th>${cells.join("")}${words}</tr>`;
 }
