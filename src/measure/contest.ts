@@ -6,8 +6,10 @@ import type { ByMethod, CrossoverRow } from "./types.js";
 import type { Stopwatch } from "./stopwatch.js";
 import { kernelOfSize } from "./kernelSizes.js";
 
-/** A method whose time is past this many times that of the fastest is not timed further: it is not where lines cross. */
+/** A method whose times are all past this many times that of the fastest is not timed further: it is not where lines cross. */
 const hopeless = 3;
+/** One time tells nothing: the host may have been busy elsewhere. */
+const leastTimes = 2;
 /** A method that is predicted to take so many times as long is not even begun: predictions are not as wrong as that. */
 const farBeyond = 12;
 /** A method is warm after so long, or so many runs. */
@@ -26,8 +28,12 @@ interface Contender {
   milliseconds: number[];
   /** Of one run, roughly. */
   expected: number;
-  /** Not timed any more: far slower than the fastest, or too large for the memory. */
+  /** Not timed any more: hopeless, far slower by prediction, or too large for the memory. */
   dropped: boolean;
+  /** Far slower than the fastest, beyond doubt. */
+  hopeless: boolean;
+  /** There was no memory for it beside the others. */
+  absent: boolean;
 }
 
 /** What is compared. */
@@ -78,6 +84,8 @@ export class Contest {
       milliseconds: [],
       expected: milliseconds!,
       dropped: milliseconds! > farBeyond * best,
+      hopeless: false,
+      absent: false,
     }));
   }
 
@@ -88,6 +96,11 @@ export class Contest {
   /** Methods that have been timed. */
   get methods(): Method[] {
     return this.#timed.map(({ method }) => method);
+  }
+
+  /** Methods that could not be timed for want of memory. */
+  get absent(): Method[] {
+    return this.#contenders.filter(({ absent }) => absent).map(({ method }) => method);
   }
 
   get #timed(): Contender[] {
@@ -109,7 +122,7 @@ export class Contest {
         await stopwatch.pause();
         const one = this.#prepared(engine, contender, inputs);
         if (one) ready.push(one);
-        else contender.dropped = true;
+        else contender.dropped = contender.absent = true;
       }
       for (const one of ready) await this.#warm(one, stopwatch);
       for (let round = 0; round < rounds; round++) await this.#round(ready, stopwatch);
@@ -153,7 +166,11 @@ export class Contest {
 
   #dropHopeless(): void {
     const best = Math.min(...this.#timed.map(medianOf));
-    for (const contender of this.#timed) contender.dropped ||= medianOf(contender) > hopeless * best;
+    for (const contender of this.#timed) {
+      const { milliseconds } = contender;
+      contender.hopeless ||= milliseconds.length >= leastTimes && Math.min(...milliseconds) > hopeless * best;
+      contender.dropped ||= contender.hopeless;
+    }
   }
 
   /**
@@ -168,7 +185,7 @@ export class Contest {
     const pairs = Math.min(a.milliseconds.length, b.milliseconds.length);
     const ratios = Array.from({ length: pairs }, (_, round) => Math.log(a.milliseconds[round]! / b.milliseconds[round]!)).toSorted((x, y) => x - y);
     const middle = quantile(ratios, 0.5);
-    if (a.dropped || b.dropped) return { middle, low: middle, high: middle };
+    if (a.hopeless || b.hopeless) return { middle, low: middle, high: middle };
     if (pairs < leastPairs) return { middle, low: -Infinity, high: Infinity };
     const outside = Math.max(0, Math.ceil(pairs / 2 - Math.sqrt(pairs)) - 1);
     return { middle, low: ratios[outside]!, high: ratios.at(-1 - outside)! };

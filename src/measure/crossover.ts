@@ -181,10 +181,12 @@ class Search {
     const slow = [...this.#slow].toSorted((a, b) => a - b);
     const [first, last] = [rows[0], rows.at(-1)];
     const leaders = [...new Set(rows.map(({ fastest }) => fastest))];
+    const absent = [...new Set(this.#inOrder.flatMap((contest) => contest.absent))];
     return [
       ...(first && last && crossings.length === 0 ? [noCrossing(first.size, last.size, leaders)] : []),
       ...(step >= 0.5 ? [`The clock has a step of ${Number(step.toPrecision(2))} ms: samples are longer, and fewer.`] : []),
       ...(slow.length > 0 ? [`Not measured for want of time or memory: ${slow.map((size) => `${size}×${size}`).join(", ")}.`] : []),
+      ...(absent.length > 0 ? [`Not timed at some sizes for want of memory beside the others: ${absent.join(", ")}.`] : []),
     ];
   }
 }
