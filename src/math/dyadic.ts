@@ -14,10 +14,21 @@ function greatestCommonDivisor(a: number, b: number): number {
  */
 export function integersOf(values: Float64Array): Float64Array<ArrayBuffer> | undefined {
   let scale = 1;
-  for (let k = 0; k < mostHalvings && !values.every((value) => Number.isInteger(value * scale)); k++) scale *= 2;
-  const integers = Float64Array.from(values, (value) => value * scale);
-  if (!integers.every((value) => Number.isSafeInteger(value))) return undefined;
+  for (let halvings = 0; !allIntegers(values, scale); halvings++) {
+    if (halvings === mostHalvings) return undefined;
+    scale *= 2;
+  }
+  const integers = Float64Array.from(values);
+  for (let k = 0; k < integers.length; k++) integers[k]! *= scale;
   let divisor = 0;
-  for (const value of integers) divisor = greatestCommonDivisor(divisor, Math.abs(value));
+  for (const value of integers) {
+    if (!Number.isSafeInteger(value)) return undefined;
+    divisor = greatestCommonDivisor(divisor, Math.abs(value));
+  }
   return divisor === 0 ? undefined : integers.map((value) => value / divisor);
+}
+
+function allIntegers(values: Float64Array, scale: number): boolean {
+  for (const value of values) if (!Number.isInteger(value * scale)) return false;
+  return true;
 }

@@ -28,11 +28,18 @@ export function bytesThroughout({ request, renormalised }: Problem): boolean {
 
 const powerOfTwo = (exponent: number): number => 1 << exponent;
 
-export function fixedTaps(taps: Float64Array, shift: number): FixedTaps {
+/** Taps rounded to multiples of 2^−shift; nothing where that is off by more than `mostError`, which large kernels show early. */
+export function fixedTaps(taps: Float64Array, shift: number): FixedTaps;
+export function fixedTaps(taps: Float64Array, shift: number, mostError: number): FixedTaps | undefined;
+export function fixedTaps(taps: Float64Array, shift: number, mostError = Infinity): FixedTaps | undefined {
   const scale = powerOfTwo(shift);
-  const integers = taps.map((tap) => Math.round(tap * scale));
+  const integers = new Float64Array(taps.length);
   let error = 0;
-  for (let k = 0; k < taps.length; k++) error += Math.abs(integers[k]! / scale - taps[k]!);
+  for (let k = 0; k < taps.length; k++) {
+    integers[k] = Math.round(taps[k]! * scale);
+    error += Math.abs(integers[k]! / scale - taps[k]!);
+    if (error > mostError) return undefined;
+  }
   return { integers, shift, error };
 }
 
@@ -116,12 +123,13 @@ export function fixedKernel(request: Request): FixedTaps | string {
 }
 
 function findFixedKernel({ kernel, output, tolerance }: Request): FixedTaps | string {
-  const taps = readTaps(kernel).map((tap) => tap * output.gain);
+  const taps = output.gain === 1 ? readTaps(kernel) : readTaps(kernel).map((tap) => tap * output.gain);
   const shift = largestShift(taps, 255, output.offset);
   if (shift === undefined) return "The taps do not fit into 16 bits.";
-  const fixed = fixedTaps(taps, shift);
-  const error = 255 * fixed.error + offsetError(output.offset, shift);
-  if (error > tolerance) return `Taps of 16 bits would be off by ${error.toPrecision(2)} of a level, ${tolerance} is allowed.`;
+  const ofOffset = offsetError(output.offset, shift);
+  const fixed = fixedTaps(taps, shift, (tolerance - ofOffset) / 255);
+  if (!fixed) return `Taps of 16 bits would be off by more than is allowed, ${Number(tolerance.toPrecision(3))} of a level.`;
+  const error = 255 * fixed.error + ofOffset;
   if (error > 0 && exactInFloats(readTaps(kernel), 255)) return "Sums of floats are exact here, and taps of 16 bits are not.";
   return fixed;
 }

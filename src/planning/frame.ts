@@ -6,7 +6,7 @@ import type { Counts } from "./cost.js";
 import type { Axis, Problem } from "./problem.js";
 import { JobRecord } from "./record.js";
 import { sampleFacts } from "./samples.js";
-import { weightsOf } from "./weights.js";
+import { weightBytes, weightsOf } from "./weights.js";
 
 /** Bytes of source samples and of result samples that are staged at a time: they stay in the second cache. Less where memory is short. */
 const mostStagedBytes = 262144;
@@ -116,7 +116,7 @@ export function frameOf(problem: Problem, mostRows: (affordable: number) => numb
   const stagedBytes = Math.min(mostStagedBytes, problem.bytesAvailable / 8);
   const affordable = Math.max(2, Math.floor(stagedBytes / Math.max(1, rowBytes, outputRowBytes)));
   const stagedRows = mostRows(affordable);
-  const weights = problem.renormalised ? weightsOf(problem) : undefined;
+  const weights = problem.renormalised ? weightBytes(problem) : { rows: 0, columns: 0, factors: 0 };
   const haloColumns = horizontal.extended - stretchOf(horizontal).count;
   const keep = request.alpha === "keep";
   const offsets = {
@@ -126,9 +126,9 @@ export function frameOf(problem: Problem, mostRows: (affordable: number) => numb
     constantRow: arrangement.take(extendedStride),
     constantColumn: arrangement.take(16),
     curve: arrangement.take(curveBytes(problem)),
-    weightRows: arrangement.take(weights ? weights.rows.byteLength : 0),
-    weightColumns: arrangement.take(weights ? weights.columns.byteLength : 0),
-    weights: arrangement.take(weights ? weights.factors.byteLength : 0),
+    weightRows: arrangement.take(weights.rows),
+    weightColumns: arrangement.take(weights.columns),
+    weights: arrangement.take(weights.factors),
     keepRow: arrangement.take(keep ? extendedStride : 0),
   };
   const intake: Intake = {

@@ -31,8 +31,9 @@ export function keptFloats(taps: Float64Array, factor = 1): Float32Array<ArrayBu
 
 /** How many of them are not 0. */
 export function keptCount(taps: Float64Array): number {
+  const least = leastKept(taps, 1);
   let count = 0;
-  for (const tap of keptFloats(taps)) if (tap !== 0) count++;
+  for (let k = 0; k < taps.length; k++) if (Math.abs(taps[k]!) >= least && Math.fround(taps[k]!) !== 0) count++;
   return count;
 }
 

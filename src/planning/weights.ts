@@ -24,7 +24,20 @@ interface Pattern {
 }
 
 /** For each result the number of its pattern; patterns in order of appearance. */
-function patternsOf(axis: Axis): { of: Int32Array<ArrayBuffer>; patterns: Pattern[] } {
+interface Patterns {
+  of: Int32Array<ArrayBuffer>;
+  patterns: Pattern[];
+}
+
+const knownPatterns = /* @__PURE__ */ new WeakMap<Axis, Patterns>();
+
+function patternsOf(axis: Axis): Patterns {
+  let found = knownPatterns.get(axis);
+  if (!found) knownPatterns.set(axis, (found = findPatterns(axis)));
+  return found;
+}
+
+function findPatterns(axis: Axis): Patterns {
   const firstInside = axis.map.findIndex((index) => index >= 0);
   const start = firstInside < 0 ? axis.extended : firstInside;
   const end = axis.map.findLastIndex((index) => index >= 0) + 1;
@@ -155,6 +168,12 @@ const known = /* @__PURE__ */ new WeakMap<Problem, Weights>();
 const last = /* @__PURE__ */ new WeakMap<Kernel, { axes: string; weights: Weights }>();
 
 const axisKey = ({ rule, count, taps, first, map }: Axis): string => `${JSON.stringify(rule)} ${count} ${taps} ${first} ${map.at(-1)} ${map[0]}`;
+
+/** Bytes that the table and its indices take, without making them. */
+export function weightBytes({ horizontal, vertical }: Problem): { rows: number; columns: number; factors: number } {
+  const [rows, columns] = [patternsOf(vertical), patternsOf(horizontal)];
+  return { rows: rows.of.byteLength, columns: columns.of.byteLength, factors: 4 * rows.patterns.length * columns.patterns.length };
+}
 
 export function weightsOf(problem: Problem): Weights {
   const found = known.get(problem);
