@@ -66,7 +66,9 @@ class Measurement {
   get notes(): string[] {
     const { step } = this.#stopwatch;
     return [
-      `${this.#experiments} experiments.`,
+      this.#experiments > 0
+        ? `${this.#experiments} experiments.`
+        : `Nothing could be measured in the time: the prices are those of ${this.#alone.profile.host}.`,
       ...(step >= 0.5 ? [`The clock has a step of ${Number(step.toPrecision(2))} ms: fewer and longer samples were taken.`] : []),
       ...(this.#tooLarge > 0 ? [`${this.#tooLarge} experiments needed more memory than the engine may take and were left out.`] : []),
     ];

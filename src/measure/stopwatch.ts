@@ -14,6 +14,9 @@ const restMilliseconds = 12;
 /** A clock whose step is longer than this is waited for: a sample begins when it has just moved. */
 const coarseMilliseconds = 0.05;
 
+/** Samples that the clock spoils are left out; where it spoils more than this many, and this share of all, it is of no use. */
+const mostSpoilt = { count: 8, share: 0.25 };
+
 export interface Sample {
   /** Of one run. */
   milliseconds: number;
@@ -30,17 +33,26 @@ export class Stopwatch {
   readonly #signal: AbortSignal | undefined;
   readonly step: number;
   #rested: number;
+  #shown: number;
+  #elapsed = 0;
+  #taken = 0;
+  #spoilt = 0;
 
   /** @throws ConvolutionError `clock-unusable` */
   constructor(clock: Clock, signal?: AbortSignal) {
     this.#clock = clock;
     this.#signal = signal;
     this.step = clockStep(clock);
-    this.#rested = clock.now();
+    this.#rested = this.#shown = clock.now();
   }
 
+  /** Milliseconds since the stopwatch was made, as far as the clock moved forward: one that is put back adds nothing, so that budgets end. */
   now(): number {
-    return this.#clock.now();
+    const shown = this.#clock.now();
+    if (!Number.isFinite(shown)) return this.#elapsed;
+    this.#elapsed += Math.max(0, shown - this.#shown);
+    this.#shown = shown;
+    return this.#elapsed;
   }
 
   /** About how long a sample of runs takes that last so long each. */
@@ -62,10 +74,10 @@ export class Stopwatch {
   }
 
   /**
-   * Runs a thing again and again until a sample is long enough. Nothing where the clock ran backwards meanwhile.
+   * Runs a thing again and again until a sample is long enough. Nothing where the clock was put back meanwhile.
    *
    * @param expected milliseconds of one run, roughly: bounds how often a clock is asked that stands still
-   * @throws ConvolutionError `clock-unusable` where it does
+   * @throws ConvolutionError `clock-unusable` where it does, or is put back again and again
    */
   sample(run: () => void, expected: number): Sample | undefined {
     const least = this.#least;
@@ -78,9 +90,17 @@ export class Stopwatch {
       runs += often;
       now = this.#clock.now();
     }
-    const milliseconds = now - begun;
+    return this.#sampleOf(runs, now - begun);
+  }
+
+  #sampleOf(runs: number, milliseconds: number): Sample | undefined {
     if (milliseconds === 0) throw standsStill(runs);
-    if (!(milliseconds > 0) || !Number.isFinite(milliseconds)) return undefined;
+    this.#taken++;
+    if (!(milliseconds > 0) || !Number.isFinite(milliseconds)) {
+      this.#spoilt++;
+      if (this.#spoilt > mostSpoilt.count && this.#spoilt > mostSpoilt.share * this.#taken) throw isPutBack(this.#spoilt, this.#taken);
+      return undefined;
+    }
     // Each end lies anywhere within a step: a uniform distribution has a standard deviation of a step through √12.
     return { milliseconds: milliseconds / runs, clockError: this.step / milliseconds / Math.sqrt(6) };
   }
@@ -97,10 +117,7 @@ export class Stopwatch {
       now = this.#clock.now();
     }
     this.#rested = now;
-    if (now === begun) throw standsStill(runs);
-    return now > begun && Number.isFinite(now - begun)
-      ? { milliseconds: (now - begun) / runs, clockError: this.step / (now - begun) / Math.sqrt(6) }
-      : undefined;
+    return this.#sampleOf(runs, now - begun);
   }
 
   /** The time; of a coarse clock, when it has just moved. */
@@ -120,3 +137,10 @@ const standsStill = (runs: number): ConvolutionError =>
     expected: "a clock that moves forward",
     received: "a clock that stands still",
   });
+
+const isPutBack = (spoilt: number, taken: number): ConvolutionError =>
+  new ConvolutionError(
+    "clock-unusable",
+    `The clock went backwards, or told no number, during ${spoilt} of ${taken} samples. Measure on a host whose performance.now() counts.`,
+    { expected: "a clock that moves forward", received: "a clock that goes backwards" },
+  );
