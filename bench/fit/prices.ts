@@ -1,30 +1,23 @@
-import { operationNames, priceOf, type Operation, type Prices } from "../../src/planning/cost.js";
+import { estimate } from "../../src/measure/estimate.js";
+import type { Prices } from "../../src/planning/cost.js";
 import { judgeBy, questionsOf, type Judgement } from "./judge.js";
-import { medianRun, medianSetup, type Timed } from "./measure.js";
-import { fitPrices } from "./solve.js";
-
-/** Operations that only preparing counts; what else it counts has its price from the runs. */
-const setupNames: readonly Operation[] = ["setup", "setupTap", "setupByte"];
-const runNames = operationNames.filter((name) => !setupNames.includes(name));
+import { medianSetup, medianRun, type Timed } from "./measure.js";
 
 const foldCount = 5;
 
+/** Standard errors as shares: of a median of many runs, and of preparations, much of which is JavaScript whose time no count tells. */
+const noise = { run: 0.02, setup: 0.5 };
+
 /**
- * Prices of runs from timed runs, then prices of preparing from what the preparations took beyond those. What no run counted keeps the
- * price that it had: handing work to other threads is measured by `npm run bench:threads`.
+ * Prices from timed runs and preparations, by the estimator of `measureProfile`. What no run counted keeps its proportion to the prices that it had: handing
+ * work to other threads is measured by `npm run bench:threads`.
  */
 export function pricesFrom(timings: readonly Timed[], known: Prices): Prices {
-  const runs = fitPrices(
-    timings.map((timed) => ({ counts: timed.work.run, nanoseconds: medianRun(timed), target: medianRun(timed) })),
-    runNames,
-  );
-  const prices = { ...known, ...runs };
-  const setups = timings.map((timed) => ({
-    counts: timed.work.setup,
-    nanoseconds: medianSetup(timed),
-    target: medianSetup(timed) - priceOf(timed.work.setup, prices),
-  }));
-  return { ...prices, ...fitPrices(setups, setupNames) };
+  const runs = timings.map((timed) => ({ counts: timed.work.run, nanoseconds: medianRun(timed), noise: noise.run }));
+  const setups = timings.map((timed) => ({ counts: timed.work.setup, nanoseconds: medianSetup(timed), noise: noise.setup }));
+  const { prices } = estimate([...runs, ...setups], known);
+  const { handOver, meeting, handedByte } = known;
+  return { ...prices, handOver, meeting, handedByte };
 }
 
 /** Judges every question by prices fitted to the other four fifths. */

@@ -1,5 +1,7 @@
+import { fillWithNoise } from "../math/noise.js";
 import type { MethodPlan } from "../planning/method.js";
 import { problemOf, type Problem, type Request } from "../planning/problem.js";
+import { sampleFacts } from "../planning/samples.js";
 import { execute, install } from "../runtime/execute.js";
 import { Execution } from "../runtime/execution.js";
 import type { Routines } from "../runtime/routines.js";
@@ -24,7 +26,12 @@ const warm = new WeakMap<Routines, Set<string>>();
 
 const arrays = { u8: Uint8Array, u16: Uint16Array, f32: Float32Array } as const;
 
-const zeros = (sample: SampleType, count: number): Uint8Array<ArrayBuffer> | Uint16Array<ArrayBuffer> | Float32Array<ArrayBuffer> => new arrays[sample](count);
+/** Noise goes through every branch of the routines: black would know only the straight part of the sRGB curve. */
+function noise(sample: SampleType, count: number): Uint8Array<ArrayBuffer> | Uint16Array<ArrayBuffer> | Float32Array<ArrayBuffer> {
+  const data = new arrays[sample](count);
+  fillWithNoise(data, sampleFacts[sample].full);
+  return data;
+}
 
 /** The same question for an image that is only as large as mostWork allows. */
 function tiny(request: Request): Request {
@@ -36,7 +43,7 @@ function tiny(request: Request): Request {
 }
 
 /**
- * Runs the routines of a plan on a tiny black image until the JavaScript engine has compiled them for good, where this core has not run
+ * Runs the routines of a plan on a tiny image until the JavaScript engine has compiled them for good, where this core has not run
  * them before. The memory is given back; where there is too little of it, the first run warms them.
  */
 export function warmUp({ build, memory, routines }: Core, plan: MethodPlan, problem: Problem): void {
@@ -50,8 +57,8 @@ export function warmUp({ build, memory, routines }: Core, plan: MethodPlan, prob
   const installed = install([program], memory, routines);
   const execution = new Execution(installed, memory, routines);
   const stride = request.width * request.channels;
-  const source = { data: zeros(request.sample, stride * request.height), stride };
-  const target = { data: zeros(request.output.sample, stride * request.height), stride };
+  const source = { data: noise(request.sample, stride * request.height), stride };
+  const target = { data: noise(request.output.sample, stride * request.height), stride };
   const end = performance.now() + mostMilliseconds;
   for (let run = 0; run < mostRuns && performance.now() < end; run++) execute(execution, source, target);
   memory.release(installed.address, installed.byteLength);

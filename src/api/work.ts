@@ -3,6 +3,7 @@ import { divisionOf } from "../planning/bands.js";
 import type { Prices } from "../planning/cost.js";
 import type { Work } from "../planning/method.js";
 import { variantFor } from "../planning/methods.js";
+import { panelsOf } from "../planning/panels.js";
 import { problemOf, type Crew } from "../planning/problem.js";
 import type { Build, Layout, Method, PrepareOptions } from "../types.js";
 import { checkedLayout, checkedRequest } from "./validate/request.js";
@@ -24,5 +25,5 @@ export function workOf(
   const problem = problemOf(checkedRequest("work", kernel, checkedLayout("work", layout), options), build, Infinity, team?.crew);
   const plan = variantFor(method, problem);
   if (plan.applicable(problem) !== true) return undefined;
-  return team ? divisionOf(plan, problem, team.prices).work : plan.work(problem);
+  return team ? divisionOf(plan, problem, team.prices).work : panelsOf(plan, problem).work;
 }

@@ -79,7 +79,7 @@ export function explanationOf(choice: Choice, problem: Problem, profile: Hardwar
     milliseconds: chosen.milliseconds!,
     setupMilliseconds: chosen.setupMilliseconds!,
     build,
-    profile: profile.host,
+    profile: [profile.host, ...(profile.notes ?? [])].join(". "),
     candidates,
   };
   const print = (): string => printed(data);
