@@ -5,7 +5,7 @@ import { fontSizeFor, frameFor, lineHeight, sizeAxis, textWidth, type Frame } fr
 import { keyEntries, keyMarks, keyRows } from "./chart/key.js";
 import { seriesOf, type Series } from "./chart/points.js";
 import { earlierMarks, endLabels, labelGap, seriesMarks } from "./chart/seriesMarks.js";
-import { sizeTicks, timeTicks } from "./chart/ticks.js";
+import { sizeTicks, timeTicks, withRoom } from "./chart/ticks.js";
 import { bySide, roundDuration } from "./figures.js";
 import { shortName } from "./methodNames.js";
 import { answerSentence } from "./sentences.js";
@@ -70,9 +70,10 @@ export function crossoverChart(crossover: Crossover, { document, width, earlier 
 
 function axes(frame: Frame, { rows }: Crossover, times: readonly number[]): Markish[] {
   const measured = rows.map(({ size }) => size).toSorted((a, b) => a - b);
-  const sizes = sizeTicks(...frame.sizeDomain, measured);
   const words = frame.compact ? String : bySide;
   const { fontSize } = frame;
+  const candidates = sizeTicks(...frame.sizeDomain, measured);
+  const sizes = withRoom(candidates, frame.x, textWidth(words(candidates.at(-1) ?? 0), fontSize) + 4);
   const label = (content: string, x: number, y: number, textAnchor: "start" | "end"): Markish =>
     text([content], { x: { value: [x], scale: null }, y: { value: [y], scale: null }, text: (one: string) => one, textAnchor, fontSize, fillOpacity: 0.85 });
   return [

@@ -108,6 +108,14 @@ describe("what there is, is drawn", () => {
     expect(textsOf(svg)).toContain("measured earlier");
   });
 
+  test("sizes that have no room are not named", () => {
+    const named = (width: number): (string | null)[] =>
+      [...draw(sampleCrossover({ sizes: [1, 3, 9, 31, 127, 511, 1023] }), width).querySelectorAll(".sizes text")].map(({ textContent }) => textContent);
+    expect(named(1200)).toEqual(["3×3", "5×5", "9×9", "15×15", "31×31", "63×63", "127×127", "255×255", "511×511", "1023×1023"]);
+    expect(named(340).length).toBeLessThan(8);
+    expect(named(340).at(-1)).toBe("1023");
+  });
+
   test.each([320, 360, 620, 1200])("at %i pixels everything lies inside", (width) => {
     const svg = draw(sampleCrossover({ methods: ["direct", "separable", "running-sum", "fft"] }), width);
     const height = Number(svg.getAttribute("height"));
