@@ -11,20 +11,17 @@ type Job = Extract<ToMeasurer, { kind: "measure" }>;
 const stopping = new AbortController();
 const tell = (message: FromMeasurer): void => (globalThis as unknown as Worker).postMessage(message, []);
 
-/** Milliseconds between two messages about progress, and between two drawings of the same sizes: often enough to look live, and little work beside what is timed. */
+/** Milliseconds between two messages about progress: often enough to look live. */
 const tellEvery = 300;
-const drawEvery = 1200;
 
-/** Tells how far a step is, and what it has found where that is new. */
+/** Tells how far a step is and what it has found. */
 function teller(step: Step): (done: number, soFar?: Crossover) => void {
-  const last = { told: -Infinity, drawn: -Infinity, sizes: 0 };
+  let last = -Infinity;
   return (done, soFar) => {
     const now = performance.now();
-    if (now - last.told < tellEvery && done < 1) return;
-    last.told = now;
-    const isNew = soFar !== undefined && (soFar.rows.length > last.sizes || now - last.drawn > drawEvery);
-    if (isNew) [last.drawn, last.sizes] = [now, soFar.rows.length];
-    tell({ kind: "progress", step, done, ...(isNew ? { soFar } : {}) });
+    if (now - last < tellEvery && done < 1) return;
+    last = now;
+    tell({ kind: "progress", step, done, ...(soFar === undefined ? {} : { soFar }) });
   };
 }
 

@@ -5,6 +5,7 @@ import { HiddenTime } from "./hiddenTime.js";
 import { startMeasuring, type Measuring } from "./measuring.js";
 import { ProgressView } from "./progressView.js";
 import type { FromMeasurer } from "./protocol.js";
+import { Sparingly } from "./sparingly.js";
 import type { Wanted } from "./wanted.js";
 
 /** What `measureProfile` takes unless told otherwise. */
@@ -33,6 +34,7 @@ export interface SessionEvents {
 class Session {
   readonly #events: SessionEvents;
   readonly #hidden = new HiddenTime();
+  readonly #drawing = new Sparingly();
   readonly #progress: ProgressView;
   readonly #measuring: Measuring;
   readonly #stop = (): void => this.#measuring.stop();
@@ -65,7 +67,7 @@ class Session {
     if (step === "crossover") this.#done = done;
     if (soFar === undefined || soFar.rows.length === 0) return;
     this.#soFar = soFar;
-    this.#events.growing(soFar);
+    this.#drawing.draw(() => this.#events.growing(soFar));
   }
 
   /** What was measured before an early end is of use, and says that it is not all. */
