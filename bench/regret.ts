@@ -1,5 +1,5 @@
 /**
- * `npm run bench:regret [-- --chromium] [--seconds 50] [--problems 420] [--profile file.json …] [--fresh] [--anew] [--judge]`: how much time the
+ * `npm run bench:regret [-- --chromium] [--seconds 50] [--problems 408] [--profile file.json …] [--fresh] [--anew] [--judge]`: how much time the
  * choice of a method loses, on problems that no price was fitted to. What was measured stays in a file and further runs go on from there; --fresh forgets it, --anew
  * forgets the measured profiles and the planning times, --judge times nothing.
  */
@@ -15,7 +15,7 @@ import { measured, type Named } from "./regret/judge.js";
 import { judgement } from "./regret/judgement.js";
 import { confirmRegrets, measurePlanning, measureProblems, measureProfiles, type Pace } from "./regret/measuring.js";
 import { openChromium, openNode } from "./regret/places.js";
-import { percent, printAgreement, printBiases, printPlanning, printRegrets, printWorst } from "./regret/print.js";
+import { printAgreement, printBiases, printPlanning, printRegrets, printWorst } from "./regret/print.js";
 import { openCampaign, saveCampaign, type Campaign } from "./regret/records.js";
 
 const { values: given } = parseArgs({
@@ -105,8 +105,8 @@ try {
 }
 if (measured(campaign.problems, all).length === 0) throw new Error("No problem was measured: give it more --seconds.");
 conclude(campaign);
-const left = all.length - campaign.problems.length;
-if (!pace.goOn())
-  console.log(
-    `The time is over${left > 0 ? `, ${left} problems are left` : ""}: the same command goes on (${percent(campaign.problems.length / all.length)} measured).`,
-  );
+if (!pace.goOn()) {
+  const known = new Set(campaign.problems.map(({ index }) => index));
+  const left = all.filter(({ problem }) => !known.has(problem.index)).length;
+  console.log(`The time is over${left > 0 ? `, ${left} of ${all.length} problems are left` : ""}: the same command goes on.`);
+}

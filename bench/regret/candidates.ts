@@ -15,10 +15,10 @@ export interface Candidate {
 }
 
 /** Problems that take part, a few of which may turn out to take longer than a second. */
-export const candidateCount = 420;
+export const candidateCount = 408;
 
-/** The best method is predicted to take at most this long: predictions are off by a quarter now and then, and a second is the limit. */
-export const mostPredicted = 800;
+/** The best method is predicted to take at most this long: predictions are off by a half now and then, and a second is the limit. */
+export const mostPredicted = 600;
 /** Problems whose best method turns out to take longer than this are dropped. Milliseconds. */
 export const mostMeasured = 1000;
 

@@ -31,6 +31,9 @@ export interface Judgement {
   told: Record<string, unknown>[];
 }
 
+const inRoundNumbers = (parts: object): Record<string, number> =>
+  Object.fromEntries(Object.entries(parts).map(([part, value]) => [part, Number((value as number).toFixed(4))]));
+
 const isMeasured = ({ name }: Named): boolean => name.startsWith("measured");
 
 const barsFor = (named: Named): Bars => (named.name === "shipped" ? bars.shipped : isMeasured(named) ? bars.measured : {});
@@ -63,6 +66,9 @@ export function judgement(all: readonly Measured[], profiles: readonly Named[]):
     lines,
     ...(agreement ? { agreement } : {}),
     passes: agrees && lines.every(({ summary, bars: limits }) => missed(summary, limits).length === 0),
-    told: lines.map(({ name, summary }) => ({ name, ...Object.fromEntries(Object.entries(summary).map(([part, value]) => [part, Number(value.toFixed(4))])) })),
+    told: [
+      ...lines.map(({ name, summary }) => ({ name, ...inRoundNumbers(summary) })),
+      ...(agreement ? [{ name: "agreement", ...inRoundNumbers(agreement) }] : []),
+    ],
   };
 }

@@ -26,9 +26,11 @@ export function printRegrets(lines: readonly RegretLine[]): void {
 }
 
 /** Whether repeated measurements of a profile choose alike. */
-export function printAgreement({ changed, apart }: Agreement, profiles: number): void {
+export function printAgreement({ changed, changedByPairs, apart }: Agreement, profiles: number): void {
   const told = (value: number, bar: number): string => `${percent(value)}, at most ${percent(bar)}: ${value <= bar ? "pass" : "MISS"}`;
-  console.log(`\n${profiles} measured profiles choose differently on ${told(changed, agreementBars.changed)}`);
+  console.log(
+    `\n${profiles} measured profiles do not all choose the same on ${told(changed, agreementBars.changed)} (two of them on ${percent(changedByPairs)})`,
+  );
   console.log(`  methods that they choose there are apart by ${told(apart, agreementBars.apart)}`);
 }
 

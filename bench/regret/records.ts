@@ -9,7 +9,7 @@ import { problemAt, seed } from "./problems.js";
 import { typical, wasStopped, type MethodTook } from "./statistics.js";
 
 /** A method's time with what a run counts, for those who fit prices: pairs [operation by its place in the file's list, count]. Not where it was stopped. */
-export type TimedMethod = MethodTook & { variant: string; run?: number[] };
+export type TimedMethod = MethodTook & { run?: number[] };
 
 /** What was measured on a problem. The problem itself is rebuilt from seed and index. */
 export interface ProblemRecord {
@@ -44,8 +44,9 @@ const what = "regret";
 const pairs = (counts: Counts): number[] => operationNames.flatMap((name, operation) => (counts[name] ? [operation, Number(counts[name].toPrecision(3))] : []));
 
 export function recordOf(took: MethodTook, planned: readonly Planned[]): TimedMethod {
-  const { variant, work } = planned.find(({ method }) => method === took.method)!;
-  return wasStopped(took) ? { ...took, variant } : { ...took, variant, run: pairs(work.run) };
+  if (wasStopped(took)) return took;
+  const { work } = planned.find(({ method }) => method === took.method)!;
+  return { ...took, run: pairs(work.run) };
 }
 
 /** What counts: the second timing where there is one. */

@@ -56,17 +56,31 @@ export function summaryOf(regrets: readonly number[]): RegretSummary {
 export interface Agreement {
   /** Part of the problems on which not all profiles choose the same. */
   changed: number;
+  /** Part of the problems on which one profile chooses otherwise than another, on average over all pairs. */
+  changedByPairs: number;
   /** Of those the largest time of a choice ÷ that of another − 1, 0 where nearer than noise. */
   apart: number;
 }
 
 /** @param choices for each problem what each profile chose */
 export function agreementOf(choices: readonly (readonly MethodTook[])[]): Agreement {
+  const share = (part: number): number => part / choices.length;
   const differing = choices.filter((chosen) => new Set(chosen.map(({ method }) => method)).size > 1);
-  const apart = differing.map((chosen) => {
-    const slowest = chosen.reduce((most, one) => (typical(one) > typical(most) ? one : most));
-    const quickest = chosen.reduce((least, one) => (typical(one) < typical(least) ? one : least));
-    return withinNoise(slowest, quickest) ? 0 : typical(slowest) / typical(quickest) - 1;
-  });
-  return { changed: differing.length / choices.length, apart: Math.max(0, ...apart) };
+  return {
+    changed: share(differing.length),
+    changedByPairs: share(choices.reduce((sum, chosen) => sum + differingPairs(chosen), 0)),
+    apart: Math.max(0, ...differing.map(widestPair)),
+  };
+}
+
+/** Of all pairs of choices the part that differs. */
+function differingPairs(chosen: readonly MethodTook[]): number {
+  const pairs = chosen.flatMap((one, index) => chosen.slice(index + 1).map((other) => one.method !== other.method));
+  return pairs.filter(Boolean).length / pairs.length;
+}
+
+function widestPair(chosen: readonly MethodTook[]): number {
+  const slowest = chosen.reduce((most, one) => (typical(one) > typical(most) ? one : most));
+  const quickest = chosen.reduce((least, one) => (typical(one) < typical(least) ? one : least));
+  return withinNoise(slowest, quickest) ? 0 : typical(slowest) / typical(quickest) - 1;
 }

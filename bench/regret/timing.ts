@@ -17,13 +17,14 @@ export interface Effort {
   turns: [least: number, most: number];
 }
 
-export const firstEffort: Effort = { milliseconds: 350, turns: [5, 15] };
+export const firstEffort: Effort = { milliseconds: 350, turns: [3, 15] };
 /** For what has to be timed again before it counts. */
-export const secondEffort: Effort = { milliseconds: 1200, turns: [9, 31] };
+export const secondEffort: Effort = { milliseconds: 1200, turns: [7, 31] };
 
 /** Batches are far longer than the clock's step. */
 export const shortestMilliseconds = 1;
-const warmMilliseconds = 10;
+const warmMilliseconds = 20;
+const warmRuns = 4;
 /** First runs meet cold caches and code that is only just being compiled for good: none is stopped before this. */
 const patience = 100;
 
@@ -77,7 +78,7 @@ function timeBatch(clock: Bench["clock"], { filter, batch }: Entrant, { image, t
 }
 
 function warm(clock: Bench["clock"], entrant: Entrant, rasters: Rasters): void {
-  for (let spent = 0, run = 0; run < (entrant.fastest < patience ? 4 : 1) || spent < warmMilliseconds; run += 1) {
+  for (let spent = entrant.fastest, run = 0; (run < warmRuns && entrant.fastest < patience) || spent < warmMilliseconds; run += 1) {
     const time = timeBatch(clock, entrant, rasters);
     spent += time * entrant.batch;
     if (time > 0) entrant.fastest = Math.min(entrant.fastest, time);

@@ -71,11 +71,13 @@ describe("repeated profiles", () => {
       [direct, fft, direct],
     ];
     expect(agreementOf(choices).changed).toBe(0.5);
+    // Of the second three two pairs of three differ.
+    expect(agreementOf(choices).changedByPairs).toBeCloseTo(1 / 3, 12);
     expect(agreementOf(choices).apart).toBeCloseTo(0.08, 12);
   });
 
   test("choices nearer than noise are not apart", () => {
-    expect(agreementOf([[direct, separable]])).toEqual({ changed: 1, apart: 0 });
+    expect(agreementOf([[direct, separable]])).toEqual({ changed: 1, changedByPairs: 1, apart: 0 });
   });
 });
 
