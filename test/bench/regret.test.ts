@@ -7,6 +7,7 @@ import { choiceOf, planningProblem, predictedRun } from "../../bench/regret/plan
 import { problemAt } from "../../bench/regret/problems.js";
 import { freshKernel } from "../../bench/regret/taps.js";
 import { createEngine } from "../../src/index.js";
+import { experiments } from "../../src/measure/experiments.js";
 import { shippedProfiles } from "../../src/planning/profile.js";
 
 const shipped = shippedProfiles.find(({ build }) => build === "simd")!;
@@ -19,6 +20,7 @@ describe("problems that are judged", () => {
         .filter(({ layout }) => isHeldOut(layout))
         .map(({ name }) => name),
     ).toEqual([]);
+    expect([...experiments()].filter(({ layout }) => isHeldOut(layout)).map(({ name }) => name)).toEqual([]);
     expect(all.filter(({ problem: { layout } }) => !isHeldOut(layout)).map(({ problem }) => problem.name)).toEqual([]);
     fc.assert(
       fc.property(fc.double({ min: 0, max: 1e7, noNaN: true }), (width) => {
