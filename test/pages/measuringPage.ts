@@ -71,10 +71,16 @@ export class MeasuringPage {
     return this.page.locator(`#${id}`).innerText();
   }
 
-  /** What a button saves: its name and what it holds. */
-  async saved(button: string): Promise<{ name: string; content: unknown }> {
+  /** The file that a button saves: its name and its text. */
+  async savedText(button: string): Promise<{ name: string; text: string }> {
     const [download] = await Promise.all([this.page.waitForEvent("download"), this.button(button).click()]);
-    return { name: download.suggestedFilename(), content: JSON.parse(await readFile(await download.path(), "utf8")) };
+    return { name: download.suggestedFilename(), text: await readFile(await download.path(), "utf8") };
+  }
+
+  /** The same of a JSON file: what it holds. */
+  async saved(button: string): Promise<{ name: string; content: unknown }> {
+    const { name, text } = await this.savedText(button);
+    return { name, content: JSON.parse(text) };
   }
 
   async choose(name: string, content: string | Buffer): Promise<void> {

@@ -165,8 +165,10 @@ describe("by keyboard alone", () => {
     expect(await focused(page)).toBe("save-results");
     const [download] = await Promise.all([page.waitForEvent("download"), page.keyboard.press("Enter")]);
     expect(download.suggestedFilename()).toMatch(/^tapwise-results-/);
-    await page.keyboard.press("Tab");
-    await page.keyboard.press("Tab");
+    for (const next of ["save-profile", "save-report", "choose-earlier"]) {
+      await page.keyboard.press("Tab");
+      expect(await focused(page)).toBe(next);
+    }
     const [chooser] = await Promise.all([page.waitForEvent("filechooser"), page.keyboard.press("Space")]);
     expect(chooser.isMultiple()).toBe(false);
     await opened.close();

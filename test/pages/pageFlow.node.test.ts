@@ -73,6 +73,12 @@ describe("from the button to the files", () => {
     expect(engine.profile.nanoseconds).toEqual((content as HardwareProfile).nanoseconds);
     engine.dispose();
 
+    const report = await opened.savedText("Save a report");
+    expect(report.name).toMatch(/^tapwise-report-\d{4}-\d{2}-\d{2}-160x120x4-u8\.html$/);
+    expect(report.text).toMatch(/^<!doctype html>/);
+    expect(report.text).toContain(crossover.host);
+    expect(report.text).toContain("<svg");
+
     expect(opened.complaints).toEqual([]);
     await opened.close();
   });
@@ -136,6 +142,24 @@ describe("what goes otherwise", () => {
     expect((content as Crossover).notes.join()).toMatch(/Stopped at \d+ %/);
     expect(await opened.text("notes")).toContain("kernel sizes are missing");
     expect(await opened.text("told")).toMatch(/^Stopped\./);
+    await opened.close();
+  });
+
+  test("a worker that does not hear is ended, and what it found before stays", async () => {
+    const opened = await MeasuringPage.open(house.browser, house.address);
+    await opened.page.evaluate(() => {
+      const script = document.querySelector("#measurer")!;
+      const deaf =
+        'const listen = addEventListener; globalThis.addEventListener = (kind, heard) => listen(kind, (event) => event.data.kind !== "stop" && heard(event));';
+      script.textContent = deaf + script.textContent;
+    });
+    await opened.chooseLittle();
+    await opened.page.getByLabel("Take").selectOption({ index: 2 });
+    await opened.start();
+    await opened.untilGrowing();
+    await opened.button("Stop").click();
+    await opened.untilDone();
+    expect(await opened.text("notes")).toMatch(/Stopped at \d+ %/);
     await opened.close();
   });
 

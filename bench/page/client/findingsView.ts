@@ -64,6 +64,11 @@ export class FindingsView {
     drawChart(element("chart"), crossover, this.#earlier);
   }
 
+  /** What is compared with. */
+  get earlier(): Crossover | undefined {
+    return this.#earlier;
+  }
+
   /** What is told to who does not see the chart. */
   get verdict(): string {
     return [element("verdict").textContent, element("difference").textContent].filter((words) => words !== "").join(" ");

@@ -1,7 +1,8 @@
 /** The page: what was asked for, the measurement under way, what was found, what it is compared with. */
 import type { HardwareProfile } from "../../../src/index.js";
 import type { Crossover } from "../../../src/measure/index.js";
-import { download, fileName } from "./download.js";
+import { reportHtml } from "../../../src/report/report.js";
+import { download, jsonFile, nameOf, type SavedFile } from "./download.js";
 import { EarlierView } from "./earlierView.js";
 import { element, say } from "./element.js";
 import { FindingsView } from "./findingsView.js";
@@ -21,8 +22,13 @@ const remembered = new Remembered();
 const findings = new FindingsView();
 const earlier = new EarlierView((results) => findings.compareWith(results), tell);
 
+interface Measured {
+  crossover: Crossover;
+  profile: HardwareProfile;
+}
+
 /** The last measurement that gave something: what is on show, and what is saved. */
-let last: { crossover: Crossover; profile: HardwareProfile } | undefined;
+let last: Measured | undefined;
 
 function start(wanted: Wanted): void {
   form.rest();
@@ -47,16 +53,23 @@ function ended({ crossover, profile, stopped, trouble }: Ending): void {
   if (trouble === undefined) tell(`${stopped ? "Stopped." : "Done."} ${crossover === undefined ? "" : findings.verdict}`);
 }
 
-function save(kind: "results" | "profile"): void {
-  if (last === undefined) return;
-  const { crossover, profile } = last;
-  if (kind === "profile") return download(profile, fileName(kind, profile.date));
-  const { width, height, channels, sample } = crossover.layout;
-  download(crossover, fileName(kind, crossover.date, `${width}x${height}x${channels}-${sample}`));
+/** What was measured last, as the file that a button saves. */
+const files: Record<"results" | "profile" | "report", (measured: Measured) => SavedFile> = {
+  results: ({ crossover }) => jsonFile(nameOf("results", crossover.date, layoutOf(crossover)), crossover),
+  profile: ({ profile }) => jsonFile(nameOf("profile", profile.date), profile),
+  report: ({ crossover, profile }) => ({
+    name: `${nameOf("report", crossover.date, layoutOf(crossover))}.html`,
+    mediaType: "text/html",
+    text: reportHtml({ crossover, profile, document, ...(findings.earlier === undefined ? {} : { earlier: findings.earlier }) }),
+  }),
+};
+
+function layoutOf({ layout: { width, height, channels, sample } }: Crossover): string {
+  return `${width}x${height}x${channels}-${sample}`;
 }
 
 say(surroundingsInWords(), element("surroundings"));
 form.onSubmit(start);
 earlier.listen();
-element("save-results").addEventListener("click", () => save("results"));
-element("save-profile").addEventListener("click", () => save("profile"));
+for (const kind of ["results", "profile", "report"] as const)
+  element(`save-${kind}`).addEventListener("click", () => last !== undefined && download(files[kind](last)));
