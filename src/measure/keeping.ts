@@ -70,14 +70,23 @@ export function keepProfile(profile: HardwareProfile, store?: ProfileStore): voi
 export function keptProfile(engine: Pick<Engine, "build" | "threads">, store?: ProfileStore): HardwareProfile | undefined {
   const place = storeOf("keptProfile", store);
   const key = keyOf(engine);
-  const text = place.getItem(key);
-  if (text === null) return undefined;
   try {
-    const profile = checkedProfile(text.length > mostLetters ? undefined : JSON.parse(text));
-    if (keyOf(profile) === key) return profile;
-  } catch {
-    // What is no profile is of no use to anybody.
+    const text = place.getItem(key);
+    if (text === null) return undefined;
+    const profile = profileIn(text);
+    if (profile && keyOf(profile) === key) return profile;
+    place.removeItem(key);
+    return undefined;
+  } catch (cause) {
+    throw nowhere("keptProfile", cause);
   }
-  place.removeItem(key);
-  return undefined;
+}
+
+/** What is no profile is of no use to anybody. */
+function profileIn(text: string): HardwareProfile | undefined {
+  try {
+    return checkedProfile(text.length > mostLetters ? undefined : JSON.parse(text));
+  } catch {
+    return undefined;
+  }
 }

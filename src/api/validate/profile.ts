@@ -45,7 +45,8 @@ function number(value: unknown, what: string, largest = Number.MAX_VALUE): numbe
 function list<T>(given: unknown, what: string, longest: number, read: (entry: unknown, what: string) => T): T[] {
   if (!Array.isArray(given)) refuse(`${what} is ${shownType(given)}`, "an array");
   if (given.length > longest) refuse(`${what} has ${given.length} entries`, `at most ${longest}`);
-  return given.map((entry: unknown, index) => read(entry, `${what}[${index}]`));
+  // Holes are entries too, which map would pass over.
+  return Array.from(given, (entry: unknown, index) => read(entry, `${what}[${index}]`));
 }
 
 function methodOf(value: unknown, what: string): Method {
