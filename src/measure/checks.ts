@@ -26,7 +26,14 @@ function problems(): Experiment[] {
 const rounds = 2;
 
 /** Holds the prices against runs that they were not fitted to, as many as the time allows. */
-export async function timeChecks(engine: Engine, prices: Prices, inputs: Inputs, stopwatch: Stopwatch, until: number): Promise<ProfileCheck[]> {
+export async function timeChecks(
+  engine: Engine,
+  prices: Prices,
+  inputs: Inputs,
+  stopwatch: Stopwatch,
+  until: number,
+  progress: () => void,
+): Promise<ProfileCheck[]> {
   const checks: ProfileCheck[] = [];
   for (const problem of problems()) {
     const { name, layout, kernel, options } = problem;
@@ -38,7 +45,7 @@ export async function timeChecks(engine: Engine, prices: Prices, inputs: Inputs,
     const timed = begin(engine, problem, inputs);
     if (!timed) continue;
     try {
-      await timeInTurns([timed], rounds, () => predicted, stopwatch);
+      await timeInTurns([timed], rounds, () => predicted, stopwatch, progress);
     } finally {
       timed.filter.dispose();
     }

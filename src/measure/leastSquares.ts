@@ -48,6 +48,14 @@ function solved({ side, values }: Gram, right: ArrayLike<number>): Float64Array 
   return x;
 }
 
+/** log |A| of a positive definite matrix. */
+export function logDeterminant(gram: Gram): number {
+  const { side, values } = factorOf(gram);
+  let sum = 0;
+  for (let i = 0; i < side; i++) sum += 2 * Math.log(values[i * side + i]!);
+  return sum;
+}
+
 /** The inverse of a positive definite matrix. */
 export function inverseOf(gram: Gram): Gram {
   const { side } = gram;

@@ -14,7 +14,7 @@ import { Inputs } from "./inputs.js";
 import { checkedSignal } from "./signal.js";
 import { Stopwatch } from "./stopwatch.js";
 import { timeTeam } from "./team.js";
-import { begin, summed, timeInTurns, type Timed } from "./timing.js";
+import { begin, prepared, summed, timeInTurns, type Timed } from "./timing.js";
 import type { MeasureProfileOptions } from "./types.js";
 
 const defaultMilliseconds = 2000;
@@ -27,8 +27,8 @@ const experimenting = 0.9;
 const experimentingAlone = 0.75;
 
 /** Experiments that are timed in turns, and how often each. */
-const batch = 6;
-const rounds = 3;
+const batch = 8;
+const rounds = 5;
 
 /** Where time is left when all experiments were made, they are made again, so often at most. */
 const mostVisits = 4;
@@ -36,8 +36,8 @@ const mostVisits = 4;
 /** Predictions should be good for these: every third of the experiments that there are. */
 const targetStride = 3;
 
-/** A price is called measured where its standard error is below this share of it. */
-const measuredSpread = 0.25;
+/** A price is called measured where observing has brought its standard error below this share of what it was before. */
+const measuredShare = 0.6;
 
 /** Of one preparation: it is timed once, and much of it is JavaScript whose time no count tells. */
 const preparationNoise = 0.5;
@@ -92,8 +92,9 @@ class Measurement {
     const targets = candidates.filter((_, index) => index % targetStride === 0);
     let left = candidates;
     let visits = 0;
-    let found = estimate(this.#observations, this.#known);
-    while (left.length > 0 && this.#stopwatch.now() < until) {
+    let found = estimate(this.#observations, this.#known, false);
+    // However short the time is, a few experiments are made.
+    while (left.length > 0 && (this.#experiments === 0 || this.#stopwatch.now() < until)) {
       const chosen = mostInformative(left, targets, found, batch, (run) => rounds * this.#stopwatch.sampleMilliseconds(run));
       const remaining = until - this.#stopwatch.now();
       const affordable = chosen.filter((index, order) => order === 0 || this.#batchMilliseconds(left[index]!, found) < remaining / batch);
@@ -104,9 +105,9 @@ class Measurement {
       );
       left = left.filter((_, index) => !chosen.includes(index));
       if (left.length === 0 && ++visits < mostVisits) left = candidates;
-      found = estimate(this.#observations, this.#known);
+      found = estimate(this.#observations, this.#known, false);
     }
-    return found;
+    return estimate(this.#observations, this.#known);
   }
 
   #batchMilliseconds({ counts }: Candidate, { prices }: Estimate): number {
@@ -123,9 +124,8 @@ class Measurement {
     }
     const timed = [...candidates.keys()];
     try {
-      await timeInTurns(timed, rounds, (one) => priceOf(candidates.get(one)!.counts, prices) / 1e6, this.#stopwatch);
+      await timeInTurns(timed, rounds, (one) => priceOf(candidates.get(one)!.counts, prices) / 1e6, this.#stopwatch, progress);
       for (const [one, candidate] of candidates) this.#observe(one, candidate);
-      progress();
     } finally {
       for (const { filter } of timed) filter.dispose();
     }
@@ -137,14 +137,16 @@ class Measurement {
     this.#experiments++;
     this.#observations.push({ counts, nanoseconds: sum.milliseconds * 1e6, noise: sum.noise });
     const begun = this.#stopwatch.now();
-    this.#alone.prepare(kernel, layout, options).dispose();
+    const again = prepared(this.#alone, { layout, kernel, options });
     const milliseconds = this.#stopwatch.now() - begun;
+    if (!again) return;
+    again.dispose();
     const { step } = this.#stopwatch;
     if (milliseconds > 2 * step) this.#observations.push({ counts: setup, nanoseconds: milliseconds * 1e6, noise: preparationNoise });
   }
 
-  async checks(estimated: Estimate, until: number): Promise<HardwareProfile["checks"]> {
-    return timeChecks(this.#alone, estimated.prices, this.#inputs, this.#stopwatch, until);
+  async checks(estimated: Estimate, until: number, progress: () => void): Promise<HardwareProfile["checks"]> {
+    return timeChecks(this.#alone, estimated.prices, this.#inputs, this.#stopwatch, until, progress);
   }
 
   /** What handing work to other threads costs, where the engine has any. */
@@ -157,8 +159,8 @@ class Measurement {
 
 const rounded = (value: number, digits: number): number => Number(value.toPrecision(digits));
 
-function profileFrom(engine: Engine, { prices, spread }: Estimate, checks: HardwareProfile["checks"], notes: string[]): HardwareProfile {
-  const measured = operationNames.filter((name) => spread[name] < measuredSpread && prices[name] > 0);
+function profileFrom(engine: Engine, { prices, spread, unobserved }: Estimate, checks: HardwareProfile["checks"], notes: string[]): HardwareProfile {
+  const measured = operationNames.filter((name) => spread[name] < measuredShare * unobserved && prices[name] > 0);
   const { verdicts } = engine.profile;
   return {
     version: 2,
@@ -197,7 +199,7 @@ export async function profileBy(clock: Clock, engine: Engine, given: MeasureProf
     const team = engine.threads > 1;
     let found = await measurement.experiment(candidates, begun + (team ? experimentingAlone : experimenting) * milliseconds, progress);
     if (team) found = await measurement.withTeam(insides, found, begun + experimenting * milliseconds);
-    const checks = await measurement.checks(found, begun + milliseconds);
+    const checks = await measurement.checks(found, begun + milliseconds, progress);
     onProgress?.(1);
     return profileFrom(engine, found, checks, measurement.notes);
   } finally {
