@@ -53,8 +53,8 @@ export const filters: readonly Choice<boolean>[] = [
 
 export const durations: readonly Choice<number>[] = [
   { value: 4_000, words: "about 5 seconds, a first look", inSentence: "about 5 seconds" },
-  { value: 12_000, words: "about 15 seconds", inSentence: "about 15 seconds", usual: true },
-  { value: 60_000, words: "about a minute, for small differences", inSentence: "about a minute" },
+  { value: 28_000, words: "about half a minute", inSentence: "about half a minute", usual: true },
+  { value: 118_000, words: "about two minutes, for slow devices", inSentence: "about two minutes" },
 ];
 
 /** One, two, and all that the device says it has. */
