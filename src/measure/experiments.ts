@@ -62,6 +62,7 @@ const rgba = ["u8", 4] as const;
 const f32 = ["f32", 1] as const;
 const planes = ["f32", 4] as const;
 const u16 = ["u16", 1] as const;
+const rgba16 = ["u16", 4] as const;
 const plain: PrepareOptions = { alpha: "none" };
 /** Bytes by way of floats. */
 const floats: PrepareOptions = { tolerance: 0 };
@@ -84,6 +85,8 @@ const lines: readonly Line[] = [
   ["running-sum", "box", [9], [medium, large], [rgba], plain],
   ["running-sum", "box", [9], [medium], [u8], { output: { sample: "f32" } }],
   ["running-sum", "box", [9], [large], [u16, f32]],
+  ["running-sum", "box", [9], [small, medium], [rgba16, planes], plain],
+  ["running-sum", "box", [63], [small], [u16, f32]],
   ["fft", "any", [9, 31], [small, medium, large], [f32]],
   ["fft", "any", [31], [small, medium], [u8, rgba], plain],
   ["fft", "any", [63], [medium], [f32, rgba], plain],
@@ -92,6 +95,8 @@ const lines: readonly Line[] = [
   ["direct", "any", [3], [medium], [f32], { output: { sample: "u8" } }],
   ["direct", "any", [3], [medium], [f32], { output: { sample: "u16" } }],
   ["direct", "any", [3], [small, medium], [rgba, planes]],
+  ["direct", "any", [3], [small, medium], [f32], { border: "renormalised" }],
+  ["separable", "bell", [15], [medium], [rgba], { border: "renormalised", ...plain }],
   ["separable", "bell", [9], [medium], [rgba, planes]],
   ["direct", "any", [3], [small, medium], [u8, f32, u16], { light: "linear" }],
   ["fft", "any", [31], [medium], [rgba], { alpha: "keep" }],

@@ -6,10 +6,10 @@ import type { Operation } from "../planning/cost.js";
  */
 export const groups: readonly (readonly Operation[])[] = [
   ["run", "step", "row", "haloPixel", "keptPixel"],
-  ["enter_u8", "enter_u16", "enter_f32", "leave_u8", "leave_u16", "leave_f32", "alphaPixel", "tableSample", "curveSample"],
+  ["enter_u8", "enter_u16", "enter_f32", "leave_u8", "leave_u16", "leave_f32", "alphaPixel", "weighedSample", "tableSample", "curveSample"],
   ["directTap", "directEdgeTap", "directLoop", "listedTap", "rowTap", "rowLoop", "columnTap", "columnLoop"],
   ["listedPair", "pairSample", "byteResult", "pairTap", "pairLoop", "wordTap", "wordSample", "pairRowTap"],
-  ["byteColumnSum", "byteRowSum", "integerSum", "floatSum"],
+  ["byteColumnSum", "byteRowSum", "integerColumnSum", "integerSum", "floatColumnSum", "floatSum"],
   ["planeSample", "columnPass", "rowPass"],
   ["handOver", "meeting", "handedByte"],
   ["setup", "setupTap", "setupByte"],

@@ -22,8 +22,9 @@ export interface Choice {
   verdict?: Verdict;
 }
 
-/** Two costs nearer than a hundredth, or than a microsecond, are a tie: no profile predicts better. */
-const tie = { share: 0.01, milliseconds: 0.001 };
+/** Two costs nearer than a hundredth, or than what a call costs, are a tie: no profile predicts better. */
+const tieShare = 0.01;
+const tieOf = (prices: Prices): number => prices.run / 1e6;
 
 function price(plan: MethodPlan, problem: Problem, profile: HardwareProfile): Candidate {
   const applies = plan.applicable(problem);
@@ -49,9 +50,9 @@ function price(plan: MethodPlan, problem: Problem, profile: HardwareProfile): Ca
 const cost = (candidate: Candidate, once: boolean): number => candidate.milliseconds! + (once ? candidate.setupMilliseconds! : 0);
 
 /** The cheaper one; of two that tie the one with the smaller error bound, then with fewer bytes. */
-function better(a: Priced, b: Priced, once: boolean): Priced {
+function better(a: Priced, b: Priced, once: boolean, prices: Prices): Priced {
   const [costA, costB] = [cost(a.candidate, once), cost(b.candidate, once)];
-  if (Math.abs(costA - costB) > Math.max(tie.milliseconds, tie.share * Math.min(costA, costB))) return costA < costB ? a : b;
+  if (Math.abs(costA - costB) > Math.max(tieOf(prices), tieShare * Math.min(costA, costB))) return costA < costB ? a : b;
   if (a.candidate.errorBound !== b.candidate.errorBound) return a.candidate.errorBound! < b.candidate.errorBound! ? a : b;
   return a.candidate.bytes! <= b.candidate.bytes! ? a : b;
 }
@@ -92,7 +93,7 @@ export function choose(problem: Problem, profile: HardwareProfile, once: boolean
   if (open.length === 0) throw outOfMemory(candidates, problem);
   const measured = open.find(({ plan }) => plan.name === verdict?.method);
   if (measured && verdict) return { ...outcome(measured), verdict };
-  return outcome(open.reduce((a, b) => better(a, b, once)));
+  return outcome(open.reduce((a, b) => better(a, b, once, profile.nanoseconds as Prices)));
 }
 
 function forced(all: Priced[], method: Method, problem: Problem): Priced {

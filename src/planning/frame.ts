@@ -278,17 +278,19 @@ export function frameCounts(problem: Problem, entered: number, steps: number): C
   const { horizontal, vertical, channels, request } = problem;
   const stretch = stretchOf(horizontal);
   const results = horizontal.count * vertical.count;
-  const read = entered * horizontal.extended;
+  // What stands beside the stretch is copied from converted pixels.
+  const read = entered * (stretch.count || horizontal.extended);
   const linear = request.light === "linear";
   const byTable = linear && sampleFacts[request.sample].integer;
   return {
     run: 1,
     step: steps,
     row: vertical.count,
-    [`enter_${request.sample}`]: entered * horizontal.extended * channels,
+    [`enter_${request.sample}`]: read * channels,
     [`leave_${request.output.sample}`]: results * channels,
     haloPixel: entered * (horizontal.extended - stretch.count),
     alphaPixel: request.alpha === "none" ? 0 : read + results,
+    weighedSample: problem.renormalised ? results * channels : 0,
     tableSample: byTable ? read * problem.colours : 0,
     curveSample: linear ? (results + (byTable ? 0 : read)) * problem.colours : 0,
   };

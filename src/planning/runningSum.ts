@@ -2,9 +2,10 @@ import * as field from "../generated/record.js";
 import { gamma } from "../math/rounding.js";
 import { outputBound, sumError, underflow, type MethodError } from "./accuracy.js";
 import { rowStride } from "./arrangement.js";
+import type { Counts } from "./cost.js";
 import { constantPixels, frameCounts, frameOf, programOf } from "./frame.js";
 import type { MethodPlan } from "./method.js";
-import { correlationTaps, type Problem } from "./problem.js";
+import { correlationTaps, vectorFloats, type Problem } from "./problem.js";
 import { sampleFacts } from "./samples.js";
 import { ringTables, sweepCalls, sweepFields, sweepStagedRows, sweepSteps, type SweepFrame } from "./sweeps.js";
 
@@ -73,6 +74,21 @@ function windowScale({ horizontal, vertical }: Problem): number {
 /** Position inside its block of the first sample that is read, blocks being counted from image sample 0. */
 const phase = (first: number, taps: number): number => ((first % taps) + taps) % taps;
 
+/** Sums that move along a row at the same time: one a channel, but four channels are one vector. */
+const chains = (problem: Problem): number => (problem.channels === 4 && vectorFloats(problem) === 4 ? 1 : problem.channels);
+
+/** Down the columns of the source first, then along the rows of results. */
+function integerCounts(problem: Problem, { intake }: RunningSumFrame): Counts {
+  const { horizontal, vertical, channels } = problem;
+  return { integerColumnSum: vertical.extended * intake.columns * channels, integerSum: vertical.count * horizontal.extended * chains(problem) };
+}
+
+/** Along every row that is read first, then down. */
+function floatCounts(problem: Problem): Counts {
+  const { horizontal, vertical, channels } = problem;
+  return { floatColumnSum: vertical.extended * horizontal.count * channels, floatSum: vertical.extended * horizontal.extended * chains(problem) };
+}
+
 export const runningSum: MethodPlan = {
   name: "running-sum",
   variant: "sums",
@@ -80,12 +96,14 @@ export const runningSum: MethodPlan = {
   applicable: (problem) => problem.analysis.constant || "The taps are not all the same number.",
 
   work(problem) {
-    const { vertical, horizontal, channels } = problem;
+    const { vertical, horizontal } = problem;
     const layout = frame(problem);
-    const samples = (vertical.extended * horizontal.extended + vertical.count * horizontal.count) * channels;
     return {
       setup: { setup: 1, setupTap: horizontal.taps * vertical.taps, setupByte: layout.arrangement.byteLength },
-      run: { ...frameCounts(problem, vertical.extended, sweepCalls(problem, layout)), [integerSums(problem) ? "integerSum" : "floatSum"]: samples },
+      run: {
+        ...frameCounts(problem, vertical.extended, sweepCalls(problem, layout)),
+        ...(integerSums(problem) ? integerCounts(problem, layout) : floatCounts(problem)),
+      },
       bytes: layout.arrangement.byteLength,
     };
   },
