@@ -184,6 +184,7 @@ class Search {
     const absent = [...new Set(this.#inOrder.flatMap((contest) => contest.absent))];
     return [
       ...(first && last && crossings.length === 0 ? [noCrossing(first.size, last.size, leaders)] : []),
+      ...undecided(rows, crossings),
       ...(step >= 0.5 ? [`The clock has a step of ${Number(step.toPrecision(2))} ms: samples are longer, and fewer.`] : []),
       ...(slow.length > 0 ? [`Not measured for want of time or memory: ${slow.map((size) => `${size}×${size}`).join(", ")}.`] : []),
       ...(absent.length > 0 ? [`Not timed at some sizes for want of memory beside the others: ${absent.join(", ")}.`] : []),
@@ -195,6 +196,13 @@ const noCrossing = (first: number, last: number, leaders: readonly Method[]): st
   leaders.length === 1
     ? `No method overtakes another between ${first}×${first} and ${last}×${last} taps: ${leaders[0]} is the fastest throughout.`
     : `No crossing between ${first}×${first} and ${last}×${last} taps is certain: where ${leaders.join(" and ")} change places, they are nearer than the noise.`;
+
+/** Changes of the fastest method that no crossing tells of: noise or want of time left them open. */
+function undecided(rows: Crossover["rows"], crossings: readonly Crossing[]): string[] {
+  const [last, known] = [rows.at(-1), crossings.findLast(({ leading }) => leading)];
+  if (!last || !known || last.fastest === known.to) return [];
+  return [`At ${last.size}×${last.size} taps ${last.fastest} is the fastest; where it overtakes ${known.to} was not found in the time given.`];
+}
 
 const nearest = (sizes: readonly number[], aim: number): number =>
   sizes.reduce((best, size) => (Math.abs(Math.log(size / aim)) < Math.abs(Math.log(best / aim)) ? size : best));

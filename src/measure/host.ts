@@ -35,5 +35,7 @@ export function hostName({ process, navigator }: Globals = globalThis as Globals
   }
   const userAgent = navigator?.userAgent ?? "";
   const threads = navigator?.hardwareConcurrency;
-  return [browserName(userAgent), systemName(userAgent), threads === undefined ? "" : `${threads} processors`].filter(Boolean).join(", ");
+  return [browserName(userAgent), systemName(userAgent), threads === undefined ? "" : threads === 1 ? "1 processor" : `${threads} processors`]
+    .filter(Boolean)
+    .join(", ");
 }

@@ -27,7 +27,15 @@ export function answerOf({ rows, crossings }: Crossover): Answer {
   if (rows.length === 0) return { answer: "No kernel size has been measured yet", certainty: "" };
   const leading = crossings.filter((one) => one.leading).toSorted((a, b) => a.size - b.size);
   if (leading.length === 0) return { answer: noChange(rows), certainty: "" };
-  return { answer: leading.length === 1 ? oneChange(leading[0]!) : severalChanges(leading), certainty: certaintyOf(leading) };
+  const answer = leading.length === 1 ? oneChange(leading[0]!) : severalChanges(leading);
+  return { answer: `${answer}${later(rows, leading.at(-1)!)}`, certainty: certaintyOf(leading) };
+}
+
+/** Where the largest kernels have another leader than the last certain change gives them. */
+function later(rows: readonly CrossoverRow[], { to }: Crossing): string {
+  const last = rows.reduce((a, b) => (b.size > a.size ? b : a));
+  if (last.fastest === to) return "";
+  return `, and ${nameAndVerb(last.fastest)} fastest at ${bySide(last.size)}, from a size on that the time did not suffice to find`;
 }
 
 /** Where lines meet that no user of the fastest method would notice: one sentence for each. */

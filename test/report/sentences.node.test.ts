@@ -34,14 +34,19 @@ describe("the answer in one sentence", () => {
     ],
     [
       "a size known exactly",
-      withCrossings(leading("direct", "running-sum", 5, [5, 5])),
-      "From about 5×5 taps on, running sums are faster than direct sums on this device.",
+      withCrossings(leading("separable", "fft", 51, [51, 51])),
+      "From about 51×51 taps on, the FFT is faster than separable passes on this device.",
     ],
     [
       "two changes, and what lies between them is noise",
       withCrossings(leading("direct", "separable", 5.2, [5, 7]), leading("running-sum", "fft", 50.6, [45, 63])),
       "On this device separable passes are faster than direct sums from about 5×5 taps on and the FFT is faster than running sums from about 51×51 taps on; " +
         "the changes lie between 5×5 and 7×7 and between 45×45 and 63×63.",
+    ],
+    [
+      "the last change was not found in time",
+      withCrossings(leading("direct", "separable", 5.2, [5, 7])),
+      "From about 5×5 taps on, separable passes are faster than direct sums on this device, and the FFT is fastest at 127×127, from a size on that the time did not suffice to find; the change lies between 5×5 and 7×7.",
     ],
     [
       "the fastest changes, and noise hides where",
