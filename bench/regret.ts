@@ -6,17 +6,18 @@
 import { readFileSync } from "node:fs";
 import { parseArgs } from "node:util";
 import { findChromium } from "../.build/chromium.mjs";
-import type { Build, HardwareProfile } from "../src/index.js";
+import type { Build } from "../src/index.js";
+import { checkedProfile } from "../src/api/validate/profile.js";
 import { shippedProfiles } from "../src/planning/profile.js";
 import { keepToOneCore } from "./host.js";
 import { makeBundle } from "./regret/bundle.js";
-import { candidateCount, candidates } from "./regret/candidates.js";
+import { candidateAt, candidateCount, candidates } from "./regret/candidates.js";
 import { measured, type Named } from "./regret/judge.js";
 import { judgement } from "./regret/judgement.js";
 import { confirmRegrets, measurePlanning, measureProblems, measureProfiles, type Pace } from "./regret/measuring.js";
 import { openChromium, openNode } from "./regret/places.js";
 import { printAgreement, printBiases, printPlanning, printRegrets, printWorst } from "./regret/print.js";
-import { openCampaign, saveCampaign, type Campaign } from "./regret/records.js";
+import { forgetPlanning, openCampaign, saveCampaign, type Campaign } from "./regret/records.js";
 
 const { values: given } = parseArgs({
   options: {
@@ -51,10 +52,11 @@ const build: Build = "simd";
 const repetitions = 10;
 const shipped = shippedProfiles.find((profile) => profile.build === build)!;
 const all = candidates(build, shipped, wanted);
-const campaign = openCampaign(place, build, given.fresh);
-if (given.anew) Object.assign(campaign, { profiles: [], firstSights: [] });
+const byIndex = new Map(all.map((candidate) => [candidate.problem.index, candidate]));
+const campaign = openCampaign(place, build, (index) => byIndex.get(index) ?? candidateAt(index, build, shipped), given.fresh);
+if (given.anew) forgetPlanning(campaign);
 
-const fromFiles = given.profile.map((path): Named => ({ name: path, profile: JSON.parse(readFileSync(path, "utf8")) as HardwareProfile }));
+const fromFiles = given.profile.map((path): Named => ({ name: path, profile: checkedProfile(JSON.parse(readFileSync(path, "utf8"))) }));
 const measuredHere = (): Named[] => campaign.profiles.map((profile, index) => ({ name: `measured ${index + 1}`, profile }));
 const profiles = (): Named[] => [{ name: "shipped", profile: shipped }, ...measuredHere(), ...fromFiles];
 
@@ -81,7 +83,7 @@ function conclude({ problems, firstSights }: Campaign): void {
     printBiases(runs, profile);
   }
   console.log();
-  const explains = judgeable.map(({ record: { explain } }) => explain);
+  const explains = judgeable.flatMap(({ record: { explain } }) => explain ?? []);
   const plans = printPlanning(explains, firstSights);
   console.log();
   printRegrets(verdict.lines);

@@ -26,7 +26,8 @@ export interface Inside {
 interface Furnished {
   problem: HeldOut;
   kernel: Kernel;
-  image: Raster;
+  /** Made when it is first asked for. */
+  image(): Raster;
 }
 
 const explains = 7;
@@ -60,17 +61,18 @@ export async function open(clock: () => number = () => performance.now()): Promi
   const furnished = (index: number): Furnished => {
     if (last?.problem.index === index) return last;
     const problem = problemAt(index);
-    return (last = { problem, kernel: freshKernel(problem.taps), image: planesOf(problem.layout, 1)[0]! });
+    let image: Raster | undefined;
+    return (last = { problem, kernel: freshKernel(problem.taps), image: () => (image ??= planesOf(problem.layout, 1)[0]!) });
   };
   return {
     build: engine.build,
     async time(index, methods, again) {
       const { problem, kernel, image } = furnished(index);
-      return timeMethods(bench, problem, kernel, image, methods, again ? secondEffort : firstEffort);
+      return timeMethods(bench, problem, kernel, image(), methods, again ? secondEffort : firstEffort);
     },
     once(index, known) {
       const { problem, image } = furnished(index);
-      return timeOnce(bench, problem, image, known);
+      return timeOnce(bench, problem, image(), known);
     },
     explain: (index) => explainMilliseconds(bench, furnished(index)),
     firstSights: (kind) => firstSights((kernel, layout, options) => engine.explain(kernel, layout, options), kind),

@@ -25,7 +25,7 @@ async function measureOne(place: Place, { problem, planned }: Candidate, once: b
   const { index, name } = problem;
   const methods = planned.map(({ method }) => method);
   const took = await place.call("time", index, methods, false);
-  const record: ProblemRecord = { index, name, methods: took.map((one) => recordOf(one, planned)), explain: 0 };
+  const record: ProblemRecord = { index, name, methods: took.map((one) => recordOf(one, planned)) };
   if (bestMilliseconds(record) > mostMeasured) return { ...record, dropped: true };
   if (once) record.once = await place.call("once", index, took);
   record.explain = await place.call("explain", index);
@@ -82,6 +82,10 @@ function inOrder(campaign: Campaign, index: number, methods: readonly Method[]):
 }
 
 export async function measurePlanning(place: Place, campaign: Campaign, pace: Pace): Promise<void> {
+  for (const record of campaign.problems.filter(({ explain, dropped }) => explain === undefined && !dropped)) {
+    if (!pace.goOn()) return;
+    record.explain = await place.call("explain", record.index);
+  }
   const known = new Set(campaign.firstSights.map(({ kernel }) => kernel));
   for (const kind of Object.keys(kinds())) {
     if (known.has(kind)) continue;

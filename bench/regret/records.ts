@@ -2,10 +2,11 @@ import type { HardwareProfile, Method } from "../../src/index.js";
 import { operationNames, type Counts } from "../../src/planning/cost.js";
 import { describeHost } from "../host.js";
 import { readResult, saveResult } from "../resultFile.js";
+import type { Candidate } from "./candidates.js";
 import type { FirstSight } from "./firstSight.js";
 import type { OnceTook } from "./once.js";
 import type { Planned } from "./planned.js";
-import { problemAt, seed } from "./problems.js";
+import { seed } from "./problems.js";
 import { typical, wasStopped, type MethodTook } from "./statistics.js";
 
 /** A method's time with what a run counts, for those who fit prices: pairs [operation by its place in the file's list, count]. Not where it was stopped. */
@@ -20,8 +21,8 @@ export interface ProblemRecord {
   again?: MethodTook[];
   /** Single calls with a kernel that is new. */
   once?: OnceTook[];
-  /** Milliseconds of `explain` with a known kernel. */
-  explain: number;
+  /** Milliseconds of `explain` with a known kernel; nothing where it is to be timed anew. */
+  explain?: number;
   /** True where even the best method took more than a second: not judged. */
   dropped?: true;
 }
@@ -43,10 +44,10 @@ const what = "regret";
 
 const pairs = (counts: Counts): number[] => operationNames.flatMap((name, operation) => (counts[name] ? [operation, Number(counts[name].toPrecision(3))] : []));
 
-export function recordOf(took: MethodTook, planned: readonly Planned[]): TimedMethod {
-  if (wasStopped(took)) return took;
-  const { work } = planned.find(({ method }) => method === took.method)!;
-  return { ...took, run: pairs(work.run) };
+export function recordOf({ method, ...took }: MethodTook, planned: readonly Planned[]): TimedMethod {
+  if (wasStopped(took)) return { method, atLeast: took.atLeast };
+  const { work } = planned.find((one) => one.method === method)!;
+  return { method, milliseconds: took.milliseconds, run: pairs(work.run) };
 }
 
 /** What counts: the second timing where there is one. */
@@ -60,13 +61,35 @@ export const tookOf = (record: ProblemRecord, method: Method): MethodTook => {
 
 export const bestMilliseconds = (record: ProblemRecord): number => Math.min(...settled(record).map(typical));
 
-/** The campaign that is on file for this host, or a new one. Records of other problems than today's are left out. */
-export function openCampaign(place: { name: string; clock: string }, build: string, fresh: boolean): Campaign {
+/** Only profiles that have a price for every operation, as engines take them. */
+const isComplete = (profile: HardwareProfile): boolean => operationNames.every((name) => Number.isFinite(profile.nanoseconds[name]));
+
+/**
+ * The campaign that is on file for this host, or a new one. Problems that are drawn otherwise today are left out, and so are profiles that lack a
+ * price; what is counted is counted again.
+ */
+export function openCampaign(
+  place: { name: string; clock: string },
+  build: string,
+  candidateOf: (index: number) => Candidate | undefined,
+  fresh: boolean,
+): Campaign {
   const empty: Campaign = { clock: place.clock, build, seed, operations: operationNames, problems: [], firstSights: [], profiles: [] };
   const known = fresh ? undefined : (readResult(what, describeHost(""), place.name) as Campaign | undefined);
   if (known === undefined || known.seed !== seed || known.build !== build) return empty;
-  const problems = known.problems.filter(({ index, name }) => problemAt(index).name === name);
-  return { ...empty, problems, firstSights: known.firstSights ?? [], profiles: known.profiles ?? [] };
+  const problems = known.problems.flatMap((record): ProblemRecord[] => {
+    const candidate = candidateOf(record.index);
+    if (candidate?.problem.name !== record.name) return [];
+    return [{ ...record, methods: record.methods.map((one) => recordOf(one, candidate.planned)) }];
+  });
+  return { ...empty, problems, firstSights: known.firstSights, profiles: known.profiles.filter(isComplete) };
+}
+
+/** Planning times and measured profiles are thrown away: planning or measuring has changed. */
+export function forgetPlanning(campaign: Campaign): void {
+  campaign.profiles = [];
+  campaign.firstSights = [];
+  for (const record of campaign.problems) delete record.explain;
 }
 
 export function saveCampaign(place: { name: string }, core: string, campaign: Campaign, judgement: Record<string, unknown>): string {

@@ -90,7 +90,7 @@ describe("a profile on a problem", () => {
   /** Every method takes what is predicted, but for some that take so many times as long. */
   const recordWith = (factors: Partial<Record<Method, number>>): ProblemRecord => {
     const methods = planned.map((one) => recordOf(timed(one.method, predictedRun(one, shipped) * (factors[one.method] ?? 1), 0), planned));
-    return { index: problem.index, name: problem.name, methods, explain: 0 };
+    return { index: problem.index, name: problem.name, methods };
   };
 
   test("is judged by the times of what it chooses", () => {
