@@ -135,8 +135,17 @@ export class Contest {
   async #warm({ contender, run, runAsync }: Ready, stopwatch: Stopwatch): Promise<void> {
     await stopwatch.pause();
     if (this.#inSlices) return void (await runAsync());
-    const often = Math.ceil((contender.milliseconds.length === 0 ? warmMilliseconds : 1) / Math.max(contender.expected, 1e-3));
-    for (let turn = 0; turn < Math.min(often, mostWarmRuns); turn++) run();
+    const fresh = contender.milliseconds.length === 0;
+    const often = Math.min(mostWarmRuns, Math.ceil((fresh ? warmMilliseconds : 1) / Math.max(contender.expected, 1e-3)));
+    const begun = stopwatch.now();
+    let [turns, passed] = [0, 0];
+    while (turns < often && passed <= warmMilliseconds) {
+      run();
+      turns++;
+      passed = stopwatch.now() - begun;
+    }
+    // Predictions may be of another machine.
+    if (fresh) contender.expected = Math.max(contender.expected, (passed - stopwatch.step) / turns);
   }
 
   async #round(ready: readonly Ready[], stopwatch: Stopwatch): Promise<void> {

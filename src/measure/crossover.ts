@@ -232,7 +232,6 @@ export async function crossoverBy(clock: Clock, engine: Engine, given: MeasureCr
  * @throws ConvolutionError `unknown-value` (no engine), `unknown-option`, `invalid-raster`, `invalid-number`, …; `memory-limit`; `disposed`, where the engine is meanwhile;
  * `clock-unusable`. Rejects with the signal's reason, and with what `onProgress` throws
  * @example
- * const engine = await createEngine();
  * const { crossings } = await measureCrossover(engine, { width: 320, height: 240, milliseconds: 500 });
  */
 export async function measureCrossover(engine: Engine, options: MeasureCrossoverOptions): Promise<Crossover> {

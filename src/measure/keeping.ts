@@ -44,9 +44,9 @@ const nowhere = (call: string, cause: unknown): ConvolutionError =>
  * @param store where to keep it. @defaultValue the page's `localStorage`
  * @throws ConvolutionError `invalid-profile`; `not-supported` where there is no store, or it is full
  * @example
- * const engine = await createEngine();
- * keepProfile(await measureProfile(engine));
- * const next = await createEngine({ profile: keptProfile(engine) });
+ * keepProfile(await measureProfile(engine, { milliseconds: 300 }), store); // in a page without the store
+ * const profile = keptProfile(engine, store);
+ * const next = await createEngine(profile ? { profile } : {});
  */
 export function keepProfile(profile: HardwareProfile, store?: ProfileStore): void {
   const checked = checkedProfile(profile);

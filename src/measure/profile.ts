@@ -216,7 +216,6 @@ export async function profileBy(clock: Clock, engine: Engine, given: MeasureProf
  * @throws ConvolutionError `unknown-value` (no engine), `unknown-option`, `invalid-number`; `disposed`, where the engine is meanwhile; `clock-unusable`, where
  * time stands still or runs backwards. Rejects with the signal's reason, and with what `onProgress` throws
  * @example
- * const engine = await createEngine();
  * const profile = await measureProfile(engine, { milliseconds: 500 });
  * const fitted = await createEngine({ profile });
  */

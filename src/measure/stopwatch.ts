@@ -84,10 +84,12 @@ export class Stopwatch {
     const often = Math.max(1, Math.floor(lookMilliseconds / Math.max(expected, 1e-4)));
     const mostRuns = 4 + Math.ceil((20 * least + 20 * this.step + 200) / Math.max(expected, 1e-4));
     const begun = this.#tick();
-    let [runs, now] = [0, begun];
+    let [runs, now, next] = [0, begun, 1];
     while (now >= begun && now - begun < least && runs < mostRuns) {
-      for (let turn = 0; turn < often; turn++) run();
-      runs += often;
+      for (let turn = 0; turn < next; turn++) run();
+      runs += next;
+      // Not all at once: what is expected may be of another machine.
+      next = Math.min(often, 2 * next);
       now = this.#clock.now();
     }
     return this.#sampleOf(runs, now - begun);

@@ -33,7 +33,11 @@ function furnish(): void {
 
 async function writeProgram(snippet: Snippet, k: number): Promise<void> {
   const moduleNames = snippet.module === undefined ? new Set<string>() : await namesExportedBy(snippet.module);
-  writeFileSync(pathOf(k), programOf(snippet, await namesExportedBy("dist/index.js"), moduleNames));
+  const faces = new Map([
+    ["tapwise", await namesExportedBy("dist/index.js")],
+    ["tapwise/measure", await namesExportedBy("dist/measure.js")],
+  ]);
+  writeFileSync(pathOf(k), programOf(snippet, faces, moduleNames));
 }
 
 /**

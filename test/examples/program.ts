@@ -8,6 +8,10 @@ const context: Record<string, string> = {
   engine: "const engine = await createEngine();",
   image: "const image = { data: Uint8ClampedArray.from({ length: 64 * 48 * 4 }, (_, k) => (k * 37) % 256), width: 64, height: 48 };",
   photo: "const photo = Uint8ClampedArray.from({ length: 640 * 480 * 4 }, (_, k) => (k * 29) % 256);",
+  layout: 'const layout = { width: 1920, height: 1080, channels: 4, sample: "u8" } as const;',
+  fitted: "const fitted = engine;",
+  store:
+    "const kept = new Map<string, string>(); const store = { getItem: (key: string) => kept.get(key) ?? null, setItem: (key: string, value: string) => void kept.set(key, value), removeItem: (key: string) => void kept.delete(key) };",
   report: "const report = (...values: unknown[]): unknown[] => values;",
 };
 
@@ -73,18 +77,22 @@ function holds(found: unknown, text: string): void {
 `;
 
 /**
- * A snippet as a module of its own: what it mentions and does not declare comes from the package, from the module that it
+ * A snippet as a module of its own: what it mentions and does not declare comes from the package and its sub-paths, from the module that it
  * describes, or from the context above.
  */
-export function programOf(snippet: Snippet, publicNames: ReadonlySet<string>, moduleNames: ReadonlySet<string>): string {
+export function programOf(snippet: Snippet, faces: ReadonlyMap<string, ReadonlySet<string>>, moduleNames: ReadonlySet<string>): string {
   const tree = parsed(snippet.code);
   const { own, mentioned } = namesOf(tree);
+  if (mentioned.has("fitted") && !own.has("fitted")) mentioned.add("engine");
+  if (mentioned.has("engine") && !own.has("engine")) mentioned.add("createEngine");
   const lines = Object.entries(context).filter(([name]) => mentioned.has(name) && !own.has(name));
-  if (lines.some(([name]) => name === "engine")) mentioned.add("createEngine");
   const wanted = [...mentioned].filter((name) => !own.has(name));
-  const fromPackage = wanted.filter((name) => publicNames.has(name));
-  const fromModule = wanted.filter((name) => !publicNames.has(name) && moduleNames.has(name));
-  const imports = fromPackage.length > 0 ? [`import { ${fromPackage.join(", ")} } from "tapwise";`] : [];
+  const imports: string[] = [];
+  for (const [face, names] of faces) {
+    const found = wanted.filter((name) => names.has(name));
+    if (found.length > 0) imports.push(`import { ${found.join(", ")} } from ${JSON.stringify(face)};`);
+  }
+  const fromModule = wanted.filter((name) => moduleNames.has(name) && ![...faces.values()].some((names) => names.has(name)));
   if (fromModule.length > 0)
     imports.push(`import { ${fromModule.join(", ")} } from ${JSON.stringify(join(root, snippet.module ?? "").replace(/\.ts$/, ".js"))};`);
   return [...imports, ...lines.map(([, line]) => line), withPromisesChecked(tree), holds, "export {};"].join("\n");
