@@ -76,7 +76,9 @@ export function tryOut(
     }
     if (contestants.length < 2) return undefined;
     const image = noiseImage(shape);
-    takeTurns(contestants, image, contestants[0]!.filter.run(image), now);
+    const target = contestants[0]!.filter.run(image);
+    for (const one of contestants) one.often = runsOfTurn(one, () => one.filter.run(image, target), now);
+    takeTurns(contestants, image, target, now);
   } finally {
     for (const { filter } of contestants) filter.dispose();
   }
@@ -84,6 +86,16 @@ export function tryOut(
     contestants.filter(({ milliseconds }) => milliseconds.length > 0),
     predicted,
   );
+}
+
+/** As many runs as predictions say that a turn takes; fewer where the clock shows that so many take longer, as predictions may be of another machine. */
+function runsOfTurn({ often }: Contestant, run: () => void, now: () => number): number {
+  for (let fewer = 1; fewer < often; fewer *= 2) {
+    const before = now();
+    for (let turn = 0; turn < fewer; turn++) run();
+    if (now() - before >= turnMilliseconds) return fewer;
+  }
+  return often;
 }
 
 function takeTurns(contestants: readonly Contestant[], image: Raster, target: Raster, now: () => number): void {
