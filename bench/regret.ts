@@ -87,7 +87,7 @@ function conclude({ problems, firstSights }: Campaign): void {
   const plans = printPlanning(explains, firstSights);
   console.log();
   printRegrets(verdict.lines);
-  if (verdict.agreement) printAgreement(verdict.agreement, campaign.profiles.length);
+  if (verdict.agreement) printAgreement(verdict.agreement, verdict.choices);
   if (!plans || !verdict.passes) process.exitCode = 1;
   if (!given.judge) console.log(`\nwritten: ${saveCampaign(place, core, campaign, { regrets: verdict.told })}`);
 }

@@ -2,7 +2,7 @@ import type { HardwareProfile, Method } from "../../src/index.js";
 import type { Candidate } from "./candidates.js";
 import { choiceOf, planningProblem } from "./planned.js";
 import { settled, tookOf, type ProblemRecord } from "./records.js";
-import { agreementOf, regretOf, summaryOf, type Agreement, type MethodTook, type RegretSummary, type Took } from "./statistics.js";
+import { regretOf, summaryOf, type MethodTook, type RegretSummary, type Took } from "./statistics.js";
 
 /** How a profile's choice fared on a problem. */
 export interface Judged {
@@ -64,11 +64,14 @@ export function judgeAuto(all: readonly Measured[]): number[] {
   });
 }
 
-/** Whether profiles choose alike. */
-export function judgeAgreement(all: readonly Measured[], profiles: readonly HardwareProfile[]): Agreement {
-  const choices = all.map(({ record, candidate }): MethodTook[] => profiles.map((profile) => tookOf(record, choiceFor(candidate, profile, false))));
-  return agreementOf(choices);
+/** A problem with what each of several profiles chooses. */
+export interface Choices {
+  record: ProblemRecord;
+  chosen: MethodTook[];
 }
+
+export const choicesOf = (all: readonly Measured[], profiles: readonly HardwareProfile[]): Choices[] =>
+  all.map(({ record, candidate }) => ({ record, chosen: profiles.map((profile) => tookOf(record, choiceFor(candidate, profile, false))) }));
 
 export interface Bars {
   median?: number;

@@ -1,18 +1,19 @@
 import {
   agreementBars,
   bars,
-  judgeAgreement,
+  choicesOf,
   judgeAuto,
   judgeOnce,
   judgeRuns,
   missed,
   summarise,
   type Bars,
+  type Choices,
   type Judged,
   type Measured,
   type Named,
 } from "./judge.js";
-import { summaryOf, type Agreement, type RegretSummary } from "./statistics.js";
+import { agreementOf, summaryOf, type Agreement, type RegretSummary } from "./statistics.js";
 
 /** A line of the table of regrets. */
 export interface RegretLine {
@@ -26,6 +27,8 @@ export interface Judgement {
   lines: RegretLine[];
   /** Among the profiles that were measured here, where there are several. */
   agreement?: Agreement;
+  /** What those choose. */
+  choices: Choices[];
   passes: boolean;
   /** The lines in round numbers, for the file. */
   told: Record<string, unknown>[];
@@ -53,18 +56,17 @@ export function judgement(all: readonly Measured[], profiles: readonly Named[]):
     bars.measured,
   );
   single("auto as it was called", judgeAuto(all), bars.shipped);
-  const agreement =
-    own.length > 1
-      ? judgeAgreement(
-          all,
-          own.map(({ profile }) => profile),
-        )
-      : undefined;
+  const choices = choicesOf(
+    all,
+    own.map(({ profile }) => profile),
+  );
+  const agreement = own.length > 1 ? agreementOf(choices.map(({ chosen }) => chosen)) : undefined;
   const agrees = agreement === undefined || (agreement.changed <= agreementBars.changed && agreement.apart <= agreementBars.apart);
   return {
     judged,
     lines,
     ...(agreement ? { agreement } : {}),
+    choices,
     passes: agrees && lines.every(({ summary, bars: limits }) => missed(summary, limits).length === 0),
     told: [
       ...lines.map(({ name, summary }) => ({ name, ...inRoundNumbers(summary) })),

@@ -1,12 +1,12 @@
 import { median } from "simple-statistics";
-import type { HardwareProfile } from "../../src/index.js";
+import type { HardwareProfile, Method } from "../../src/index.js";
 import { digits, printTable } from "../table.js";
 import type { FirstSight } from "./firstSight.js";
-import type { Bars, Judged } from "./judge.js";
+import type { Bars, Choices, Judged } from "./judge.js";
 import { agreementBars, missed } from "./judge.js";
 import { biases, reasonOf, type Prediction, type Reason } from "./reasons.js";
 import type { RegretLine } from "./judgement.js";
-import type { Agreement } from "./statistics.js";
+import { typical, widestPair, type Agreement, type MethodTook } from "./statistics.js";
 
 export const percent = (part: number): string => `${(100 * part).toFixed(1)} %`;
 
@@ -25,13 +25,31 @@ export function printRegrets(lines: readonly RegretLine[]): void {
   );
 }
 
-/** Whether repeated measurements of a profile choose alike. */
-export function printAgreement({ changed, changedByPairs, apart }: Agreement, profiles: number): void {
+/** Whether repeated measurements of a profile choose alike, and where they do not. */
+export function printAgreement({ changed, changedByPairs, apart }: Agreement, choices: readonly Choices[]): void {
   const told = (value: number, bar: number): string => `${percent(value)}, at most ${percent(bar)}: ${value <= bar ? "pass" : "MISS"}`;
+  const profiles = choices[0]!.chosen.length;
   console.log(
     `\n${profiles} measured profiles do not all choose the same on ${told(changed, agreementBars.changed)} (two of them on ${percent(changedByPairs)})`,
   );
-  console.log(`  methods that they choose there are apart by ${told(apart, agreementBars.apart)}`);
+  console.log(`methods that they choose there are apart by ${told(apart, agreementBars.apart)}`);
+  const differing = choices
+    .map(({ record, chosen }) => ({
+      name: `#${record.index} ${record.name}`,
+      chosen,
+      methods: [...new Set(chosen.map(({ method }) => method))],
+      apart: widestPair(chosen),
+    }))
+    .filter(({ methods }) => methods.length > 1)
+    .toSorted((a, b) => b.apart - a.apart);
+  const cell = (chosen: readonly MethodTook[], method: Method): string => {
+    const alike = chosen.filter((one) => one.method === method);
+    return `${method} ${alike.length} × (${digits(typical(alike[0]!))} ms)`;
+  };
+  printTable(
+    ["where they differ", "apart", "what they choose"],
+    differing.map(({ name, chosen, methods, apart: widest }) => [name, percent(widest), methods.map((method) => cell(chosen, method)).join(", ")]),
+  );
 }
 
 const times = ({ method, measured, stopped, predicted }: Prediction): string[] => [method, `${stopped ? "> " : ""}${digits(measured)}`, digits(predicted)];

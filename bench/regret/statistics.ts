@@ -79,7 +79,8 @@ function differingPairs(chosen: readonly MethodTook[]): number {
   return pairs.filter(Boolean).length / pairs.length;
 }
 
-function widestPair(chosen: readonly MethodTook[]): number {
+/** The largest time of a choice ÷ that of another − 1; 0 where nearer than noise. */
+export function widestPair(chosen: readonly MethodTook[]): number {
   const slowest = chosen.reduce((most, one) => (typical(one) > typical(most) ? one : most));
   const quickest = chosen.reduce((least, one) => (typical(one) < typical(least) ? one : least));
   return withinNoise(slowest, quickest) ? 0 : typical(slowest) / typical(quickest) - 1;
