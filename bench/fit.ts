@@ -1,7 +1,8 @@
 /** `npm run bench:fit [-- passes]`: times every method on many questions in both builds, fits prices, measures profiles beside, and writes the least wrong into src/planning/profile.ts. */
 import { createEngine, type Build, type Engine, type HardwareProfile } from "../src/index.js";
 import { measureProfile } from "../src/measure/index.js";
-import { operationNames, operations, priceOf, type Counts, type Prices } from "../src/planning/cost.js";
+import { operationWords } from "../src/measure/operationWords.js";
+import { operationNames, priceOf, type Counts, type Prices } from "../src/planning/cost.js";
 import { shippedProfiles } from "../src/planning/profile.js";
 import { errorOf, judge, type Judgement } from "./fit/judge.js";
 import { medianRun, medianSetup, timeQuestion, type Timed } from "./fit/measure.js";
@@ -119,7 +120,7 @@ for (const build of builds) {
   console.log(`\n${build}: ${timings.length} methods timed in ${((performance.now() - begun) / 1000).toFixed(0)} s`);
   printTable(
     ["operation", "ns each", ""],
-    operationNames.map((name) => [name, digits(prices[name]), operations[name]]),
+    operationNames.map((name) => [name, digits(prices[name]), operationWords[name]]),
   );
   for (const { name, judgement } of all) printJudgement(name === "fitted" ? "fitted: each fifth judged by a fit to the others" : name, judgement);
   printResiduals(timings, prices);

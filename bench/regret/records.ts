@@ -33,7 +33,7 @@ export interface Campaign {
   build: string;
   seed: number;
   /** Names of the counted operations, by the numbers that stand for them. */
-  operations: string[];
+  operations: readonly string[];
   problems: ProblemRecord[];
   firstSights: FirstSight[];
   /** As measured here, one after the other. */

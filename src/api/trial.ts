@@ -1,3 +1,4 @@
+import { ConvolutionError } from "../errors.js";
 import { fillWithNoise } from "../math/noise.js";
 import { sampleFacts } from "../planning/samples.js";
 import type { Candidate, Filter, Method, Raster, SampleType, Verdict } from "../types.js";
@@ -21,10 +22,26 @@ export interface TrialShape {
   sample: SampleType;
 }
 
+/** A larger image is not made: filling it would take longer than the trial. A small region of one is a small problem. */
+const mostImageBytes = 2 ** 28;
+
+const imageBytes = ({ width, height, channels, sample }: TrialShape): number => width * height * channels * arrays[sample].BYTES_PER_ELEMENT;
+
 function noiseImage({ width, height, channels, sample }: TrialShape): Raster {
   const data = new arrays[sample](width * height * channels);
   fillWithNoise(data, sampleFacts[sample].full);
   return { data, width, height, channels };
+}
+
+/** What runs read and write; nothing where the host gives no memory for it. */
+function materialsFor(filter: Filter, shape: TrialShape): { image: Raster; target: Raster } | undefined {
+  try {
+    const image = noiseImage(shape);
+    return { image, target: filter.run(image) };
+  } catch (error) {
+    if (error instanceof RangeError || (error instanceof ConvolutionError && error.fault === "capacity")) return undefined;
+    throw error;
+  }
 }
 
 /** A turn lasts at least so long, several runs where one is shorter: browsers' clocks are coarse. */
@@ -53,11 +70,11 @@ interface Contestant {
 const medianOf = ({ milliseconds }: Contestant): number => milliseconds.toSorted((a, b) => a - b)[(milliseconds.length - 1) >> 1]!;
 
 /**
- * Times the most promising candidates in turns on noise of the layout, in bounded time.
+ * Times the most promising candidates in turns on noise of the layout, in bounded time and memory.
  *
  * @param predicted what the method would be without a trial: it stays where others are level with it
  * @param prepare makes the filter of a method; nothing where the memory does not suffice beside the others
- * @returns the fastest, and median milliseconds of each; nothing where fewer than two could be timed
+ * @returns the fastest, and median milliseconds of each; nothing where fewer than two could be timed as they would be alone
  */
 export function tryOut(
   candidates: readonly Candidate[],
@@ -67,16 +84,19 @@ export function tryOut(
   now: () => number,
 ): Pick<Verdict, "method" | "milliseconds"> | undefined {
   const promisingOnes = contestantsAmong(candidates);
-  if (promisingOnes.length < 2) return undefined;
+  if (promisingOnes.length < 2 || imageBytes(shape) > mostImageBytes) return undefined;
   const contestants: Contestant[] = [];
   try {
-    for (const { method, milliseconds } of promisingOnes) {
+    for (const { method, milliseconds, bytes } of promisingOnes) {
       const filter = prepare(method);
-      if (filter) contestants.push({ method, filter, often: Math.ceil(turnMilliseconds / Math.max(milliseconds!, 0.001)), milliseconds: [] });
+      if (!filter) continue;
+      contestants.push({ method, filter, often: Math.ceil(turnMilliseconds / Math.max(milliseconds!, 0.001)), milliseconds: [] });
+      // Beside the others it has less memory than alone, perhaps smaller tiles: its times would be another filter's.
+      if (filter.explanation.bytes !== bytes) contestants.pop()!.filter.dispose();
     }
-    if (contestants.length < 2) return undefined;
-    const image = noiseImage(shape);
-    const target = contestants[0]!.filter.run(image);
+    const materials = contestants.length < 2 ? undefined : materialsFor(contestants[0]!.filter, shape);
+    if (!materials) return undefined;
+    const { image, target } = materials;
     for (const one of contestants) one.often = runsOfTurn(one, () => one.filter.run(image, target), now);
     takeTurns(contestants, image, target, now);
   } finally {

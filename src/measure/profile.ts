@@ -39,6 +39,9 @@ const targetStride = 3;
 /** A price is called measured where observing has brought its standard error below this share of what it was before. */
 const measuredShare = 0.6;
 
+/** No experiment's preparation takes a second: the machine slept, or the clock was put forward. */
+const mostPreparing = 1000;
+
 /** Of one preparation: it is timed once, and much of it is JavaScript whose time no count tells. */
 const preparationNoise = 0.5;
 
@@ -142,7 +145,8 @@ class Measurement {
     if (!again) return;
     again.dispose();
     const { step } = this.#stopwatch;
-    if (milliseconds > 2 * step) this.#observations.push({ counts: setup, nanoseconds: milliseconds * 1e6, noise: preparationNoise });
+    if (milliseconds > 2 * step && milliseconds < mostPreparing)
+      this.#observations.push({ counts: setup, nanoseconds: milliseconds * 1e6, noise: preparationNoise });
   }
 
   async checks(estimated: Estimate, until: number, progress: () => void): Promise<HardwareProfile["checks"]> {

@@ -1,3 +1,4 @@
+import { operationWords } from "../../src/measure/index.js";
 import { describe, expect, test } from "vitest";
 import { parseHTML } from "linkedom";
 import { capitalised } from "../../src/report/methodNames.js";
@@ -33,7 +34,9 @@ describe("the report tells everything", () => {
 
   test("prices stand with their spread, or say that they have none; checks with how far they were off", () => {
     const prices = [...page.querySelectorAll("details table")][0]!;
-    expect([...prices.querySelectorAll("tbody th")].map(({ textContent }) => textContent)).toEqual(Object.keys(sampleProfile().nanoseconds));
+    expect([...prices.querySelectorAll("tbody th")].map(({ textContent }) => textContent)).toEqual(
+      Object.keys(sampleProfile().nanoseconds).map((name) => operationWords[name as keyof typeof operationWords] ?? name),
+    );
     expect(prices.textContent).toContain("± 0.4 %");
     expect(prices.textContent).toContain("taken over in proportion");
     expect(html).toContain("+5.0 %");

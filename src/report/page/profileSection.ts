@@ -1,4 +1,5 @@
 import type { HardwareProfile, ProfileCheck } from "../../index.js";
+import { operationWords } from "../../measure/index.js";
 import { dateInWords, percent, threadsInWords, threeDigits } from "../figures.js";
 import { methodOrder, shortName } from "../methodNames.js";
 import { escaped, facts, list, paragraph, plainTable } from "./markup.js";
@@ -47,8 +48,9 @@ function signedPercent(share: number): string {
 }
 
 function priceTable({ nanoseconds, spread = {} }: HardwareProfile): string {
+  const words: Readonly<Record<string, string>> = operationWords;
   const rows = Object.entries(nanoseconds).map(([name, price]) => [
-    name,
+    Object.hasOwn(words, name) ? words[name]! : name,
     threeDigits(price),
     Object.hasOwn(spread, name) ? `± ${percent(spread[name]!)}` : "taken over in proportion",
   ]);
