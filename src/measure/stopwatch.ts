@@ -128,6 +128,7 @@ export class Stopwatch {
       runs++;
       now = this.#clock.now();
     }
+    if (now === begun && expected > leastExpected && this.#moves(now)) return this.sampleAsync(run, expected / 16);
     this.#rested = now;
     return this.#sampleOf(runs, now - begun, expected);
   }

@@ -51,6 +51,7 @@ const poor: [name: string, clock: () => Clock][] = [
   ["steps of 1…30 ms", () => clockThat(afterUnevenStep, 20)],
   ["a jump back of 40 ms now and then", () => clockThat((milliseconds) => milliseconds - 40 * Math.floor(milliseconds / 100))],
   ["a jump back of 500 ms once", () => clockThat((milliseconds) => (milliseconds > 300 ? milliseconds - 500 : milliseconds))],
+  ["a jump ahead by an hour once", () => clockThat((milliseconds) => milliseconds + (milliseconds > 400 ? 3_600_000 : 0))],
   ["a jump ahead by an hour now and then", () => clockThat((milliseconds) => milliseconds + 3_600_000 * Math.floor(milliseconds / 700))],
   ["every thousandth answer no number", () => clockThat((milliseconds, question) => (question % 1000 === 0 ? NaN : milliseconds))],
   ["very large numbers", () => clockThat((milliseconds) => 1e12 + milliseconds)],
