@@ -3,7 +3,7 @@ import { defineConfig } from "vitest/config";
 import { chromiumLaunchOptions, findChromium } from "./.build/chromium.mjs";
 
 /** Bodies that know neither Node nor a page, and so run in both. */
-const shared = ["laws", "published", "reference", "routines", "kernels", "math"].map((folder) => `test/${folder}/**/*.test.ts`);
+const shared = ["laws", "published", "reference", "routines", "kernels", "math", "measure"].map((folder) => `test/${folder}/**/*.test.ts`);
 const nodeOnly = "test/**/*.node.test.ts";
 const browserOnly = "test/**/*.browser.test.ts";
 
@@ -18,7 +18,7 @@ function browserProjects(executablePath: string) {
   const launchOptions = chromiumLaunchOptions(executablePath);
   const browser = {
     server: { headers: { "Cross-Origin-Opener-Policy": "same-origin", "Cross-Origin-Embedder-Policy": "require-corp" } },
-    optimizeDeps: { include: ["fast-check"] },
+    optimizeDeps: { include: ["fast-check", "ml-fcnnls"] },
     test: {
       name: "browser",
       include: [...shared, browserOnly],
