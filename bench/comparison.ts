@@ -31,7 +31,7 @@ export const fewestSamples = 5;
  *
  * Source    McGill, Tukey, Larsen, Variations of Box Plots, The American Statistician 32(1): 12–16, 1978 (the notches)
  */
-export const halfWidth = ({ p25, p75, samples }: Spread): number => (1.57 * (p75 - p25)) / Math.sqrt(samples);
+export const halfWidth = ({ p25, p75, samples }: Pick<Spread, "p25" | "p75" | "samples">): number => (1.57 * (p75 - p25)) / Math.sqrt(samples);
 
 /**
  * The rule: faster or slower where the intervals of the medians do not overlap and the medians differ by at least 3 %; else within the noise.

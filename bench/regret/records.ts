@@ -7,7 +7,7 @@ import type { FirstSight } from "./firstSight.js";
 import type { OnceTook } from "./once.js";
 import type { Planned } from "./planned.js";
 import { seed } from "./problems.js";
-import { typical, wasStopped, type MethodTook } from "./statistics.js";
+import { timesOf, typical, wasStopped, type MethodTook } from "./statistics.js";
 
 /** A method's time with what a run counts, for those who fit prices: pairs [operation by its place in the file's list, count]. Not where it was stopped. */
 export type TimedMethod = MethodTook & { run?: number[] };
@@ -47,7 +47,7 @@ const pairs = (counts: Counts): number[] => operationNames.flatMap((name, operat
 export function recordOf({ method, ...took }: MethodTook, planned: readonly Planned[]): TimedMethod {
   if (wasStopped(took)) return { method, atLeast: took.atLeast };
   const { work } = planned.find((one) => one.method === method)!;
-  return { method, milliseconds: took.milliseconds, run: pairs(work.run) };
+  return { method, milliseconds: timesOf(took.milliseconds), run: pairs(work.run) };
 }
 
 /** What counts: the second timing where there is one. */

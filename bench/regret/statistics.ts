@@ -6,8 +6,13 @@ import type { Spread } from "../spread.js";
 /** A method that takes longer than this many times the best so far is stopped: it has lost. */
 export const lostAt = 3;
 
+/** Repeated times, as short as a file of hundreds of problems wants them. */
+export type Times = Omit<Spread, "fastest">;
+
+export const timesOf = ({ median, p25, p75, samples }: Times): Times => ({ median, p25, p75, samples });
+
 /** How long a method took on a problem: repeated, or at least so long that it was stopped. Milliseconds. */
-export type Took = { milliseconds: Spread } | { atLeast: number };
+export type Took = { milliseconds: Times } | { atLeast: number };
 
 export type MethodTook = { method: Method } & Took;
 

@@ -1,7 +1,7 @@
 import type { Engine, Filter, Kernel, Method, Raster, ResultRaster } from "../../src/index.js";
 import { shuffled } from "../inputs.js";
 import { spreadOf } from "../spread.js";
-import { hasLost, lostAt, type MethodTook, type Took } from "./statistics.js";
+import { hasLost, lostAt, timesOf, type MethodTook, type Took } from "./statistics.js";
 import type { HeldOut } from "./problems.js";
 
 /** Where things are timed: in this process or in a page. */
@@ -147,6 +147,6 @@ export function turnsFor({ milliseconds, turns: [least, most] }: Effort, all: re
 
 /** What is told of one that took part, to the end or not. */
 export const took = <M extends string>(method: M, { times, fastest }: { times: number[]; fastest: number }, toTheEnd: boolean): { method: M } & Took =>
-  toTheEnd ? { method, milliseconds: spreadOf(times) } : { method, atLeast: rounded(fastest) };
+  toTheEnd ? { method, milliseconds: timesOf(spreadOf(times)) } : { method, atLeast: rounded(fastest) };
 
 export const rounded = (milliseconds: number): number => Number(milliseconds.toPrecision(4));
