@@ -23,7 +23,7 @@ export interface TrialShape {
 }
 
 /** A larger image is not made: filling it would take longer than the trial. A small region of one is a small problem. */
-const mostImageBytes = 2 ** 28;
+const mostImageBytes = 268435456;
 
 const imageBytes = ({ width, height, channels, sample }: TrialShape): number => width * height * channels * arrays[sample].BYTES_PER_ELEMENT;
 
@@ -90,9 +90,9 @@ export function tryOut(
     for (const { method, milliseconds, bytes } of promisingOnes) {
       const filter = prepare(method);
       if (!filter) continue;
-      contestants.push({ method, filter, often: Math.ceil(turnMilliseconds / Math.max(milliseconds!, 0.001)), milliseconds: [] });
-      // Beside the others it has less memory than alone, perhaps smaller tiles: its times would be another filter's.
-      if (filter.explanation.bytes !== bytes) contestants.pop()!.filter.dispose();
+      // Beside the others it has less memory than alone, and perhaps smaller tiles: its times would be another filter's.
+      if (filter.explanation.bytes !== bytes) filter.dispose();
+      else contestants.push({ method, filter, often: Math.ceil(turnMilliseconds / Math.max(milliseconds!, 0.001)), milliseconds: [] });
     }
     const materials = contestants.length < 2 ? undefined : materialsFor(contestants[0]!.filter, shape);
     if (!materials) return undefined;

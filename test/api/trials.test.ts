@@ -208,6 +208,18 @@ describe("time and memory of a trial", () => {
     expect(clock.looks).toBe(0);
   });
 
+  test.each([
+    ["is larger than all memory", { width: 16_000_000, height: 16_000_000, channels: 4, sample: "f32" }],
+    ["would take longer to fill than the trial takes", { width: 20_000, height: 8000, channels: 4, sample: "f32" }],
+  ] as const)("a small region of an image that %s is not tried, and predictions decide", async (_, large) => {
+    const clock = new TrialClock([9, 3]);
+    const engine = await engineBy(clock);
+    const region = { x: 0, y: 0, width: 200, height: 150 };
+    const filter = engine.prepare(race.taps, large, { measure: true, alpha: "none", region });
+    expect(filter.explanation).toMatchObject({ method: engine.explain(race.taps, large, { alpha: "none", region }).method });
+    expect(clock.looks).toBe(0);
+  });
+
   test("a profile in which nothing takes any time does not make it longer: the clock is looked at in between", async () => {
     let runs = 0;
     const { now } = performance;
@@ -265,6 +277,21 @@ describe("time and memory of a trial", () => {
       expect(filter.explanation.method).toBe(engine.profile.verdicts ? race.other : engine.explain(race.taps, layout).method);
       expect(filter.run(image).data.length).toBe(image.data.length);
     }
+  });
+
+  test("a filter that has less memory beside the others than alone is not timed: its tiles would be smaller", async () => {
+    const taps = scaled(noiseKernel(11, 11, 3), 1 / 121);
+    const wide = { width: 1280, height: 100, channels: 4, sample: "f32" } as const;
+    const verdicts = async (memoryLimit: number): Promise<{ count: number; together: number }> => {
+      const engine = await engineBy(new TrialClock([9, 3]), { memoryLimit });
+      const [first, second] = open(engine.explain(taps, wide, { alpha: "none" }).candidates);
+      engine.prepare(taps, wide, { alpha: "none", measure: true }).dispose();
+      return { count: engine.profile.verdicts?.length ?? 0, together: first!.bytes! + second!.bytes! };
+    };
+    const short = await verdicts(2 ** 20);
+    expect(short.together).toBeGreaterThan(2 ** 20);
+    expect(short.count).toBe(0);
+    expect((await verdicts(2 ** 23)).count).toBe(1);
   });
 
   test("an engine that is disposed during a trial says so, and a filter that another call made lives on until then", async () => {
