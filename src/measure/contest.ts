@@ -164,8 +164,8 @@ export class Contest {
   #prepared(engine: Engine, contender: Contender, inputs: Inputs): Ready | undefined {
     const { layout } = this.#question;
     try {
-      const filter: Filter = engine.prepare(this.#kernel, layout, { ...this.#options, method: contender.method });
       const [image, target] = [inputs.source(layout), inputs.target(layout, layout.sample)];
+      const filter: Filter = engine.prepare(this.#kernel, layout, { ...this.#options, method: contender.method });
       return { contender, run: () => filter.run(image, target), runAsync: () => filter.runAsync(image, { target }), dispose: () => filter.dispose() };
     } catch (error) {
       if (error instanceof ConvolutionError && error.fault === "capacity") return undefined;

@@ -42,10 +42,11 @@ function checkedOptions(given: MeasureCrossoverOptions): Checked {
     ...(channels === undefined ? {} : { channels }),
     ...(sample === undefined ? {} : { sample }),
   });
-  checkedBorder(border, { where: "measureCrossover", channels: layout.channels, sample: layout.sample });
+  // Copies: what the caller does with the options while it is measured changes nothing.
+  const { rows, columns } = checkedBorder(border, { where: "measureCrossover", channels: layout.channels, sample: layout.sample });
   return {
     layout,
-    border,
+    border: rows === columns ? rows : { rows, columns },
     separable: checkedFlag("measureCrossover", "separable", separable),
     sizes: checkedSizes(sizes),
     milliseconds:
@@ -162,8 +163,8 @@ class Search {
     const crossings = this.crossings();
     const { host, notes } = this.#engine.profile;
     return {
-      layout,
-      border,
+      layout: { ...layout },
+      border: structuredClone(border),
       separable,
       rows,
       crossings,
@@ -218,7 +219,7 @@ export async function crossoverBy(clock: Clock, engine: Engine, given: MeasureCr
   let told = 0;
   await search.run(() => onProgress?.((told = Math.min(0.99, Math.max(told, (stopwatch.now() - begun) / question.milliseconds))), search.result()));
   const found = search.result();
-  onProgress?.(1, found);
+  onProgress?.(1, structuredClone(found));
   return found;
 }
 

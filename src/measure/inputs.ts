@@ -1,10 +1,23 @@
+import { ConvolutionError } from "../errors.js";
 import { fillWithNoise } from "../math/noise.js";
 import type { Layout, Raster, SampleType, Samples } from "../types.js";
 
 const fullValues = { u8: 255, u16: 65_535, f32: 1 } as const;
 
+const arrays = { u8: Uint8Array, u16: Uint16Array, f32: Float32Array } as const;
+
+/** @throws ConvolutionError `memory-exhausted` where the host has no memory for so many */
+function samplesFor(sample: SampleType, count: number): Samples {
+  try {
+    return new arrays[sample](count);
+  } catch (cause) {
+    const message = `The host gives no memory for an image of ${count} samples. Measure with smaller images.`;
+    throw new ConvolutionError("memory-exhausted", message, { expected: `memory for ${count} samples`, received: String(cause), cause });
+  }
+}
+
 function noise(sample: SampleType, count: number): Samples {
-  const data = sample === "u8" ? new Uint8Array(count) : sample === "u16" ? new Uint16Array(count) : new Float32Array(count);
+  const data = samplesFor(sample, count);
   fillWithNoise(data, fullValues[sample]);
   return data;
 }

@@ -183,10 +183,12 @@ function profileFrom(engine: Engine, { prices, spread, unobserved }: Estimate, c
 /** As `measureProfile`, by another clock. */
 export async function profileBy(clock: Clock, engine: Engine, given: MeasureProfileOptions = {}): Promise<HardwareProfile> {
   checkOptionNames("measureProfile", given, ["milliseconds", "signal", "onProgress"]);
-  const milliseconds =
-    given.milliseconds === undefined
-      ? defaultMilliseconds
-      : checkedNumber("measureProfile", "milliseconds", given.milliseconds, { what: `milliseconds, 1…${mostMilliseconds}`, least: 1, most: mostMilliseconds });
+  const { milliseconds: wanted = defaultMilliseconds } = given;
+  const milliseconds = checkedNumber("measureProfile", "milliseconds", wanted, {
+    what: `milliseconds, 1…${mostMilliseconds}`,
+    least: 1,
+    most: mostMilliseconds,
+  });
   const { signal, onProgress } = checkedSignal("measureProfile", given);
   const insides = insidesOf("measureProfile", engine);
   const profile = engine.profile;

@@ -262,4 +262,27 @@ describe("what is told meanwhile", () => {
     await measure();
     expect(clock.rests).toBeGreaterThan((clock.time - begun) / 50);
   });
+
+  test("what the caller does with its options and with what onProgress was given changes nothing", async () => {
+    const { measure } = pretend({ truth: quadratic });
+    const options = { channels: 2, sizes: [3, 5, 9], border: { rows: "zero", columns: { constant: [1, 2] } } } satisfies Partial<MeasureCrossoverOptions>;
+    const spoil = (_: number, soFar: Crossover): void => {
+      soFar.layout.width = 1;
+      for (const list of [soFar.rows, soFar.crossings, soFar.notes]) list.length = 0;
+    };
+    const running = measure({ ...options, onProgress: spoil });
+    options.sizes.push(4);
+    options.border.columns.constant.pop();
+    const { layout: measured, rows, border } = await running;
+    expect(measured).toEqual({ ...layout, channels: 2, sample: "u8" });
+    expect(rows.map(({ size }) => size)).toEqual([3, 5, 9]);
+    expect(border).toEqual({ rows: "zero", columns: { constant: [1, 2] } });
+  });
+
+  test("images that the host has no memory for are named as not measured, and no filter is left", async () => {
+    const { measure, pretended } = pretend({ truth: quadratic });
+    const found = await measure({ width: 16_000_000, height: 16_000_000, channels: 4, sample: "f32", sizes: [3, 5] });
+    expect(found).toMatchObject({ rows: [], crossings: [], notes: ["Not measured for want of time or memory: 3×3, 5×5."] });
+    expect(pretended.open).toBe(0);
+  });
 });

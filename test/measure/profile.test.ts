@@ -257,3 +257,14 @@ describe("wrong arguments are refused before anything is measured", () => {
     await expect(running).rejects.toMatchObject({ name: "ConvolutionError", fault: "caller" });
   });
 });
+
+test("an option is read once: what was checked is what is used", async () => {
+  let reads = 0;
+  const engine = await engineWith();
+  await measureProfile(engine, {
+    get milliseconds() {
+      return ++reads === 1 ? 60 : ("later" as never);
+    },
+  });
+  expect(reads).toBe(1);
+});
