@@ -66,6 +66,8 @@ class ConvolutionEngine implements Engine {
   /** What trials found, by the shape of problems; from the profile, and since. */
   readonly #verdicts: Map<string, Verdict>;
   #disposed = false;
+  /** Tells the lender, where there is one. */
+  #leave: () => void = () => undefined;
 
   /** `lent`: core and crew are another engine's, which ends them. */
   constructor(core: Core, profile: HardwareProfile, pacing: Pacing, crew: Crew | undefined, lent = false) {
@@ -80,6 +82,7 @@ class ConvolutionEngine implements Engine {
       alike: (prices, threads) => {
         this.#usable("measuring");
         const other = new ConvolutionEngine(core, prices, pacing, threads === "one" ? undefined : crew, true);
+        other.#leave = () => this.#filters.delete(other);
         this.#filters.add(other);
         return other;
       },
@@ -122,6 +125,7 @@ class ConvolutionEngine implements Engine {
     this.#disposed = true;
     for (const filter of this.#filters) filter.dispose();
     if (!this.#lent) this.#parts.crew?.dispose();
+    this.#leave();
   }
 
   #usable(call: string): void {

@@ -6,7 +6,8 @@ export type Clock = Pacing;
 
 /** A clock that says the same this often in a row stands still: about a second of asking on any machine. */
 const mostQuestions = 20_000_000;
-const mostSteps = 12;
+const mostSteps = 25;
+const mostBackwards = 12;
 const mostMilliseconds = 30;
 
 const stopped = (what: string): ConvolutionError =>
@@ -16,24 +17,25 @@ const stopped = (what: string): ConvolutionError =>
   });
 
 /**
- * The clock's step in milliseconds: the largest of a few, as hardened browsers make steps coarse and uneven.
+ * The clock's step in milliseconds: the median of a few. Hardened browsers make steps coarse and uneven, and a busy machine takes pauses that are none.
  *
  * @throws ConvolutionError `clock-unusable` where it stands still or runs backwards all the time
  */
 export function clockStep(clock: Clock): number {
   const begun = clock.now();
-  let [step, steps, before, backwards] = [0, 0, begun, 0];
+  const steps: number[] = [];
+  let [before, backwards] = [begun, 0];
   for (let question = 0; question < mostQuestions; question++) {
     const now = clock.now();
     if (now === before) continue;
     if (now > before) {
-      steps++;
-      step = Math.max(step, now - before);
-    } else if (++backwards > mostSteps) throw stopped("runs backwards");
+      steps.push(now - before);
+    } else if (++backwards > mostBackwards) throw stopped("runs backwards");
     before = now;
-    if (steps >= mostSteps || (steps > 1 && now - begun > mostMilliseconds)) break;
+    if (steps.length >= mostSteps || (steps.length > 1 && now - begun > mostMilliseconds)) break;
   }
-  if (steps === 0 || !Number.isFinite(step)) throw stopped(backwards > 0 ? "runs backwards" : "stands still");
+  const step = steps.toSorted((a, b) => a - b)[steps.length >> 1];
+  if (step === undefined || !Number.isFinite(step)) throw stopped(backwards > 0 ? "runs backwards" : "stands still");
   return step;
 }
 

@@ -22,9 +22,12 @@ export interface Choice {
   verdict?: Verdict;
 }
 
-/** Two costs nearer than a hundredth, or than what a call costs, are a tie: no profile predicts better. */
+/** Two costs nearer than a hundredth, or than a quarter of what a call costs, are a tie: no profile predicts better. */
 const tieShare = 0.01;
-const tieOf = (prices: Prices): number => prices.run / 1e6;
+const tieOf = (prices: Prices): number => prices.run / 4e6;
+
+/** Of parts of one width side by side those that may differ from each other: the first, one inside, the last. */
+const differing = (parts: readonly Problem[]): Problem[] => (parts.length <= 3 ? [...parts] : [parts[0]!, parts[1]!, parts.at(-1)!]);
 
 function price(plan: MethodPlan, problem: Problem, profile: HardwareProfile): Candidate {
   const applies = plan.applicable(problem);
@@ -32,7 +35,7 @@ function price(plan: MethodPlan, problem: Problem, profile: HardwareProfile): Ca
   const prices = profile.nanoseconds as Prices;
   const { blocks, work, threads } = divisionOf(plan, problem, prices);
   const { setup, run, bytes } = work;
-  const problems = blocks.flat();
+  const problems = blocks.flatMap(differing);
   const candidate: Candidate = {
     method: plan.name,
     milliseconds: priceOf(run, prices) / 1e6,

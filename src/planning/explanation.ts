@@ -39,6 +39,9 @@ function printed(explanation: Explanation): string {
   return lines.join("\n");
 }
 
+const standing = ({ method, milliseconds }: Verdict): string =>
+  milliseconds[method] === Math.min(...Object.values(milliseconds)) ? "fastest" : "level with the fastest";
+
 const shownTimes = ({ milliseconds }: Verdict): string =>
   Object.entries(milliseconds)
     .toSorted(([, a], [, b]) => a - b)
@@ -52,7 +55,7 @@ function reason(choice: Choice, problem: Problem, once: boolean): string {
   const what = `${chosen.method}${threads} for ${problem.horizontal.taps}×${problem.vertical.taps} taps on ${problem.horizontal.count}×${problem.vertical.count}×${problem.channels} results`;
   if (problem.like) return `${what}: the method that the filter was prepared with.`;
   if (problem.request.method !== "auto") return `${what}: asked for by name.`;
-  if (choice.verdict) return `${what}: fastest when timed (${shownTimes(choice.verdict)}), ${choice.verdict.date.slice(0, 10)}.`;
+  if (choice.verdict) return `${what}: ${standing(choice.verdict)} when timed (${shownTimes(choice.verdict)}), ${choice.verdict.date.slice(0, 10)}.`;
   const time = (candidate: Candidate): number => candidate.milliseconds! + (once ? candidate.setupMilliseconds! : 0);
   const others = candidates.filter((candidate) => candidate.refused === undefined && candidate !== chosen);
   if (others.length === 0) return `${what}: the only method that applies.`;
@@ -63,6 +66,9 @@ function reason(choice: Choice, problem: Problem, once: boolean): string {
     return `${what}: level with ${next.method} in time (${counted}), and its error bound or memory is smaller.`;
   return `${what}: predicted ${threeDigits(time(chosen))} ms for ${counted}, ${threeDigits(ratio)} times as fast as the next, ${next.method}.`;
 }
+
+/** Where it was measured, and the sentences that stand with it. */
+const nameOf = ({ host, notes = [] }: HardwareProfile): string => (notes.length === 0 ? host : `${host}. ${notes.join(" ")}`);
 
 /** Puts an explanation together; `toString` is there for printing and does not count as data. */
 export function explanationOf(choice: Choice, problem: Problem, profile: HardwareProfile, once: boolean): Explanation {
@@ -79,7 +85,7 @@ export function explanationOf(choice: Choice, problem: Problem, profile: Hardwar
     milliseconds: chosen.milliseconds!,
     setupMilliseconds: chosen.setupMilliseconds!,
     build,
-    profile: [profile.host, ...(profile.notes ?? [])].join(". "),
+    profile: nameOf(profile),
     candidates,
   };
   const print = (): string => printed(data);
