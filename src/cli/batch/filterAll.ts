@@ -42,7 +42,7 @@ export async function filterAll(
     } catch (error) {
       if (job.signal.aborted) return account.interrupt(job.signal.reason);
       account.fail({ name: image.name, error: asConvolutionError(error) });
-      if (isForAllFiles(error)) return undefined;
+      if (isForAllFiles(error) || output.isClosed) return undefined;
     }
     doneByteLength += image.byteLength;
     onProgress(index + 1, doneByteLength / byteLength);
@@ -66,6 +66,8 @@ class OutputFolder {
   /** Folders that are there and lie in no folder that is filtered. */
   readonly #ready = new Set<string>();
   #hasRecord: boolean;
+  /** True when not even the record could be written: then no result can be. */
+  isClosed = false;
 
   constructor(job: BatchJob) {
     this.#job = job;
@@ -73,12 +75,18 @@ class OutputFolder {
   }
 
   async write(name: string, content: Uint8Array, replaces: boolean): Promise<void> {
-    const { output, settings, force } = this.#job;
-    const path = join(output, name);
+    const path = join(this.#job.output, name);
     await this.#makeReady(dirname(path));
-    if (!this.#hasRecord) await writeRecord(output, settings, force);
-    this.#hasRecord = true;
+    if (!this.#hasRecord) await this.#writeRecord();
     await writeOutput(path, content, replaces);
+  }
+
+  async #writeRecord(): Promise<void> {
+    const { output, settings, force } = this.#job;
+    this.isClosed = true;
+    await writeRecord(output, settings, force);
+    this.isClosed = false;
+    this.#hasRecord = true;
   }
 
   async #makeReady(folder: string): Promise<void> {

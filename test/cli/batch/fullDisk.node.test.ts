@@ -54,6 +54,14 @@ describe.each(["ENOSPC", "EDQUOT", "EROFS"])("a disk that takes no more (%s)", (
 });
 
 it("another error of one file stops no other", async () => {
-  Object.assign(disk, { filesLeft: 0, code: "EIO" });
+  Object.assign(disk, { filesLeft: 1, code: "EIO" }); // the record
   expect(JSON.parse((await filter("--json")).stdout)).toMatchObject({ filtered: 0, failed: 4, left: 0 });
+});
+
+it("a folder that may not be written to is told once: without its record no result can be written either", async () => {
+  Object.assign(disk, { filesLeft: 0, code: "EACCES" });
+  const { exitCode, stdout, stderr } = await filter();
+  expect(exitCode).toBe(1);
+  expect(stdout).toContain("0 of 4 images filtered, 1 failed, 3 left; ");
+  expect(stderr).toMatch(/^failed: .*soft\/\.tapwise-batch\.json cannot be written: permission denied.*\[file-unwritable\]\n$/);
 });
