@@ -37,7 +37,7 @@ describe.each(["simd", "scalar"] as const)("a profile of the %s build, measured 
     expectWhole(profile, build);
     const fitted = await engineWith({ build, profile: JSON.parse(JSON.stringify(profile)) });
     expect(fitted.profile).toEqual(profile);
-    expect(fitted.explain(gaussian(2), { width: 50, height: 40 }).profile).toContain(profile.host);
+    expect(fitted.explain(gaussian(2), { width: 50, height: 40 }).profile).toBe(`${profile.host}. ${profile.notes!.join(" ")}`);
     expectAlive(fitted);
   });
 
