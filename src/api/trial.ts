@@ -7,7 +7,10 @@ import type { Candidate, Filter, Method, Raster, SampleType, Verdict } from "../
 const promising = 2.5;
 const mostCandidates = 3;
 
-/** Trials go on for so long, or until each has had so many turns; a single run of each may take longer than that, up to the most. */
+/**
+ * Trials go on for so long, or until each has had so many turns; a single run of each may take longer than that, up to the most: by prediction all of
+ * them together, and by the clock the first run, which shows where the machine is slower than predictions say.
+ */
 const enoughMilliseconds = 200;
 const enoughTurns = 9;
 const mostMilliseconds = 1000;
@@ -94,9 +97,11 @@ export function tryOut(
       if (filter.explanation.bytes !== bytes) filter.dispose();
       else contestants.push({ method, filter, often: Math.ceil(turnMilliseconds / Math.max(milliseconds!, 0.001)), milliseconds: [] });
     }
+    const begun = now();
     const materials = contestants.length < 2 ? undefined : materialsFor(contestants[0]!.filter, shape);
     if (!materials) return undefined;
     const { image, target } = materials;
+    if (now() - begun > mostMilliseconds) return undefined;
     for (const one of contestants) one.often = runsOfTurn(one, () => one.filter.run(image, target), now);
     takeTurns(contestants, image, target, now);
   } finally {

@@ -10,6 +10,7 @@ import { noiseImage } from "../support/noise.js";
 /** A clock by which the methods that are tried take, in the order in which they are tried, the milliseconds that a test says. */
 class TrialClock {
   looks = 0;
+  firstMilliseconds = 0;
   #time = 0;
   readonly #turnMilliseconds: readonly number[];
   /** Called at each look. */
@@ -19,9 +20,10 @@ class TrialClock {
     this.#turnMilliseconds = turnMilliseconds;
   }
 
-  /** One look to begin with; then, in each turn, one before and one after each method, and one at the end. */
+  /** One look before the run that is not counted, one after it, and one to begin with; then, in each turn, one before and one after each method, and one at the end. */
   now = (): number => {
-    const look = this.looks++ - 1;
+    const look = this.looks++ - 3;
+    if (look === -2) this.#time += this.firstMilliseconds;
     const place = look < 0 ? 0 : look % (2 * this.#turnMilliseconds.length + 1);
     if (look >= 0 && place % 2 === 1) this.#time += this.#turnMilliseconds[place >> 1]!;
     this.onLook();
@@ -198,7 +200,20 @@ describe("time and memory of a trial", () => {
       [5000, 1],
     ] as const) {
       const { clock } = await triedEngine({}, [turn, turn]);
-      expect(clock.looks).toBe(1 + 5 * turns);
+      expect(clock.looks).toBe(3 + 5 * turns);
+    }
+  });
+
+  test("a machine that is so much slower than predicted that one run takes over a second gets no trial", async () => {
+    for (const [firstMilliseconds, verdicts] of [
+      [900, 1],
+      [1100, undefined],
+    ] as const) {
+      const clock = Object.assign(new TrialClock([9, 3]), { firstMilliseconds });
+      const engine = await engineBy(clock);
+      const { method } = engine.prepare(race.taps, layout, { measure: true }).explanation;
+      expect(engine.profile.verdicts?.length).toBe(verdicts);
+      expect(method).toBe(verdicts ? race.other : race.predicted);
     }
   });
 
