@@ -50,12 +50,20 @@ function crossoverParagraphs(crossover: Crossover): string[] {
 /** How many prices there are, and how far predictions were off. */
 function profileParagraph({ host, nanoseconds, spread = {}, checks = [], notes = [] }: HardwareProfile): string {
   const [all, measured] = [Object.keys(nanoseconds).length, Object.keys(spread).length];
-  const errors = checks.map((check) => Math.abs(check.predicted / check.measured - 1));
-  const held = `Held against ${checks.length} other problems, predicted times were off by ${percent(median(errors.length > 0 ? errors : [0]))} (median), ${percent(Math.max(0, ...errors))} at most.`;
   const sentences = [
     `Profile of ${host}: ${measured} of ${all} prices were measured well, the others keep their proportion to them.`,
-    ...(checks.length > 0 ? [held] : []),
+    ...heldSentences(checks),
     ...notes,
   ];
   return sentences.join("\n");
+}
+
+/** How far predictions were off for problems that prices were not fitted to. */
+function heldSentences(checks: NonNullable<HardwareProfile["checks"]>): string[] {
+  const errors = checks.map(({ predicted, measured }) => Math.abs(predicted / measured - 1));
+  if (errors.length === 0) return [];
+  if (errors.length === 1) return [`Held against one other problem, the predicted time was off by ${percent(errors[0]!)}.`];
+  return [
+    `Held against ${errors.length} other problems, predicted times were off by ${percent(median(errors))} (median), ${percent(Math.max(...errors))} at most.`,
+  ];
 }
