@@ -46,12 +46,13 @@ async function contestants(engine: Engine, timings: readonly Timed[], known: Pri
   return found;
 }
 
-/** Least regret in the mean; of equals the one whose predictions are nearer. */
-const leastWrong = (all: readonly Contestant[]): Contestant =>
-  all.toSorted((a, b) => a.judgement.regret.mean - b.judgement.regret.mean || a.judgement.error.median - b.judgement.error.median)[0]!;
+/** What choices lose in the mean, and a tenth of how far off predictions are: people read those too. */
+const wrongness = ({ judgement: { regret, error } }: Contestant): number => regret.mean + error.median / 10;
+
+const leastWrong = (all: readonly Contestant[]): Contestant => all.reduce((best, one) => (wrongness(one) < wrongness(best) ? one : best));
 
 const howChosen = (all: readonly Contestant[], chosen: Contestant): string =>
-  `${chosen.name}, the least wrong of ${all.map(({ name, judgement: { regret } }) => `${name} (regret ${percent(regret.mean)} in the mean, ${percent(regret.worst)} at worst)`).join(", ")}`;
+  `${chosen.name}, the least wrong of ${all.map(({ name, judgement: { regret, error } }) => `${name} (choices lose ${percent(regret.mean)} in the mean, ${percent(regret.worst)} at worst; times are off by ${percent(error.median)})`).join(", ")}`;
 
 const percent = (part: number): string => `${(100 * part).toFixed(1)} %`;
 
