@@ -285,4 +285,13 @@ describe("what is told meanwhile", () => {
     expect(found).toMatchObject({ rows: [], crossings: [], notes: ["Not measured for want of time or memory: 3×3, 5×5."] });
     expect(pretended.open).toBe(0);
   });
+
+  test("where there is memory for one filter at a time, it is that of the method which the engine would choose", async () => {
+    const { measure, pretended } = pretend({ truth: quadratic, mostFilters: 1 });
+    const { rows, notes } = await measure();
+    expect(new Set(rows.map(({ chosen }) => chosen)).size).toBeGreaterThan(1);
+    for (const { chosen, milliseconds: times } of rows) expect(Object.keys(times)).toEqual([chosen]);
+    expect(notes.join(" ")).toMatch(/want of memory beside the others/);
+    expect(pretended.open).toBe(0);
+  });
 });
