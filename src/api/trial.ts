@@ -50,7 +50,7 @@ function materialsFor(filter: Filter, shape: TrialShape): { image: Raster; targe
 /** A turn lasts at least so long, several runs where one is shorter: browsers' clocks are coarse. */
 const turnMilliseconds = 3;
 /** Times nearer than this are level: then predictions decide. */
-const level = 0.02;
+const level = 0.03;
 
 /** The candidates that are worth timing, the most promising first. One alone needs no trial. */
 function contestantsAmong(candidates: readonly Candidate[]): Candidate[] {
@@ -70,14 +70,15 @@ interface Contestant {
   milliseconds: number[];
 }
 
-const medianOf = ({ milliseconds }: Contestant): number => milliseconds.toSorted((a, b) => a - b)[(milliseconds.length - 1) >> 1]!;
+/** The lower quartile of its times: what disturbs a run makes it longer and never shorter. */
+const typical = ({ milliseconds }: Contestant): number => milliseconds.toSorted((a, b) => a - b)[(milliseconds.length - 1) >> 2]!;
 
 /**
  * Times the most promising candidates in turns on noise of the layout, in bounded time and memory.
  *
  * @param predicted what the method would be without a trial: it stays where others are level with it
  * @param prepare makes the filter of a method; nothing where the memory does not suffice beside the others
- * @returns the fastest, and median milliseconds of each; nothing where fewer than two could be timed as they would be alone
+ * @returns the fastest, and milliseconds of each (lower quartiles); nothing where fewer than two could be timed as they would be alone
  */
 export function tryOut(
   candidates: readonly Candidate[],
@@ -138,8 +139,8 @@ function takeTurns(contestants: readonly Contestant[], image: Raster, target: Ra
 
 function verdictOf(timed: readonly Contestant[], predicted: Method): Pick<Verdict, "method" | "milliseconds"> | undefined {
   if (timed.length < 2) return undefined;
-  const fastest = timed.reduce((best, one) => (medianOf(one) < medianOf(best) ? one : best));
+  const fastest = timed.reduce((best, one) => (typical(one) < typical(best) ? one : best));
   const expected = timed.find(({ method }) => method === predicted);
-  const winner = expected && medianOf(expected) <= (1 + level) * medianOf(fastest) ? expected : fastest;
-  return { method: winner.method, milliseconds: Object.fromEntries(timed.map((one) => [one.method, Number(medianOf(one).toPrecision(4))])) };
+  const winner = expected && typical(expected) <= (1 + level) * typical(fastest) ? expected : fastest;
+  return { method: winner.method, milliseconds: Object.fromEntries(timed.map((one) => [one.method, Number(typical(one).toPrecision(4))])) };
 }

@@ -30,11 +30,15 @@ export function checkedSizes(given: unknown): number[] {
     Number.isInteger(value) && (value as number) >= 1 && (value as number) <= mostTaps && (value as number) % 2 === 1;
   const wrong = !Array.isArray(given) || given.length === 0 ? given : given.find((size: unknown) => !isSize(size));
   if (wrong === undefined) return [...new Set(given as number[])].toSorted((a, b) => a - b);
-  const found = Array.isArray(wrong) ? "an empty list" : String(wrong);
-  throw new ConvolutionError("invalid-number", `measureCrossover: sizes has ${found}. Needed: a list of ${expected}, taps a side.`, {
-    expected,
-    received: wrong,
-  });
+  const found = Array.isArray(wrong) ? "an empty list" : Array.isArray(given) ? String(wrong) : typeof given;
+  throw new ConvolutionError(
+    "invalid-number",
+    `measureCrossover: sizes ${Array.isArray(given) && given.length > 0 ? "has" : "is"} ${found}. Needed: a list of ${expected}, taps a side.`,
+    {
+      expected,
+      received: wrong,
+    },
+  );
 }
 
 /** A bell that is separable and ends near 0, or taps without structure (Park & Miller's generator, Comm. ACM 31: 1192, 1988): the two that methods differ for. */

@@ -13,7 +13,7 @@ const most = { verdicts: 2000, checks: 1000, notes: 100, letters: 2000 };
 const mostNanoseconds = 1e9;
 
 function refuse(found: string, expected: string): never {
-  const message = `createEngine: profile: ${found}. Needed: ${expected}. Measure it anew, or leave profile out to use the shipped one.`;
+  const message = `The profile cannot be used: ${found}. Needed: ${expected}. Measure it anew, or leave it out to use the shipped one.`;
   throw new ConvolutionError("invalid-profile", message, { expected, received: found });
 }
 
