@@ -4,10 +4,12 @@ import type { Problem } from "./problem.js";
 
 const shownRule = (rule: BorderRule): string => (typeof rule === "object" ? "constant" : rule);
 
-/** How each method would go about it: its form, and how many terms it sums. */
+/** How each method would go about it: its form, how many terms it sums, and which tiles the memory leaves it. */
 function forms(problem: Problem): string {
   const applicable = methodNames.map((name) => variantFor(name, problem)).filter((plan) => plan.applicable(problem) === true);
-  return applicable.map((plan) => `${plan.name} ${plan.variant}${plan.terms ? ` ${plan.terms(problem)}` : ""}`).join(", ");
+  return applicable
+    .map((plan) => [plan.name, plan.variant, plan.terms?.(problem), plan.phases && plan.arithmetic(problem)].filter((word) => word !== undefined).join(" "))
+    .join(", ");
 }
 
 /** Taps that are not 0, to the next power of 2: what a list of them costs. */
