@@ -1,5 +1,5 @@
 import { readTaps, type Kernel } from "../kernels/kernel.js";
-import { absoluteSum, separate, type Separation } from "../math/separation.js";
+import { absoluteSum, leastLeftBy, separate, type Separation } from "../math/separation.js";
 import { keptCount, weightLeftOut } from "./tiny.js";
 
 /** More separable terms than this are not looked for: they would not pay, and looking takes time. */
@@ -18,6 +18,8 @@ export interface KernelAnalysis {
   leftOut(): number;
   /** Taps that are not next to nothing: see planning/tiny. */
   kept(): number;
+  /** What any sum of the most terms would leave of the taps at least, Σ|taps|: a quick look before terms are looked for. */
+  leastLeft(): number;
   /** Separable terms, found when first asked for. */
   separation(): Separation;
 }
@@ -42,6 +44,7 @@ function analyseTaps(kernel: Kernel): KernelAnalysis {
   let separation: Separation | undefined;
   let leftOut: number | undefined;
   let kept: number | undefined;
+  let leastLeft: number | undefined;
   const limit = Math.min(mostTerms, kernel.width, kernel.height);
   return {
     sum: kernel.sum,
@@ -51,6 +54,7 @@ function analyseTaps(kernel: Kernel): KernelAnalysis {
     negative,
     kept: () => (kept ??= keptCount(taps)),
     leftOut: () => (leftOut ??= weightLeftOut(taps)),
+    leastLeft: () => (leastLeft ??= leastLeftBy(mostTerms, taps, kernel.height, kernel.width)),
     separation: () => (separation ??= separate(taps, kernel.height, kernel.width, limit)),
   };
 }

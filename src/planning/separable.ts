@@ -27,11 +27,18 @@ function allowedResidual(problem: Problem): number {
   return (tolerance * leastWeight(problem) * leastAlpha) / Math.max(1e-300, outputScale(problem) * problem.workingFull);
 }
 
-/** The fewest terms whose residual is allowed, or no more than double precision leaves anyway; nothing where there are none. An all-zero kernel takes one term of zeros. */
+/** The same, or what double precision leaves anyway. */
+const acceptedResidual = (problem: Problem): number => Math.max(allowedResidual(problem), negligible * leastWeight(problem) * problem.analysis.absoluteSum);
+
+/** No terms need be looked for: any that there could be would leave more than twice of what is accepted. */
+const isHopeless = (problem: Problem): boolean => problem.analysis.leastLeft() > 2 * acceptedResidual(problem);
+
+/** The fewest terms whose residual is accepted; nothing where there are none. An all-zero kernel takes one term of zeros. */
 function termsNeeded(problem: Problem): number | undefined {
+  if (isHopeless(problem)) return undefined;
   const { residuals } = problem.analysis.separation();
-  const allowed = allowedResidual(problem);
-  const count = residuals.findIndex((residual, r) => r > 0 && residual <= Math.max(allowed, negligible * leastWeight(problem) * residuals[0]!));
+  const accepted = acceptedResidual(problem);
+  const count = residuals.findIndex((residual, r) => r > 0 && residual <= accepted);
   return count > 0 ? count : residuals[0] === 0 ? 0 : undefined;
 }
 
@@ -92,9 +99,11 @@ export const separable: MethodPlan = {
 
   applicable(problem) {
     if (termsNeeded(problem) !== undefined) return true;
-    const { residuals } = problem.analysis.separation();
-    const left = Number((residuals.at(-1)! * outputScale(problem) * problem.workingFull).toPrecision(2));
-    return `The taps are no sum of at most ${Math.min(mostTerms, residuals.length - 1)} separable terms: ${left} levels would be left out, the tolerance is ${problem.request.tolerance}.`;
+    const hopeless = isHopeless(problem);
+    const { analysis } = problem;
+    const residuals = hopeless ? [] : analysis.separation().residuals;
+    const left = Number(((hopeless ? analysis.leastLeft() : residuals.at(-1)!) * outputScale(problem) * problem.workingFull).toPrecision(2));
+    return `The taps are no sum of at most ${hopeless ? mostTerms : Math.min(mostTerms, residuals.length - 1)} separable terms: ${hopeless ? "at least " : ""}${left} levels would be left out, the tolerance is ${problem.request.tolerance}.`;
   },
 
   work(problem) {

@@ -9,8 +9,8 @@ export const builds: readonly Build[] = ["simd", "scalar", "relaxed-simd"];
 /** Far more than any measurement writes: what is larger was not written by one. */
 const most = { verdicts: 2000, checks: 1000, notes: 100, letters: 2000 };
 
-/** A price above a second is none, and sums of products with counts stay finite below it. */
-const mostNanoseconds = 1e9;
+/** A price above a quarter of an hour is none, and sums of products with counts stay finite below it. */
+const mostNanoseconds = 1e12;
 
 function refuse(found: string, expected: string): never {
   const message = `The profile cannot be used: ${found}. Needed: ${expected}. Measure it anew, or leave it out to use the shipped one.`;
