@@ -72,6 +72,8 @@ const lines: readonly Line[] = [
   ["direct", "any", [3], [tiny, small, medium, large], [f32, u8]],
   ["direct", "any", [5, 9, 15, [15, 1], [1, 15]], [small, medium], [f32]],
   ["direct", "any", [5, 9, 15], [small, medium], [u8]],
+  ["direct", "any", [2], [small, medium, large], [u8]],
+  ["running-sum", "box", [2], [small, large], [u8]],
   ["direct", "any", [3, 7], [small, medium], [rgba], plain],
   ["direct", "any", [3, 9], [medium], [planes], plain],
   ["direct", "any", [5], [medium], [u8], floats],
