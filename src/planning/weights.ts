@@ -188,6 +188,37 @@ export function weightsOf(problem: Problem): Weights {
   return weights;
 }
 
-export function smallestWeight(problem: Problem): number {
-  return weightsOf(problem).smallest;
+/** Those that hold no other one: sorted by where they end, each begins later than all before it. */
+function innermost(patterns: readonly Pattern[]): Pattern[] {
+  let latest = -1;
+  return patterns
+    .toSorted((a, b) => a.after - b.after || b.before - a.before)
+    .filter(({ before }) => {
+      const isInnermost = before > latest;
+      latest = Math.max(latest, before);
+      return isInnermost;
+    });
 }
+
+/**
+ * The smallest inside weight that is not 0. No tap is negative, so what holds more taps weighs no less: where something is inside of the innermost
+ * patterns, one of them has it, and no table is made.
+ */
+export function smallestWeight(problem: Problem): number {
+  const { horizontal, vertical, analysis } = problem;
+  const known = knownSmallest.get(problem);
+  if (known !== undefined) return known;
+  const tapColumns = new StretchSums(correlationTaps(problem), horizontal.taps);
+  const everyColumn = { before: 0, after: horizontal.taps };
+  const columns = horizontal.rule === "renormalised" ? innermost(patternsOf(horizontal).patterns) : [everyColumn];
+  let smallest = Infinity;
+  for (const row of innermost(patternsOf(vertical).patterns)) {
+    const { inside, whole } = rowSums(problem, tapColumns, row);
+    for (const column of columns) smallest = Math.min(smallest, whole + inside.inside(column, 0));
+  }
+  const found = smallest > leastShare * analysis.sum ? smallest : weightsOf(problem).smallest;
+  knownSmallest.set(problem, found);
+  return found;
+}
+
+const knownSmallest = /* @__PURE__ */ new WeakMap<Problem, number>();
