@@ -32,7 +32,7 @@ import type { EngineParts } from "./engineParts.js";
 import { PreparedFilter } from "./filter.js";
 import { loadCore, type Core } from "./loading.js";
 import { checkedEngineOptions } from "./validate/engineOptions.js";
-import { profileFor } from "./validate/profile.js";
+import { mostVerdicts, profileFor } from "./validate/profile.js";
 import { checkedRaster } from "./validate/raster.js";
 import { checkedLayout, checkedRequest } from "./validate/request.js";
 import { tryOut } from "./trial.js";
@@ -181,6 +181,7 @@ class ConvolutionEngine implements Engine {
     const found = tryOut(eligibleCandidates(problem, choice), choice.plan.name, request, prepare, this.#now);
     if (!found) return choice;
     const verdict = { shape: shapeOf(problem), ...found, date: new Date().toISOString() };
+    if (this.#verdicts.size >= mostVerdicts) this.#verdicts.delete(this.#verdicts.keys().next().value!);
     this.#verdicts.set(verdict.shape, verdict);
     return choose(problem, this.#profile, false, verdict);
   }

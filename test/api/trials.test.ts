@@ -1,6 +1,7 @@
 import { afterEach, describe, expect, test } from "vitest";
 import { gaussian, scaled, type Candidate, type Engine, type EngineOptions, type HardwareProfile, type Kernel, type Method } from "../../src/index.js";
 import { engineWithPacing } from "../../src/api/engine.js";
+import { mostVerdicts } from "../../src/api/validate/profile.js";
 import { shippedProfiles } from "../../src/planning/profile.js";
 import { knownLimit, memoryLeft } from "../measure/memoryLeft.js";
 import { noiseKernel } from "../support/kernels.js";
@@ -167,6 +168,18 @@ describe("a verdict travels with the profile", () => {
     expect(next.profile.verdicts).toEqual(engine.profile.verdicts);
     expect(next.prepare(race.taps, layout, { measure: true }).explanation.method).toBe(race.other);
     expect(clock.looks).toBe(0);
+  });
+
+  test("no more of them are kept than a profile may hold: the oldest goes", async () => {
+    const race = await closeRace();
+    const full = Array.from({ length: mostVerdicts }, (_, k) => ({ shape: `made up ${k}`, method: "fft" as const, milliseconds: {}, date: "2026-01-01" }));
+    const engine = await engineBy(new TrialClock([5, 1]), { profile: { ...slowMachine(), verdicts: full } });
+    engine.prepare(race.taps, layout, { measure: true });
+    const { verdicts } = engine.profile;
+    expect(verdicts).toHaveLength(mostVerdicts);
+    expect(verdicts![0]!.shape).toBe("made up 1");
+    expect(verdicts!.at(-1)!.shape).toContain("200×150");
+    await engineBy(new TrialClock([1, 1]), { profile: engine.profile });
   });
 
   const withVerdict = async (method: Method): Promise<HardwareProfile> => {

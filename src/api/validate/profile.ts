@@ -6,8 +6,11 @@ import type { Build, HardwareProfile, Method, ProfileCheck, Verdict } from "../.
 /** Every form of the core. */
 export const builds: readonly Build[] = ["simd", "scalar", "relaxed-simd"];
 
+/** An engine keeps so many verdicts, the latest. */
+export const mostVerdicts = 2000;
+
 /** Far more than any measurement writes: what is larger was not written by one. */
-const most = { verdicts: 2000, checks: 1000, notes: 100, letters: 2000 };
+const most = { verdicts: mostVerdicts, checks: 1000, notes: 100, letters: 2000 };
 
 /** A price above a quarter of an hour is none, and sums of products with counts stay finite below it. */
 const mostNanoseconds = 1e12;
