@@ -1,4 +1,4 @@
-/** `npm run bench:fit [-- passes]`: times every method on many questions in both builds, fits prices, measures profiles beside, and writes the least wrong into src/planning/profile.ts. */
+/** `npm run bench:fit [-- passes]`: times every method on many questions in both builds, fits prices, measures profiles beside, and writes the least wrong into src/planning. */
 import { createEngine, type Build, type Engine, type HardwareProfile } from "../src/index.js";
 import { measureProfile } from "../src/measure/index.js";
 import { operationWords } from "../src/measure/operationWords.js";

@@ -4,8 +4,8 @@ import { choose, eligibleCandidates, type Choice } from "../planning/choose.js";
 import { explanationOf } from "../planning/explanation.js";
 import { choiceExplained, type KernelChange } from "../planning/kernelChange.js";
 import { problemOf, type Problem, type Request } from "../planning/problem.js";
-import { shippedProfiles } from "../planning/profile.js";
 import { shapeOf } from "../planning/shape.js";
+import { simdProfile } from "../planning/simdProfile.js";
 import type {
   Build,
   ConvolveOptions,
@@ -196,9 +196,12 @@ class ConvolutionEngine implements Engine {
   }
 }
 
-/** None is shipped for the fused build: its engines choose by the prices of the SIMD one, of which it has the very work. */
-function shippedProfileFor(build: Build): HardwareProfile {
-  return shippedProfiles.find((profile) => profile.build === (build === "scalar" ? "scalar" : "simd"))!;
+/**
+ * The scalar build's is loaded where it is needed. None is shipped for the fused build: its engines choose by the prices of the SIMD one, of which it
+ * has the very work.
+ */
+async function shippedProfileFor(build: Build): Promise<HardwareProfile> {
+  return build === "scalar" ? (await import("../planning/scalarProfile.js")).scalarProfile : simdProfile;
 }
 
 /** What starts threads is loaded where they are asked for. */
@@ -211,7 +214,7 @@ async function startCrew(others: number, core: Core, createWorker: EngineOptions
 export async function engineWithPacing(options: EngineOptions | undefined, pacing: Pacing): Promise<Engine> {
   const checked = checkedEngineOptions(options);
   const core = await loadCore(checked);
-  const profile = checked.profile ? profileFor(checked.profile, core.build, checked.threads) : shippedProfileFor(core.build);
+  const profile = checked.profile ? profileFor(checked.profile, core.build, checked.threads) : await shippedProfileFor(core.build);
   const crew = checked.threads > 1 ? await startCrew(checked.threads - 1, core, checked.createWorker) : undefined;
   return new ConvolutionEngine(core, profile, pacing, crew);
 }

@@ -1,0 +1,63 @@
+import type { HardwareProfile } from "../types.js";
+
+/**
+ * What each counted operation costs in the scalar build on the machine that `host` names, in nanoseconds: engines use it until they are given another.
+ * Written by `npm run bench:fit` from the runs in bench/results, which judge several profiles by the time that their choices lose; not to be edited.
+ *
+ * fitted, the least wrong of fitted (choices lose 0.8 % in the mean, 26.6 % at worst; times are off by 6.8 %), measured 1 (choices lose 0.8 % in the mean, 26.6 % at worst; times are off by 27.5 %), measured 2 (choices lose 0.3 % in the mean, 22.9 % at worst; times are off by 30.4 %), measured 3 (choices lose 0.4 % in the mean, 22.9 % at worst; times are off by 29.5 %).
+ */
+export const scalarProfile: HardwareProfile = {
+  version: 2,
+  host: "AMD EPYC, node 20.20.2",
+  build: "scalar",
+  threads: 1,
+  date: "2026-12-01",
+  nanoseconds: {
+    run: 1689,
+    step: 71.56,
+    row: 13.44,
+    enter_u8: 0.02824,
+    enter_u16: 0.3162,
+    enter_f32: 0.5347,
+    leave_u8: 2.606,
+    leave_u16: 2.607,
+    leave_f32: 0.681,
+    haloPixel: 1.837,
+    alphaPixel: 4.735,
+    weighedSample: 2.124,
+    tableSample: 0.02833,
+    curveSample: 29.21,
+    directTap: 0.1976,
+    directEdgeTap: 0.4096,
+    directLoop: 0.8436,
+    listedTap: 0.3637,
+    listedPair: 0.483,
+    pairSample: 1.049,
+    byteResult: 0.5505,
+    keptPixel: 1.251,
+    pairTap: 0.7249,
+    pairLoop: 2.915,
+    wordTap: 0.7936,
+    wordSample: 1.72,
+    pairRowTap: 0.7755,
+    rowTap: 0.2659,
+    rowLoop: 0.02826,
+    columnTap: 0.1896,
+    columnLoop: 11.49,
+    byteColumnSum: 0.6817,
+    byteRowSum: 0.6976,
+    integerColumnSum: 0.47,
+    integerSum: 1.316,
+    floatColumnSum: 1.132,
+    floatSum: 2.292,
+    planeSample: 0.02848,
+    columnPass: 1.656,
+    rowPass: 1.576,
+    handOver: 60000,
+    meeting: 15000,
+    handedByte: 0.22,
+    setup: 506900,
+    setupTap: 0.04812,
+    setupByte: 0.05214,
+  },
+};
