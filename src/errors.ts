@@ -77,3 +77,13 @@ export class ConvolutionError extends Error {
 export function shown(value: unknown): string {
   return typeof value === "string" ? `"${value}"` : typeof value === "bigint" ? `${value}n` : String(value);
 }
+
+/** What `make` gives; nothing where memory is too short for it. Other errors are thrown on. */
+export function unlessShort<T>(make: () => T): T | undefined {
+  try {
+    return make();
+  } catch (error) {
+    if (error instanceof ConvolutionError && error.fault === "capacity") return undefined;
+    throw error;
+  }
+}

@@ -1,4 +1,4 @@
-import { ConvolutionError } from "../errors.js";
+import { ConvolutionError, unlessShort } from "../errors.js";
 import type { Kernel } from "../kernels/index.js";
 import { choose, eligibleCandidates, type Choice } from "../planning/choose.js";
 import { explanationOf } from "../planning/explanation.js";
@@ -177,22 +177,13 @@ class ConvolutionEngine implements Engine {
   /** The choice after the best candidates were timed; the same where they could not be. */
   #tried(problem: Problem, choice: Choice): Choice {
     const { request } = problem;
-    const prepare = (method: Method): Filter | undefined => this.#preparedIfItFits({ ...request, method, measure: false });
+    const prepare = (method: Method): Filter | undefined => unlessShort(() => this.#prepared({ ...request, method, measure: false }, false));
     const found = tryOut(eligibleCandidates(problem, choice), choice.plan.name, request, prepare, this.#now);
     if (!found) return choice;
     const verdict = { shape: shapeOf(problem), ...found, date: new Date().toISOString() };
     if (this.#verdicts.size >= mostVerdicts) this.#verdicts.delete(this.#verdicts.keys().next().value!);
     this.#verdicts.set(verdict.shape, verdict);
     return choose(problem, this.#profile, false, verdict);
-  }
-
-  #preparedIfItFits(request: Request): Filter | undefined {
-    try {
-      return this.#prepared(request, false);
-    } catch (error) {
-      if (error instanceof ConvolutionError && error.fault === "capacity") return undefined;
-      throw error;
-    }
   }
 }
 

@@ -1,4 +1,4 @@
-import { ConvolutionError } from "../errors.js";
+import { unlessShort } from "../errors.js";
 import type { Kernel } from "../kernels/index.js";
 import type { Border, Engine, Explanation, Filter, Layout, Method, PrepareOptions, Raster } from "../types.js";
 import type { Inputs } from "./inputs.js";
@@ -169,14 +169,11 @@ export class Contest {
   /** Nothing where the engine's memory does not suffice for it beside the others. */
   #prepared(engine: Engine, contender: Contender, inputs: Inputs): Ready | undefined {
     const { layout } = this.#question;
-    try {
+    return unlessShort(() => {
       const [image, target] = [inputs.source(layout), inputs.target(layout, layout.sample)];
       const filter: Filter = engine.prepare(this.#kernel, layout, { ...this.#options, method: contender.method });
       return { contender, run: () => filter.run(image, target), runAsync: () => filter.runAsync(image, { target }), dispose: () => filter.dispose() };
-    } catch (error) {
-      if (error instanceof ConvolutionError && error.fault === "capacity") return undefined;
-      throw error;
-    }
+    });
   }
 
   #dropHopeless(): void {

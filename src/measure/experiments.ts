@@ -1,5 +1,6 @@
 import { box, gaussian, kernel, type Kernel } from "../kernels/index.js";
 import type { Channels, Layout, Method, PrepareOptions, SampleType } from "../types.js";
+import { structureless } from "./structureless.js";
 
 /** A run that may be timed: one method on one problem. */
 export interface Experiment {
@@ -20,13 +21,6 @@ const medium: Shape = [384, 256];
 const large: Shape = [1024, 640];
 const tall: Shape = [16, 1200];
 const flat: Shape = [2400, 16];
-
-/** A kernel without structure: no tap is 0, no two lines are alike. The taps are those of a linear congruential generator (Park & Miller, Comm. ACM 31: 1192, 1988). */
-function structureless(width: number, height: number): Kernel {
-  let state = 1;
-  const tap = (): number => (state = (state * 48_271) % 2_147_483_647) / 2_147_483_647 / (width * height);
-  return kernel(Array.from({ length: height }, () => Array.from({ length: width }, tap)));
-}
 
 const bell = (width: number, height: number): Kernel =>
   gaussian({ sigma: { x: Math.max(0.5, width / 6), y: Math.max(0.5, height / 6) }, radius: { x: (width - 1) / 2, y: (height - 1) / 2 } });

@@ -1,5 +1,6 @@
 import { ConvolutionError } from "../errors.js";
-import { gaussian, kernel, type Kernel } from "../kernels/index.js";
+import { gaussian, type Kernel } from "../kernels/index.js";
+import { structureless } from "./structureless.js";
 
 /** Every size up to here, then as many in each doubling as in the one before. */
 const everySize = 15;
@@ -41,10 +42,7 @@ export function checkedSizes(given: unknown): number[] {
   );
 }
 
-/** A bell that is separable and ends near 0, or taps without structure (Park & Miller's generator, Comm. ACM 31: 1192, 1988): the two that methods differ for. */
+/** A bell that is separable and ends near 0, or taps without structure: the two that methods differ for. */
 export function kernelOfSize(size: number, separable: boolean): Kernel {
-  if (separable) return gaussian({ sigma: Math.max(0.5, size / 6), radius: (size - 1) / 2 });
-  let state = 1;
-  const tap = (): number => (state = (state * 48_271) % 2_147_483_647) / 2_147_483_647 / (size * size);
-  return kernel(Array.from({ length: size }, () => Array.from({ length: size }, tap)));
+  return separable ? gaussian({ sigma: Math.max(0.5, size / 6), radius: (size - 1) / 2 }) : structureless(size, size);
 }

@@ -1,4 +1,4 @@
-import { ConvolutionError } from "../errors.js";
+import { unlessShort } from "../errors.js";
 import type { Engine, Filter, Raster } from "../types.js";
 import type { Experiment } from "./experiments.js";
 import type { Inputs } from "./inputs.js";
@@ -11,17 +11,9 @@ export interface Timed {
   samples: Sample[];
 }
 
-const codesOfShortage = ["memory-limit", "memory-exhausted"];
-
 /** A filter; nothing where the engine has too little memory for it. */
-export function prepared(engine: Engine, { kernel, layout, options }: Omit<Experiment, "name">): Filter | undefined {
-  try {
-    return engine.prepare(kernel, layout, options) as Filter;
-  } catch (error) {
-    if (error instanceof ConvolutionError && codesOfShortage.includes(error.code)) return undefined;
-    throw error;
-  }
-}
+export const prepared = (engine: Engine, { kernel, layout, options }: Omit<Experiment, "name">): Filter | undefined =>
+  unlessShort(() => engine.prepare(kernel, layout, options) as Filter);
 
 /** Prepares an experiment; nothing where the engine has too little memory for it. */
 export function begin(engine: Engine, experiment: Experiment, inputs: Inputs): Timed | undefined {
